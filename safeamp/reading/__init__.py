@@ -1,0 +1,1 @@
+"""Files to nouns: sheets, limits, devices; every complaint at once."""
