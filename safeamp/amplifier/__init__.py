@@ -1,0 +1,36 @@
+"""The nouns of the sheet: one frozen tree for file, key tables, starters, schema and computation.
+
+Numbers are SI floats, or arrays over the flat case axis (index 0 nominal); temperatures in degC, angles in deg.
+"""
+
+from safeamp.amplifier.keys import Key, keys_of
+from safeamp.amplifier.load import Limiter, Loudspeaker, Readings
+from safeamp.amplifier.power import Fins, Fuse, Heatsink, Mains, Protection, Supply
+from safeamp.amplifier.sheet import Assumption, Entry, Sheet
+from safeamp.amplifier.stage import Device, OutputCapacitor, Stage
+from safeamp.amplifier.tree import TABLES, Amplifier, value_at, with_values, written_key
+
+__all__ = [
+    "TABLES",
+    "Amplifier",
+    "Assumption",
+    "Device",
+    "Entry",
+    "Fins",
+    "Fuse",
+    "Heatsink",
+    "Key",
+    "Limiter",
+    "Loudspeaker",
+    "Mains",
+    "OutputCapacitor",
+    "Protection",
+    "Readings",
+    "Sheet",
+    "Stage",
+    "Supply",
+    "keys_of",
+    "value_at",
+    "with_values",
+    "written_key",
+]
