@@ -95,7 +95,7 @@ class Interface:
 
 @dataclass(frozen=True)
 class Gate:
-    """Pre-arcing time of a fuse, s, at one multiple of its rating; `longest` is inf where it may never open."""
+    """Pre-arcing time of a fuse, s, at one multiple of its rating; inf where it may never open."""
 
     times_rating: float
     shortest: float
@@ -148,7 +148,7 @@ class Limits:
         return _find(self.levels, id, "level")
 
     def interface(self, name: str) -> Interface:
-        """Return the interface of a name typed with hyphens or blanks; KeyError names the nearest known one."""
+        """Return an interface, typed with hyphens or blanks; KeyError names the nearest known one."""
         known = {plain(key): value for key, value in self.interfaces.items()}
         return _find(known, plain(name), "interface between case and heatsink")
 
