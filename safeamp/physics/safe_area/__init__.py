@@ -1,0 +1,21 @@
+"""Safe area of the output devices and the use that a load makes of it."""
+
+from safeamp.physics.safe_area.boundary import allowed_current
+from safeamp.physics.safe_area.locus import ZONES, Use
+from safeamp.physics.safe_area.peak import equivalent_resistance, peak_dissipation
+from safeamp.physics.safe_area.rating import Rating, derating, points_problem, usable_power
+from safeamp.physics.safe_area.use import angle_use, envelope_use
+
+__all__ = [
+    "ZONES",
+    "Rating",
+    "Use",
+    "allowed_current",
+    "angle_use",
+    "derating",
+    "envelope_use",
+    "equivalent_resistance",
+    "peak_dissipation",
+    "points_problem",
+    "usable_power",
+]

@@ -1,0 +1,215 @@
+"""Heat and mean currents of a stage that follows the class-AB law."""
+
+from typing import Any, NamedTuple
+
+import numpy as np
+from numpy.typing import ArrayLike
+
+from safeamp.physics._checks import Array, array, non_negative, positive, refuse, within
+from safeamp.physics.stage.law import THERMAL_VOLTAGE, Law, device_currents
+
+_NODES, _WEIGHTS = np.polynomial.legendre.leggauss(20)
+_SINES = np.sin((_NODES + 1.0) * np.pi / 4.0)
+_SHARES = _WEIGHTS / 2.0
+
+
+class MeanCurrents(NamedTuple):
+    """Means over one cycle, of each device."""
+
+    mean: Any
+    """A."""
+    mean_square: Any
+    """A2."""
+
+
+def mean_currents(
+    *,
+    peak_current: ArrayLike,
+    conducting: ArrayLike,
+    emitter_resistor: ArrayLike,
+    idle_current: ArrayLike,
+    law: Law,
+    transconductance_parameter: ArrayLike | None = None,
+    thermal_voltage: float = THERMAL_VOLTAGE,
+) -> MeanCurrents:
+    """Return mean and mean square of the current of each device over a cycle of a sine.
+
+    Upper and lower device are mirror images and every quarter repeats, so a quarter cycle of both
+    holds the whole; Gauss-Legendre nodes on it crowd where the sine passes through zero.
+
+    Parameters
+    ----------
+    peak_current : array_like
+        A of the whole load, >= 0.
+    conducting : array_like
+        Devices in parallel, >= 1.
+    emitter_resistor : array_like
+        Ohm of each device, >= 0.
+    idle_current : array_like
+        A of each device, >= 0.
+    law, transconductance_parameter, thermal_voltage
+        As in `carrying_current`.
+
+    Returns
+    -------
+    MeanCurrents
+        A and A2, broadcast shape of the inputs.
+
+    Raises
+    ------
+    ValueError
+        If a value is outside its range.
+
+    References
+    ----------
+    Derived; below 0.1 % of a fine grid.
+    """
+    non_negative(peak_current=peak_current)
+    refuse("conducting", conducting, array(conducting) < 1, "one or more")
+    parameter = transconductance_parameter
+    larger, smaller = device_currents(
+        load_current=(array(peak_current) / array(conducting))[..., None] * _SINES,
+        idle_current=array(idle_current)[..., None],
+        emitter_resistor=array(emitter_resistor)[..., None],
+        law=law,
+        transconductance_parameter=None if parameter is None else array(parameter)[..., None],
+        thermal_voltage=thermal_voltage,
+    )
+    total, squares = (larger + smaller) * _SHARES, (larger**2 + smaller**2) * _SHARES
+    return MeanCurrents(total.sum(axis=-1) / 2.0, squares.sum(axis=-1) / 2.0)
+
+
+def mean_rail_current(
+    *,
+    peak_current: ArrayLike,
+    conducting: ArrayLike,
+    emitter_resistor: ArrayLike,
+    idle_current: ArrayLike,
+    law: Law,
+    transconductance_parameter: ArrayLike | None = None,
+    thermal_voltage: float = THERMAL_VOLTAGE,
+) -> Array:
+    """Return the mean current of each rail, class B to class A.
+
+    Parameters and errors as in `mean_currents`.
+
+    Returns
+    -------
+    numpy.ndarray
+        A, broadcast shape of the inputs.
+    """
+    currents = mean_currents(
+        peak_current=peak_current,
+        conducting=conducting,
+        emitter_resistor=emitter_resistor,
+        idle_current=idle_current,
+        law=law,
+        transconductance_parameter=transconductance_parameter,
+        thermal_voltage=thermal_voltage,
+    )
+    rail: Array = array(conducting) * currents.mean
+    return rail
+
+
+def pair_heat(
+    *,
+    half_supply: ArrayLike,
+    peak: ArrayLike,
+    load_magnitude: ArrayLike,
+    phase_angle: ArrayLike,
+    conducting: ArrayLike,
+    emitter_resistor: ArrayLike,
+    idle_current: ArrayLike,
+    law: Law,
+    transconductance_parameter: ArrayLike | None = None,
+    thermal_voltage: float = THERMAL_VOLTAGE,
+) -> Array:
+    """Return the heat of all devices of a stage, both sides, for a sine.
+
+    What the rails give, less what the load and the emitter resistors take.
+
+    Parameters
+    ----------
+    half_supply : array_like
+        V of each side, > 0.
+    peak : array_like
+        V, peak of the output, 0 to `half_supply`.
+    load_magnitude : array_like
+        Ohm, > 0.
+    phase_angle : array_like
+        deg, -90 to 90.
+    conducting, emitter_resistor, idle_current, law, transconductance_parameter, thermal_voltage
+        As in `mean_currents`.
+
+    Returns
+    -------
+    numpy.ndarray
+        W, broadcast shape of the inputs.
+
+    Raises
+    ------
+    ValueError
+        If a value is outside its range.
+
+    References
+    ----------
+    Balance of powers; derived. Without idle current and resistors it is class B of R. Boylestad,
+    L. Nashelsky, Electronic Devices and Circuit Theory, Pearson, ch. 12.
+    """
+    positive(half_supply=half_supply, load_magnitude=load_magnitude)
+    refuse("peak", peak, array(peak) > array(half_supply), "at most half_supply")
+    within(-90.0, 90.0, phase_angle=phase_angle)
+    peak_current = array(peak) / array(load_magnitude)
+    currents = mean_currents(
+        peak_current=peak_current,
+        conducting=conducting,
+        emitter_resistor=emitter_resistor,
+        idle_current=idle_current,
+        law=law,
+        transconductance_parameter=transconductance_parameter,
+        thermal_voltage=thermal_voltage,
+    )
+    each = array(half_supply) * currents.mean - array(emitter_resistor) * currents.mean_square
+    load = array(peak) * peak_current * np.cos(np.deg2rad(array(phase_angle))) / 2.0
+    heat: Array = 2.0 * array(conducting) * each - load
+    return heat
+
+
+def no_signal_heat(
+    *, half_supply: ArrayLike, idle_current: ArrayLike, emitter_resistor: ArrayLike, conducting: ArrayLike
+) -> Array:
+    """Return the heat of all devices of a stage without signal.
+
+    Parameters
+    ----------
+    half_supply : array_like
+        V of each side, > 0.
+    idle_current : array_like
+        A of each device, >= 0.
+    emitter_resistor : array_like
+        Ohm of each device, >= 0.
+    conducting : array_like
+        Devices in parallel, >= 1.
+
+    Returns
+    -------
+    numpy.ndarray
+        W, broadcast shape of the inputs.
+
+    Raises
+    ------
+    ValueError
+        If a value is outside its range, or the resistors alone would drop the half supply.
+
+    References
+    ----------
+    Ohm's law; derived.
+    """
+    positive(half_supply=half_supply)
+    non_negative(idle_current=idle_current, emitter_resistor=emitter_resistor)
+    refuse("conducting", conducting, array(conducting) < 1, "one or more")
+    current = array(idle_current)
+    left = array(half_supply) - current * array(emitter_resistor)
+    refuse("half_supply less the drop in the emitter resistor", left, left < 0, "zero or more")
+    heat: Array = 2.0 * array(conducting) * current * left
+    return heat
