@@ -1,0 +1,51 @@
+"""Codes printed on resistors and capacitors: 4R7, 4k7, 2u2, 100n, with a tolerance letter after them.
+
+References
+----------
+IEC 60062, Marking codes for resistors and capacitors.
+"""
+
+import re
+from decimal import Decimal
+from typing import Final
+
+from safeamp.quantities.nouns import Kind
+
+LETTER_PERCENT: Final = {
+    "F": Decimal(1),
+    "G": Decimal(2),
+    "J": Decimal(5),
+    "K": Decimal(10),
+    "M": Decimal(20),
+}
+"""Tolerance letter -> percent."""
+
+_MULTIPLIER: Final = {
+    "resistance": {"R": "ohm", "k": "kohm", "K": "kohm", "M": "Mohm"},
+    "capacitance": {"u": "uF", "µ": "uF", "n": "nF", "p": "pF"},
+}
+_CODE: Final = re.compile(r"([0-9]{0,6})([RkKMunpµ])([0-9]{0,4})(?: ?([FGJKM]))?(?= ?±| ?[+-]|$)")
+LOOKS_LIKE_CODE: Final = re.compile(r"[0-9]{1,6}[A-Za-zµ][0-9]{1,4} ?[FGJKM]?|R[0-9]{1,4}|[0-9]{1,6}[kKunpµ]")
+
+
+def match_code(text: str, kind: Kind) -> tuple[Decimal, str, Decimal | None, int] | None:
+    """Return number, spelling of its unit, percent of the letter, and length of a code, if one leads `text`.
+
+    Parameters
+    ----------
+    text : str
+        Cleaned text.
+    kind : Kind
+        Codes are read for resistance and capacitance only.
+    """
+    found = _CODE.match(text) if kind.iec60062 else None
+    if not found:
+        return None
+    whole, multiplier, part, letter = found.groups()
+    spelling = _MULTIPLIER[kind.name].get(multiplier)
+    if spelling is None or not whole + part:
+        return None
+    if not part and f"{multiplier}{letter or ''}" in kind.spellings:
+        return None  # "100nF" is a number with its unit
+    percent = LETTER_PERCENT[letter] if letter else None
+    return Decimal(f"{whole or 0}.{part or 0}"), spelling, percent, found.end()

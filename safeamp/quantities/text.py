@@ -1,0 +1,116 @@
+"""The first look at a user's text: length, characters, the comma before the origin."""
+
+import re
+import unicodedata
+from typing import Final
+
+from safeamp.quantities.nouns import Kind, Origin, QuantityError
+
+LONGEST: Final = 80
+"""Longest text that is looked at, in characters."""
+
+# Same meaning, other code point. Whole-text NFKC is not safe here: it turns "10²" into "102".
+_SAME: Final = str.maketrans(
+    {
+        "\u2212": "-",  # minus sign
+        "\u2126": "\u03a9",  # ohm sign -> Greek omega
+        "\u03bc": "\u00b5",  # Greek mu -> micro sign
+        "\u2103": "°C",
+        **dict.fromkeys("\t\u00a0\u2007\u2009\u202f", " "),
+    }
+)
+
+ORIGIN_WORDS: Final = {
+    "measured": Origin.MEASURED,
+    "marked": Origin.MARKED,
+    "data sheet": Origin.DATA_SHEET,
+    "datasheet": Origin.DATA_SHEET,
+    "manual": Origin.MANUAL,
+    "guess": Origin.GUESS,
+    "example": Origin.EXAMPLE,
+}
+"""The origins that a user may write."""
+
+_LIST_OF_ORIGINS: Final = "measured, marked, data sheet, manual, guess, example"
+
+
+def quote(text: str) -> str:
+    """Return `text` in quotation marks, shortened, with unprintable characters spelt out."""
+    shown = "".join(c if c.isprintable() else f"\\u{ord(c):04x}" for c in text[:LONGEST])
+    return f'"{shown[:40]}…"' if len(shown) > 40 else f'"{shown}"'
+
+
+def such_as(kind: Kind) -> str:
+    """Return what to write, with an example of the kind."""
+    return f'write {kind.article}, such as "{kind.example}"'
+
+
+def clean(text: str, kind: Kind) -> str:
+    """Return `text` with one code point per meaning and single blanks.
+
+    Raises
+    ------
+    QuantityError
+        If it is empty, too long, or holds control or invisible characters.
+    """
+    if len(text) > LONGEST:
+        raise QuantityError(f"{quote(text)} is longer than {LONGEST} characters", such_as(kind))
+    mapped = text.translate(_SAME)
+    for character in mapped:
+        if character != " " and unicodedata.category(character)[0] in "CZ":
+            name = f"U+{ord(character):04X}"
+            raise QuantityError(
+                f"{quote(text)} has an invisible character ({name})", f"type it anew: {such_as(kind)}"
+            )
+    cleaned = " ".join(mapped.split())
+    if not cleaned:
+        raise QuantityError(f"{quote(text)} is empty", such_as(kind))
+    return cleaned
+
+
+def split_origin(text: str, kind: Kind) -> tuple[str, Origin]:
+    """Return the text before the origin, and the origin (stated when there is none).
+
+    Raises
+    ------
+    QuantityError
+        If a comma stands in a number, or the word after it is no origin.
+    """
+    if comma := re.search(r"[0-9] ?, ?[0-9]", text):
+        raise _comma_in_number(text, comma)
+    head, comma_found, word = (part.strip() for part in text.partition(","))
+    if not comma_found:
+        return head, Origin.STATED
+    if word in ORIGIN_WORDS:
+        return head, ORIGIN_WORDS[word]
+    raise _unknown_origin(text, word, kind)
+
+
+def _comma_in_number(text: str, comma: re.Match[str]) -> QuantityError:
+    point = re.sub(r"([0-9]) ?, ?(?=[0-9])", r"\1.", text)
+    without = re.sub(r"([0-9]) ?, ?(?=[0-9])", r"\1", text)
+    if len(re.findall(r"[0-9] ?, ?(?=[0-9])", text)) > 1 or re.search(r"[.'][0-9]+,|,[0-9]+[.']", text):
+        write = "write decimals after a point and thousands without a mark"
+    elif re.match(r".[0-9]{3}(?![0-9])", text[comma.end() - 2 :]) and not re.match(r"[+-]?0 ?,", text):
+        # "1,500" is 1.5 in one country and 1500 in the next: both are said.
+        write = f'write "{point}" if it marks decimals, "{without}" if it marks thousands'
+    else:
+        write = f'write decimals after a point: "{point}"'
+    return QuantityError(f"{quote(text)} has a comma in the number", write)
+
+
+def _unknown_origin(text: str, word: str, kind: Kind) -> QuantityError:
+    if word == Origin.STATED.value:
+        return QuantityError(
+            f'{quote(text)} ends with "stated", which is never written',
+            "leave the word and its comma out when no origin is known",
+        )
+    if word == Origin.ASSUMED.value:
+        return QuantityError(
+            f'{quote(text)} ends with "assumed", which only the program fills in', 'write "guess" for your own'
+        )
+    if not word:
+        return QuantityError(
+            f"{quote(text)} ends with a comma", f"write an origin after it ({_LIST_OF_ORIGINS}) or leave it out"
+        )
+    return QuantityError(f"{quote(word)} is not an origin", f"write one of {_LIST_OF_ORIGINS}")

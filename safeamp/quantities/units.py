@@ -1,0 +1,96 @@
+"""The only place that calls pint: one small registry, and the scale of each unit as exact decimals."""
+
+from __future__ import annotations
+
+from decimal import Decimal
+from functools import cache
+from pathlib import Path
+from typing import TYPE_CHECKING, Any
+
+from safeamp.quantities.nouns import Kind, QuantityError
+
+if TYPE_CHECKING:
+    import pint
+
+
+@cache
+def registry() -> pint.UnitRegistry[Any]:
+    """Return the pint registry of units.txt, built at the first call and kept.
+
+    Examples
+    --------
+    >>> ureg = registry()
+    >>> (ureg.Quantity(2.0, "volt") / ureg.Quantity(4.0, "ohm")).to("ampere").magnitude
+    0.5
+    """
+    import pint
+
+    # No cache folder: a cache that outlives its environment breaks the next start.
+    return pint.UnitRegistry(str(Path(__file__).with_name("units.txt")), cache_folder=None)
+
+
+@cache
+def scale(unit: str, base: str) -> tuple[Decimal, Decimal]:
+    """Return factor and offset that turn a number in `unit` into one in `base`.
+
+    pint decides both; as decimals of 15 digits (1e-6, not its nearest float) they make the product
+    with the user's digits correctly rounded.
+    """
+    ureg = registry()
+    at_zero, at_one = (
+        Decimal(f"{ureg.Quantity(number, unit).to(base).magnitude:.15g}") for number in (0.0, 1.0)
+    )
+    return at_one - at_zero, at_zero
+
+
+def to_base(number: Decimal, unit: str, kind: Kind) -> Decimal:
+    """Return `number` of `unit` in the unit of `kind`."""
+    factor, offset = scale(unit, kind.base)
+    return number * factor + offset
+
+
+def difference_to_base(number: Decimal, unit: str, kind: Kind) -> Decimal:
+    """Return a difference of `number` of `unit` in the unit of `kind` (a temperature loses no zero point)."""
+    return number * scale(unit, kind.base)[0]
+
+
+def quantity(value: Any, kind: Kind) -> pint.Quantity:
+    """Return a pint quantity.
+
+    Parameters
+    ----------
+    value : float or array_like
+        In the unit of `kind` (SI base; degC, deg).
+    kind : Kind
+        The kind of quantity.
+
+    Returns
+    -------
+    pint.Quantity
+        Same shape, in the registry of this package.
+    """
+    return registry().Quantity(value, kind.base or "dimensionless")
+
+
+def is_quantity(value: object) -> bool:
+    """Return whether `value` is a quantity of pint, without importing pint."""
+    return hasattr(value, "magnitude") and hasattr(value, "dimensionality")
+
+
+def magnitude(value: Any, kind: Kind) -> float:
+    """Return a scalar pint quantity as a float in the unit of `kind`.
+
+    Raises
+    ------
+    QuantityError
+        If it has another dimension, or is no single number.
+    """
+    import pint
+
+    write = f"give {kind.article} in {kind.unit}"
+    try:
+        return float(value.to(kind.base or "dimensionless").magnitude)
+    except pint.errors.PintError as error:
+        raise QuantityError(f"a quantity in {value.units} is not {kind.article}", write) from error
+    except (TypeError, ValueError) as error:
+        raise QuantityError(f"a quantity of several values is not one {kind.name}", write) from error
