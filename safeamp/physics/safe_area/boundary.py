@@ -26,7 +26,7 @@ class Boundary:
     last: Any
     """V up to which the points say something; nan without points."""
 
-    def second_breakdown(self, voltage: Any) -> Any:
+    def second_breakdown(self, voltage: Array) -> Array:
         """Return the derated current of the points, A; infinite where they say nothing."""
         if not self.lines:
             return np.full(np.shape(voltage), np.inf)
@@ -38,11 +38,12 @@ class Boundary:
         with np.errstate(invalid="ignore"):
             return np.where(np.isposinf(line), np.inf, self.derating * np.exp(line))
 
-    def power_line(self, voltage: Any) -> Any:
+    def power_line(self, voltage: Array) -> Array:
         """Return the derated current of the power line, A."""
-        return self.derating * self.power / voltage
+        line: Array = self.derating * self.power / voltage
+        return line
 
-    def allowed(self, voltage: Any) -> Any:
+    def allowed(self, voltage: Array) -> Array:
         """Return the allowed current, A."""
         positive = np.maximum(voltage, LEAST_VOLTAGE)
         allowed = np.minimum(self.power_line(positive), self.rating.current)
@@ -52,7 +53,7 @@ class Boundary:
         return np.where(np.isnan(voltage + self.rating.voltage), np.nan, known)
 
 
-def _lines(rating: Rating) -> tuple[tuple[Any, Any, Any], ...]:
+def _lines(rating: Rating) -> tuple[tuple[Array, Array, Array], ...]:
     """Return the lines between the points, the first one from zero volts on where it is continued."""
     lines = []
     for (low, more), (high, less) in pairwise(rating.points):
@@ -68,7 +69,7 @@ def _lines(rating: Rating) -> tuple[tuple[Any, Any, Any], ...]:
 
 def boundary(rating: Rating, case_temperature: ArrayLike) -> Boundary:
     """Return the boundary of a rating at a case temperature in degC."""
-    last = np.nan
+    last: Array = np.asarray(np.nan)
     if rating.points:
         last = np.where(unusable(rating), 0.0, array(rating.points[-1][0]))
     return Boundary(

@@ -6,6 +6,7 @@ from typing import Any
 
 import numpy as np
 
+from safeamp.physics._checks import Array
 from safeamp.physics.safe_area.boundary import LEAST_VOLTAGE, Boundary
 
 ZONES = ("current", "power", "second breakdown", "voltage", "unknown")
@@ -15,7 +16,7 @@ _POINTS = 49
 _ROUNDS = 3
 _STEPS = np.arange(-4, 5) / 4.0
 
-Locus = Callable[[Any], tuple[Any, Any]]
+Locus = Callable[[Array], tuple[Array, Array]]
 """Angle in deg (cases, angles) -> device voltage and compared current there."""
 
 
@@ -35,12 +36,12 @@ class Use:
     """Whether current flows beyond the last point of the safe area, below the voltage rating."""
 
 
-def _counted(current: Any, boundary: Boundary) -> Any:
+def _counted(current: Array, boundary: Boundary) -> Array:
     """Return the current, zero where it is not more than leakage."""
     return np.where(current <= _NO_CURRENT * boundary.rating.current, 0.0, current)
 
 
-def _ratio(voltage: Any, current: Any, boundary: Boundary) -> Any:
+def _ratio(voltage: Array, current: Array, boundary: Boundary) -> Array:
     """Return the use; no current where none is allowed uses nothing."""
     allowed = boundary.allowed(voltage)
     counted = _counted(current, boundary)
@@ -49,12 +50,12 @@ def _ratio(voltage: Any, current: Any, boundary: Boundary) -> Any:
     return np.where((counted == 0) & (allowed == 0), 0.0, ratio)
 
 
-def _reach(voltage: Any, current: Any, boundary: Boundary) -> Any:
+def _reach(voltage: Array, current: Array, boundary: Boundary) -> Array:
     """Return the device voltage where current flows, minus infinity elsewhere."""
     return np.where(_counted(current, boundary) == 0, -np.inf, voltage)
 
 
-def _climb(score: Callable[[Any], Any], coarse: Any, angles: Any) -> Any:
+def _climb(score: Callable[[Array], Array], coarse: Array, angles: Array) -> Array:
     """Return the angle (cases, 1) of the highest score, refined around the best of the coarse ones."""
     step = angles[1] - angles[0]
     best = angles[np.argmax(coarse, axis=-1)][..., None]
@@ -66,7 +67,7 @@ def _climb(score: Callable[[Any], Any], coarse: Any, angles: Any) -> Any:
     return best
 
 
-def _zone(voltage: Any, boundary: Boundary) -> Any:
+def _zone(voltage: Array, boundary: Boundary) -> Array:
     """Return the index of what rules at a device voltage."""
     positive = np.maximum(voltage, LEAST_VOLTAGE)
     power, second = boundary.power_line(positive), boundary.second_breakdown(positive)

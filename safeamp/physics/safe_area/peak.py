@@ -1,20 +1,19 @@
 """Peak dissipation of a class-B stage into a reactive load."""
 
-from typing import Any
-
 import numpy as np
 from numpy.typing import ArrayLike
 
 from safeamp.physics._checks import Array, array, positive, within
 
 
-def _sharing(load_magnitude: ArrayLike, phase_angle: ArrayLike) -> Any:
+def _sharing(load_magnitude: ArrayLike, phase_angle: ArrayLike) -> Array:
     """Return (1 - sin t)*sin(t + angle) at its maximum, t = (90 deg - 2*angle)/3."""
     positive(load_magnitude=load_magnitude)
     within(-90.0, 90.0, phase_angle=phase_angle)
     angle = np.abs(np.deg2rad(array(phase_angle)))
     t = (np.pi / 2.0 - 2.0 * angle) / 3.0
-    return (1.0 - np.sin(t)) * np.sin(t + angle)
+    sharing: Array = (1.0 - np.sin(t)) * np.sin(t + angle)
+    return sharing
 
 
 def equivalent_resistance(*, load_magnitude: ArrayLike, phase_angle: ArrayLike) -> Array:

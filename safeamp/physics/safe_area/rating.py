@@ -94,9 +94,10 @@ def usable_power(
     limit, at = array(junction_limit), array(power_at)
     refuse("junction_limit", junction_limit, limit <= at, "above power_at")
     if junction_to_case is None:
-        return array(power) + 0.0
+        return np.broadcast_to(array(power), np.broadcast_shapes(np.shape(power), limit.shape, at.shape))
     positive(junction_to_case=junction_to_case)
-    return np.minimum(array(power), (limit - at) / array(junction_to_case))
+    usable: Array = np.minimum(array(power), (limit - at) / array(junction_to_case))
+    return usable
 
 
 def derating(*, case_temperature: ArrayLike, power_at: ArrayLike, junction_limit: ArrayLike) -> Array:
@@ -127,8 +128,8 @@ def derating(*, case_temperature: ArrayLike, power_at: ArrayLike, junction_limit
     """
     limit, at = array(junction_limit), array(power_at)
     refuse("junction_limit", junction_limit, limit <= at, "above power_at")
-    left: Array = (limit - array(case_temperature)) / (limit - at)
-    return np.clip(left, 0.0, 1.0)
+    left: Array = np.clip((limit - array(case_temperature)) / (limit - at), 0.0, 1.0)
+    return left
 
 
 def rated_power(rating: Rating) -> Array:
@@ -162,7 +163,10 @@ def _problems(rating: Rating) -> Iterator[tuple[str, Array]]:
 
 def unusable(rating: Rating) -> Array:
     """Tell where the points do not give a curve."""
-    return np.logical_or.reduce([np.asarray(False), *(where for _, where in _problems(rating))])
+    found: Any = np.asarray(False)
+    for _, where in _problems(rating):
+        found = np.logical_or(found, where)
+    return found
 
 
 def points_problem(rating: Rating) -> str | None:

@@ -1,11 +1,12 @@
 """How much of its safe area a device uses into a load."""
 
-from typing import Any
+from collections.abc import Callable
 
 import numpy as np
 from numpy.typing import ArrayLike
 
-from safeamp.physics._checks import array, non_negative, positive, refuse, within
+from safeamp.physics._checks import Array, array, non_negative, positive, refuse, within
+from safeamp.physics._chunks import in_chunks
 from safeamp.physics.safe_area.boundary import boundary
 from safeamp.physics.safe_area.locus import Locus, Use, worst_use
 from safeamp.physics.safe_area.rating import Rating, spread_out
@@ -24,7 +25,7 @@ def _device(
     imbalance: ArrayLike | None,
     transconductance_parameter: ArrayLike | None,
     thermal_voltage: float,
-) -> Any:
+) -> Callable[[Array, Array], tuple[Array, Array]]:
     """Return the function that turns sine and current share (-1 to 1) into voltage and current."""
     supply, swing, resistor, idle, pairs = (
         array(value)[..., None] for value in (half_supply, peak, emitter_resistor, idle_current, conducting)
@@ -35,7 +36,7 @@ def _device(
     if transconductance_parameter is not None:
         parameter = array(transconductance_parameter)[..., None]
 
-    def device(sine: Any, share: Any) -> tuple[Any, Any]:
+    def device(sine: Array, share: Array) -> tuple[Array, Array]:
         mean = carrying_current(
             load_current=each * share,
             idle_current=idle,
@@ -72,6 +73,7 @@ def _search(locus: Locus, case_temperature: ArrayLike, rating: Rating, low: floa
     return worst_use(locus=locus, boundary=boundary(spread_out(rating), cases), low=low, high=high)
 
 
+@in_chunks
 def envelope_use(
     *,
     half_supply: ArrayLike,
@@ -151,12 +153,13 @@ def envelope_use(
     )
     angle = np.abs(array(phase_angle))[..., None]
 
-    def locus(t: Any) -> tuple[Any, Any]:
+    def locus(t: Array) -> tuple[Array, Array]:
         return device(np.sin(np.deg2rad(t)), np.sin(np.deg2rad(np.minimum(90.0, t + angle))))
 
     return _search(locus, case_temperature, rating, -90.0, 90.0)
 
 
+@in_chunks
 def angle_use(
     *,
     half_supply: ArrayLike,
@@ -204,7 +207,7 @@ def angle_use(
     )
     angle = np.abs(array(phase_angle))[..., None]
 
-    def locus(t: Any) -> tuple[Any, Any]:
+    def locus(t: Array) -> tuple[Array, Array]:
         return device(np.sin(np.deg2rad(t)), np.sin(np.deg2rad(t + angle)))
 
     return _search(locus, case_temperature, rating, -180.0, 180.0)

@@ -1,7 +1,6 @@
 """Class B in closed form: the check values beside the class-AB law."""
 
 import math
-from typing import Any
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -80,7 +79,8 @@ def worst_sine_peak(*, half_supply: ArrayLike, phase_angle: ArrayLike, clipping_
     positive(half_supply=half_supply, clipping_peak=clipping_peak)
     within(-90.0, 90.0, phase_angle=phase_angle)
     cosine = np.cos(np.deg2rad(array(phase_angle)))
-    return np.minimum(2.0 * array(half_supply) / (np.pi * cosine), array(clipping_peak))
+    worst: Array = np.minimum(2.0 * array(half_supply) / (np.pi * cosine), array(clipping_peak))
+    return worst
 
 
 def worst_resistive_heat(*, half_supply: ArrayLike, load: ArrayLike) -> Array:
@@ -139,7 +139,7 @@ def mean_supply_current(*, peak_current: ArrayLike) -> Array:
     return mean
 
 
-def _noise_means(rms: Any, clipping_peak: Any) -> tuple[Any, Any]:
+def _noise_means(rms: Array, clipping_peak: Array | None) -> tuple[Array, Array]:
     """Return mean magnitude (V) and mean square (V2) of a Gaussian voltage cut at the clipping peak."""
     if clipping_peak is None:
         return math.sqrt(2.0 / math.pi) * rms, rms**2
@@ -189,8 +189,8 @@ def noise_heat(
     supply = array(half_supply)
     if clipping_peak is not None:
         positive(clipping_peak=clipping_peak)
-        clipping_peak = array(clipping_peak)
-        refuse("clipping_peak", clipping_peak, clipping_peak > supply, "at most half_supply")
-    magnitude, square = _noise_means(array(rms), clipping_peak)
+        refuse("clipping_peak", clipping_peak, array(clipping_peak) > supply, "at most half_supply")
+    cut = None if clipping_peak is None else array(clipping_peak)
+    magnitude, square = _noise_means(array(rms), cut)
     heat: Array = (supply * magnitude - square) / array(load)
     return heat

@@ -6,6 +6,7 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from safeamp.physics._checks import Array, array, non_negative, positive, refuse, within
+from safeamp.physics._chunks import in_chunks
 from safeamp.physics.stage.law import THERMAL_VOLTAGE, Law, device_currents
 
 _NODES, _WEIGHTS = np.polynomial.legendre.leggauss(20)
@@ -22,6 +23,7 @@ class MeanCurrents(NamedTuple):
     """A2."""
 
 
+@in_chunks
 def mean_currents(
     *,
     peak_current: ArrayLike,
@@ -111,6 +113,7 @@ def mean_rail_current(
     return rail
 
 
+@in_chunks
 def pair_heat(
     *,
     half_supply: ArrayLike,

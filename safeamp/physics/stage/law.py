@@ -1,7 +1,6 @@
 """The class-AB law: how an upper and a lower device share the current of the load."""
 
 from enum import Enum
-from typing import Any
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -26,7 +25,7 @@ class Law(Enum):
     """Square law."""
 
 
-def _exponential(magnitude: Any, idle: Any, resistor: Any, voltage: Any) -> tuple[Any, Any]:
+def _exponential(magnitude: Array, idle: Array, resistor: Array, voltage: Array) -> tuple[Array, Array]:
     """Return the larger and the smaller current of two exponential devices.
 
     With s the sum and q = ln(xy / idle**2) the law is q + resistor*(s - 2*idle)/voltage = 0 and
@@ -50,7 +49,9 @@ def _exponential(magnitude: Any, idle: Any, resistor: Any, voltage: Any) -> tupl
     return larger, product / (4.0 * larger)
 
 
-def _square_law(magnitude: Any, idle: Any, resistor: Any, parameter: Any) -> tuple[Any, Any]:
+def _square_law(
+    magnitude: Array, idle: Array, resistor: Array, parameter: Array | None
+) -> tuple[Array, Array]:
     """Return the larger and the smaller current of two square-law devices.
 
     m is the sum of the roots of both currents while both conduct. `parameter` None stands for source
@@ -68,7 +69,7 @@ def _square_law(magnitude: Any, idle: Any, resistor: Any, parameter: Any) -> tup
     return larger + known**2, smaller + known**2
 
 
-def _sum_of_roots(magnitude: Any, idle: Any, resistor: Any, parameter: Any) -> Any:
+def _sum_of_roots(magnitude: Array, idle: Array, resistor: Array, parameter: Array) -> Array:
     """Solve c*m + resistor*(m**2 + (magnitude/m)**2)/2 = both control voltages for m, c = sqrt(2/K).
 
     Rising and convex above sqrt(magnitude), so Newton falls to the root from 2*sqrt(idle). Where one
@@ -88,6 +89,15 @@ def _sum_of_roots(magnitude: Any, idle: Any, resistor: Any, parameter: Any) -> A
         if settled:
             break
     return m
+
+
+def _parameter(given: ArrayLike | None) -> Array | None:
+    """Return the transconductance parameter as an array, when there is one."""
+    if given is None:
+        return None
+    positive(transconductance_parameter=given)
+    parameter: Array = array(given)
+    return parameter
 
 
 def device_currents(
@@ -110,15 +120,10 @@ def device_currents(
     """
     non_negative(idle_current=idle_current, emitter_resistor=emitter_resistor)
     magnitude, idle = np.abs(array(load_current)), array(idle_current)
-    if not np.any(idle != 0):
-        return magnitude + idle, 0.0 * magnitude + idle
     resistor = array(emitter_resistor)
     with np.errstate(divide="ignore", invalid="ignore"):
         if law is Law.MOSFET:
-            if transconductance_parameter is not None:
-                positive(transconductance_parameter=transconductance_parameter)
-                transconductance_parameter = array(transconductance_parameter)
-            larger, smaller = _square_law(magnitude, idle, resistor, transconductance_parameter)
+            larger, smaller = _square_law(magnitude, idle, resistor, _parameter(transconductance_parameter))
         else:
             larger, smaller = _exponential(magnitude, idle, resistor, law.value * thermal_voltage)
     without_idle = idle == 0
