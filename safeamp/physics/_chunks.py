@@ -9,8 +9,8 @@ import numpy as np
 
 from safeamp.physics._checks import array
 
-CHUNK = 2048
-"""Cases at a time; with some fifty angles each, one array takes 100 KiB."""
+CHUNK = 512
+"""Cases at a time; with some fifty angles each, one array takes 200 KiB."""
 
 P = ParamSpec("P")
 R = TypeVar("R")
@@ -53,9 +53,8 @@ def _part(value: Any, shape: tuple[int, ...], piece: slice) -> Any:
 
 def _call(function: Callable[..., R], given: dict[str, Any], shape: tuple[int, ...], piece: slice) -> R:
     """Call `function` with the cases of one piece."""
-    return function(
-        **{name: _changed(value, lambda x: _part(x, shape, piece)) for name, value in given.items()}
-    )
+    cut = {name: _changed(value, lambda x: _part(x, shape, piece)) for name, value in given.items()}
+    return function(**cut)
 
 
 def in_chunks(function: Callable[P, R]) -> Callable[P, R]:

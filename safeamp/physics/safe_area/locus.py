@@ -58,7 +58,7 @@ def _reach(voltage: Array, current: Array, boundary: Boundary) -> Array:
 def _climb(score: Callable[[Array], Array], coarse: Array, angles: Array) -> Array:
     """Return the angle (cases, 1) of the highest score, refined around the best of the coarse ones."""
     step = angles[1] - angles[0]
-    best = angles[np.argmax(coarse, axis=-1)][..., None]
+    best: Array = angles[np.argmax(coarse, axis=-1)][..., None]
     for _ in range(_ROUNDS):
         trial = np.clip(best + step * _STEPS, angles[0], angles[-1])
         found = np.argmax(score(trial), axis=-1)[..., None]
@@ -85,13 +85,20 @@ def worst_use(*, locus: Locus, boundary: Boundary, low: float, high: float) -> U
     """
     angles = np.linspace(low, high, _POINTS)
     voltage, current = locus(angles)
-    top = _climb(lambda a: _ratio(*locus(a), boundary), _ratio(voltage, current, boundary), angles)
-    far = _climb(lambda a: _reach(*locus(a), boundary), _reach(voltage, current, boundary), angles)
-    reach = _reach(*locus(far), boundary)
-    beyond = reach > boundary.rating.voltage
-    worst = np.where(beyond, far, top)
-    voltage, current = locus(worst)
-    use = np.where(beyond, np.inf, _ratio(voltage, current, boundary))
+    worst = _climb(lambda a: _ratio(*locus(a), boundary), _ratio(voltage, current, boundary), angles)
+    reach: Array = np.asarray(-np.inf)
+    edge = np.fmin(boundary.last, boundary.rating.voltage)
+    if not np.all(voltage <= edge):
+        far = _climb(lambda a: _reach(*locus(a), boundary), _reach(voltage, current, boundary), angles)
+        reach = _reach(*locus(far), boundary)
+        worst = np.where(reach > boundary.rating.voltage, far, worst)
+    return _at(worst, reach, locus, boundary)
+
+
+def _at(angle: Array, reach: Array, locus: Locus, boundary: Boundary) -> Use:
+    """Return what holds at the worst angle of a locus that carries current up to the voltage `reach`."""
+    voltage, current = locus(angle)
+    use = np.where(reach > boundary.rating.voltage, np.inf, _ratio(voltage, current, boundary))
     enters = (reach > boundary.last) & (boundary.last < boundary.rating.voltage)
     fields = np.broadcast_arrays(use, voltage, current, _zone(voltage, boundary), enters)
     return Use(*(field[..., 0] for field in fields))

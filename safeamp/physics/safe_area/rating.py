@@ -6,9 +6,11 @@ from itertools import pairwise
 from typing import Any
 
 import numpy as np
-from numpy.typing import ArrayLike
+from numpy.typing import ArrayLike, NDArray
 
 from safeamp.physics._checks import Array, array, positive, refuse
+
+Mask = NDArray[np.bool_]
 
 UNDER = 0.95
 """A first point below this part of the power line says that the sheet starts its curve too late."""
@@ -142,31 +144,31 @@ def rated_power(rating: Rating) -> Array:
     )
 
 
-def starts_under(rating: Rating) -> Array:
+def starts_under(rating: Rating) -> Mask:
     """Tell where the first point lies more than 5 % under the power line."""
     volts, amperes = rating.points[0]
-    under: Array = array(volts) * array(amperes) < UNDER * rated_power(rating)
+    under: Mask = array(volts) * array(amperes) < UNDER * rated_power(rating)
     return under
 
 
-def _problems(rating: Rating) -> Iterator[tuple[str, Array]]:
+def _problems(rating: Rating) -> Iterator[tuple[str, Mask]]:
     """Yield what keeps the points from being a curve, with the cases that it concerns."""
     if len(rating.points) == 1:
         says = "the only point of the safe area lies more than 5 % under the power line: add another"
         yield says, starts_under(rating)
     for (_, before), (volts, after) in pairwise(rating.points):
-        rising: Array = array(after) > array(before)
+        rising: Mask = array(after) > array(before)
         if np.any(rising):
             nominal = float(np.ravel(volts)[0])
             yield f"the current of the safe area rises towards {nominal:g} V", rising
 
 
-def unusable(rating: Rating) -> Array:
+def unusable(rating: Rating) -> Mask:
     """Tell where the points do not give a curve."""
-    found: Any = np.asarray(False)
+    marks: Mask = np.asarray(False)
     for _, where in _problems(rating):
-        found = np.logical_or(found, where)
-    return found
+        marks = np.logical_or(marks, where)
+    return marks
 
 
 def points_problem(rating: Rating) -> str | None:

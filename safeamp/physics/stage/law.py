@@ -10,7 +10,7 @@ from safeamp.physics._checks import Array, array, non_negative, positive, refuse
 THERMAL_VOLTAGE = 1.380649e-23 * 298.15 / 1.602176634e-19
 """V, kT/q at 25 degC (exact constants of the SI, 2019)."""
 
-_SETTLED = 1e-4  # of the logarithm; Newton is quadratic, so the next error is below 1e-8
+_SETTLED = 1e-3  # of the logarithm; Newton is quadratic, so what remains is below 1e-6
 _ROUNDS = 100
 
 
