@@ -14,6 +14,7 @@ _Noun = TypeVar("_Noun")
 Level = float | tuple[float, float]
 
 SENSES: tuple[Sense, ...] = ("at most", "at least", "between")
+NOT_GIVEN = ("caution", "unverified")
 EVIDENCE = ("seen", "transcript", "quoted", "memory", "derived", "common practice", "this project")
 """How well a shipped number is known; an overriding file is `stated` instead."""
 
