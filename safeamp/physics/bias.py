@@ -5,7 +5,6 @@ from numpy.typing import ArrayLike
 
 from safeamp.physics._checks import Array, array, non_negative, positive
 from safeamp.physics.feedback import (
-    THERMAL_VOLTAGE,
     Sensor,
     current_slope_bipolar,
     current_slope_mosfet,
@@ -15,6 +14,7 @@ from safeamp.physics.feedback import (
     untracked,
 )
 from safeamp.physics.settling import idle_junction, programme_rise, settled_idle
+from safeamp.physics.stage.law import THERMAL_VOLTAGE
 
 __all__ = [
     "THERMAL_VOLTAGE",

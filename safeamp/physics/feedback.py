@@ -6,9 +6,7 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from safeamp.physics._checks import Array, array, non_negative, positive, within
-
-THERMAL_VOLTAGE = 1.380649e-23 * 298.15 / 1.602176634e-19
-"""kT/q at 25 degC, V (exact constants of the SI, 2019)."""
+from safeamp.physics.stage.law import THERMAL_VOLTAGE
 
 
 class Sensor(StrEnum):

@@ -144,4 +144,5 @@ def voltage_behind_lamp(
         )
         more = current * load > (1 - share) * whole
         low, high = np.where(more, low, share), np.where(more, share, high)
-    return whole * (1 - (low + high) / 2) + 0 * current
+    left = whole * (1 - (low + high) / 2)
+    return np.where(np.isnan(current * load), np.nan, left)[()]

@@ -7,7 +7,8 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from safeamp.physics._checks import Array, array, non_negative, positive
-from safeamp.physics.feedback import THERMAL_VOLTAGE, Sensor, untracked
+from safeamp.physics.feedback import Sensor, untracked
+from safeamp.physics.stage.law import THERMAL_VOLTAGE
 
 
 @dataclass(frozen=True, eq=False)
@@ -250,4 +251,4 @@ def settled_idle(
         if _is_warm(idle_at):
             lost = lost | (rise_per_ampere * law.slope() >= 1)
         worst = np.maximum(worst, np.where(lost, np.inf, current))
-    return worst
+    return np.where(np.isnan(array(junction_limit)), np.nan, worst)[()]
