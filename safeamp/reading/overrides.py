@@ -52,6 +52,8 @@ class _Override:
         self.complaints.append(self.document.complaint(text, *path))
 
     def changed(self) -> Iterator[tuple[str, Limit]]:
+        if not self.document.data:
+            self.complain("sets no limit; write a table such as [offset.output]")
         for key, value in self.document.data.items():
             yield from self.walk((key,), value)
 
@@ -60,7 +62,8 @@ class _Override:
         id = ".".join(path)
         entries = self.limits.entries
         if not isinstance(value, dict) or not (id in entries or self.leads_on(id)):
-            self.complain(f"not a known limit{nearest(id, entries)}", *path)
+            known = [*entries, *{topic.partition(".")[0]: None for topic in entries}]
+            self.complain(f"not a known limit{nearest(id, known)}", *path)
             return
         inner = {key for key in value if id not in entries or self.leads_on(f"{id}.{key}", itself=True)}
         row = {key: value[key] for key in value if key not in inner}
