@@ -2,6 +2,7 @@
 
 import re
 import tomllib
+from bisect import bisect_right
 from collections.abc import Mapping
 from typing import Any
 
@@ -40,6 +41,7 @@ class _Walk:
     def __init__(self, text: str) -> None:
         self.text = text
         self.place = 0
+        self.starts = [0, *(end.end() for end in re.finditer("\n", text))]
         self.found: dict[Path, int] = {}
         self.arrays: dict[Path, int] = {}
 
@@ -140,4 +142,4 @@ class _Walk:
         return path
 
     def line(self) -> int:
-        return self.text.count("\n", 0, self.place) + 1
+        return bisect_right(self.starts, self.place)

@@ -1,0 +1,129 @@
+"""The devices of a sheet: found in the sheet, in a folder, or among the generic types."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import replace
+from pathlib import Path
+from typing import Any
+
+from safeamp.amplifier import Device
+from safeamp.limits import nearest, plain
+from safeamp.quantities import Origin
+from safeamp.reading.data import device_folder as shipped_folder
+from safeamp.reading.devices import DeviceTable, device_files
+from safeamp.reading.draft import Draft
+from safeamp.reading.walk import require, walk_table
+
+GENERIC = "generic typical values"
+REPLACE = "a generic type is no data sheet: replace it by the data of your device"
+
+
+class _Within:
+    """The lines of one device table in the file of its own."""
+
+    def __init__(self, table: DeviceTable) -> None:
+        self._document = table.document
+
+    @property
+    def path(self) -> str:
+        return self._document.path
+
+    def line(self, *key: str | int) -> int | None:
+        return self._document.line(*key)
+
+
+def read_devices(draft: Draft, data: Mapping[str, Any], folder: Path | None) -> None:
+    """Read every device of the sheet, and those of folder and generic types that the stage names."""
+    inline = _inline(draft, data)
+    files = device_files(folder) if folder else {}
+    generic: dict[str, DeviceTable] | None = None
+    for path, name in _named(draft):
+        if plain(name) in {plain(known) for known in inline}:
+            _rename(draft, path, name, inline)
+            continue
+        if generic is None and plain(name) not in {plain(known) for known in files}:
+            generic = device_files(shipped_folder())
+        found = _rename(draft, path, name, [*inline, *files, *(generic or {})])
+        if found is not None:
+            _from_file(draft, found, files, generic or {})
+    _unused(draft, inline)
+
+
+def _inline(draft: Draft, data: Mapping[str, Any]) -> list[str]:
+    tables = data.get("device", {})
+    draft.sit("device")
+    if not isinstance(tables, Mapping):
+        draft.complain("device", "this is no table; write [device.NAME] and its keys below it")
+        return []
+    for name, table in tables.items():
+        path = f"device.{name}"
+        draft.seats[path] = (draft.places.path, draft.places.line("device", name))
+        if "." in name or name.isdigit() or not name.strip():
+            draft.complain(
+                path, "is no name for a device; write letters, digits and hyphens, without a point"
+            )
+        elif not isinstance(table, Mapping):
+            draft.complain(path, f"this is no table; write [{path}] and its keys below it")
+        else:
+            walk_table(draft, path, Device, table)
+            require(draft, path, Device)
+    return list(tables)
+
+
+def _named(draft: Draft) -> list[tuple[str, str]]:
+    """Return key path and name of each device that the stage names."""
+    drivers = draft.values.get("stage.drivers") or ()
+    single = [(f"stage.{side}", draft.word(f"stage.{side}")) for side in ("upper", "lower")]
+    many = [(f"stage.drivers.{place}", name) for place, name in enumerate(drivers)]
+    return [(path, name) for path, name in (*single, *many) if name]
+
+
+def _rename(draft: Draft, path: str, name: str, known: list[str]) -> str | None:
+    """Put the name of a known device in place of what was typed; complain of an unknown one."""
+    typed = {plain(word): word for word in reversed(known)}
+    found = name if name in known else typed.get(plain(name))
+    if found is None:
+        near = nearest(name, known)
+        draft.complain(path, f'"{name}" is not a known device{near}; write a table [device.{name}]')
+    elif path.startswith("stage.drivers."):
+        place = int(path.rpartition(".")[2])
+        drivers = draft.values["stage.drivers"]
+        draft.values["stage.drivers"] = (*drivers[:place], found, *drivers[place + 1 :])
+    else:
+        draft.values[path] = found
+    return found
+
+
+def _from_file(
+    draft: Draft, name: str, files: Mapping[str, DeviceTable], generic: Mapping[str, DeviceTable]
+) -> None:
+    if f"device.{name}" in draft.written:
+        return
+    table = files.get(name) or generic[name]
+    here, draft.places = draft.places, _Within(table)
+    draft.sit(f"device.{name}")
+    walk_table(draft, f"device.{name}", Device, table.data)
+    require(draft, f"device.{name}", Device)
+    draft.places = here
+    if name not in files:
+        _call_assumed(draft, name)
+
+
+def _call_assumed(draft: Draft, name: str) -> None:
+    """Mark everything of a generic device as assumed, and as not written by the user."""
+    prefix = f"device.{name}."
+    for path in [path for path in draft.origins if path.startswith(prefix)]:
+        draft.origins[path] = Origin.ASSUMED
+    for path in [path for path in draft.entries if path.startswith(prefix)]:
+        draft.entries[path] = replace(draft.entries[path], origin=Origin.ASSUMED)
+    draft.written -= {path for path in draft.written if path.startswith(prefix)}
+    draft.assume(f"device.{name}", GENERIC, REPLACE)
+
+
+def _unused(draft: Draft, inline: list[str]) -> None:
+    used = {name for _, name in _named(draft)}
+    for name in inline:
+        if name not in used:
+            draft.remarks.append(f"device.{name} is not used: stage names other devices")
+            draft.drop(f"device.{name}")

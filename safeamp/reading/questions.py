@@ -1,0 +1,167 @@
+"""Questions the reader asks: values that contradict one another, or what the trade knows of such stages."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+
+from safeamp.quantities import CAPACITANCE, CURRENT, RESISTANCE, TEMPERATURE, VOLTAGE, Kind, Origin, show
+from safeamp.reading.device_questions import ask_devices
+from safeamp.reading.draft import Draft
+from safeamp.reading.reading_questions import ask_readings
+
+MOST_IDLE = {"V": 5.0, "A": 3.0}
+MOST_IDLE_ACROSS_RESISTOR = 10.0
+
+
+def ask(draft: Draft) -> None:
+    """Complain of every contradiction."""
+    for question in (*QUESTIONS, ask_devices, ask_readings):
+        question(draft)
+
+
+def _below(draft: Draft, path: str, other: str, kind: Kind, write: str) -> None:
+    """Complain when one value lies above another that must not be smaller."""
+    value, bound = draft.number(path), draft.number(other)
+    if value is not None and bound is not None and value > bound:
+        draft.complain(path, f"{show(value, kind)} is above {other}, {show(bound, kind)}; {write}")
+
+
+def _mains(draft: Draft) -> None:
+    highest, actual = draft.number("mains.highest"), draft.number("mains.actual")
+    if highest is not None and actual is not None and highest < actual:
+        text = f"{show(highest, VOLTAGE)} is below mains.actual, {show(actual, VOLTAGE)}"
+        draft.complain(
+            "mains.highest", f"{text}; write the highest mains that may come, or leave the key out"
+        )
+
+
+def _rails(draft: Draft) -> None:
+    most = 1 if draft.word("supply.rails") == "single" else 2
+    for name in ("no_load", "full_load"):
+        rails = draft.numbers(f"supply.{name}")
+        if len(rails) > most and draft.word("supply.rails"):
+            has = "a single supply has one rail" if most == 1 else "a split supply has two rails"
+            draft.complain(f"supply.{name}", f"{len(rails)} values are given; {has}: write {most} at most")
+
+
+def _sag(draft: Draft) -> None:
+    idle, loaded = draft.numbers("supply.no_load"), draft.numbers("supply.full_load")
+    if not idle or not loaded or max(len(idle), len(loaded)) > 2:
+        return
+    wide = max(len(idle), len(loaded))
+    for free, under in zip(idle * (wide // len(idle)), loaded * (wide // len(loaded)), strict=True):
+        if under > free:
+            text = f"{show(under, VOLTAGE)} is above no_load, {show(free, VOLTAGE)}"
+            draft.complain("supply.full_load", f"{text}; a rail falls under load: read both again")
+            return
+
+
+def _swing(draft: Draft) -> None:
+    given = {
+        name
+        for name in ("swing_loss", "swing_loss_up", "swing_loss_down", "clipped_peak")
+        if _set(draft, name)
+    }
+    halves = given & {"swing_loss_up", "swing_loss_down"}
+    if len(halves) == 1:
+        other = "swing_loss_down" if "swing_loss_up" in halves else "swing_loss_up"
+        draft.complain(
+            f"stage.{halves.pop()}", f"stands without {other}; write both, or swing_loss for both sides"
+        )
+    elif len(given) > max(1, len(halves)):
+        text = f"{' and '.join(sorted(given))} say the same thing twice"
+        draft.complain(f"stage.{max(given)}", f"{text}; write one of them, clipped_peak if it was measured")
+    _room(draft, sorted(given))
+
+
+def _set(draft: Draft, name: str) -> bool:
+    return draft.number(f"stage.{name}") is not None
+
+
+def _room(draft: Draft, given: list[str]) -> None:
+    """Complain of a loss or a peak that the rail has no room for."""
+    rails = draft.numbers("supply.no_load")
+    if not rails:
+        return
+    side = max(rails) / (2 if draft.word("supply.rails") == "single" else 1)
+    for name in given:
+        volts = draft.number(f"stage.{name}") or 0.0
+        # A peak may stand above half the rail when the midpoint is off.
+        if volts >= side * (1.5 if name == "clipped_peak" else 1.0):
+            text = f"{show(volts, VOLTAGE)} leaves nothing of {show(side, VOLTAGE)} from rail to midpoint"
+            draft.complain(f"stage.{name}", f"{text}; read both again")
+
+
+def _pairs(draft: Draft) -> None:
+    conducting, pairs = draft.number("stage.pairs_conducting"), draft.number("stage.pairs")
+    if conducting is not None and pairs is not None and conducting > pairs:
+        draft.complain(
+            "stage.pairs_conducting",
+            f"{conducting:g} is more than the {pairs:g} pairs; write {pairs:g} or less",
+        )
+
+
+def _idle(draft: Draft) -> None:
+    for name in ("idle", "idle_specified"):
+        volts_or_amperes, unit = draft.number(f"stage.{name}"), draft.word(f"stage.{name}_unit")
+        if volts_or_amperes is not None and unit is not None:
+            ask_idle(draft, f"stage.{name}", volts_or_amperes, unit)
+
+
+def ask_idle(draft: Draft, path: str, value: float, unit: str) -> None:
+    """Complain of an idle current that no output device has."""
+    resistor = draft.number("stage.emitter_resistor")
+    if unit == "A":
+        if value > MOST_IDLE["A"]:
+            small = show(value / 1e3, CURRENT)
+            draft.complain(
+                path, f"{show(value, CURRENT)} of idle current in each device: did you mean {small}?"
+            )
+    elif resistor == 0:
+        draft.complain(
+            path, 'volts are read across a resistor, and emitter_resistor is "none"; write amperes'
+        )
+    elif resistor is not None and value / resistor > MOST_IDLE_ACROSS_RESISTOR:
+        across = f"{show(value, VOLTAGE)} across {show(resistor, RESISTANCE)}"
+        means = f"means {show(value / resistor, CURRENT)}"
+        draft.complain(path, f"{across} {means}: did you mean {show(value / 1e3, VOLTAGE)}?")
+    elif value > MOST_IDLE["V"]:
+        draft.complain(
+            path, f"{show(value, VOLTAGE)} across one resistor: did you mean {show(value / 1e3, VOLTAGE)}?"
+        )
+
+
+def _capacitor(draft: Draft) -> None:
+    value = draft.number("output_capacitor.capacitance")
+    marked = draft.number("output_capacitor.marked_capacitance")
+    if value is not None and marked is not None and not 0.2 <= value / marked <= 5.0:
+        text = f"{show(marked, CAPACITANCE)} is marked and {show(value, CAPACITANCE)} is there"
+        draft.complain("output_capacitor.marked_capacitance", f"{text}: read the print and the unit again")
+
+
+def _air(draft: Draft) -> None:
+    air = draft.number("heatsink.air")
+    if air is not None and air < 30.0 and draft.origins["heatsink.air"] is not Origin.MEASURED:
+        text = f"{show(air, TEMPERATURE)} inside a cabinet with its lid on is cold"
+        draft.complain(
+            "heatsink.air", f'{text}: is it the air of the room? read it at the heatsink and add ", measured"'
+        )
+
+
+def _impedance(draft: Draft) -> None:
+    write = "read the label again"
+    _below(draft, "loudspeaker.minimum_impedance", "loudspeaker.nominal_impedance", RESISTANCE, write)
+
+
+#: Asked in this order; each looks at what is there and is silent about what is missing.
+QUESTIONS: tuple[Callable[[Draft], None], ...] = (
+    _mains,
+    _rails,
+    _sag,
+    _swing,
+    _pairs,
+    _idle,
+    _capacitor,
+    _air,
+    _impedance,
+)

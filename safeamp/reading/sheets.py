@@ -1,0 +1,141 @@
+"""A sheet, from a file or from a program, to the nouns; every complaint at once."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import fields
+from pathlib import Path
+from typing import Any
+
+from safeamp.amplifier import TABLES, Amplifier, Device, Sheet
+from safeamp.complaints import ReadingError
+from safeamp.limits import Limits
+from safeamp.reading.defaults import fill_defaults
+from safeamp.reading.document import read_document
+from safeamp.reading.draft import Draft, in_order
+from safeamp.reading.limits import load_limits
+from safeamp.reading.parts import read_devices
+from safeamp.reading.questions import ask
+from safeamp.reading.requirements import ask_for_missing
+from safeamp.reading.unassessed import unassessed
+from safeamp.reading.walk import tables_of, walk_sheet
+
+
+def load_sheet(
+    path: str | Path, *, device_folder: str | Path | None = None, limits: Limits | None = None
+) -> Sheet:
+    """Read one sheet.
+
+    Parameters
+    ----------
+    path : str or Path
+        The TOML file.
+    device_folder : str or Path, optional
+        Folder of device files; a device of the sheet itself comes first, a generic one last.
+    limits : Limits, optional
+        Where the defaults and the table of interfaces come from; those of the program when left out.
+
+    Raises
+    ------
+    ReadingError
+        With every complaint, in the order of the lines.
+    """
+    document = read_document(Path(path))
+    draft = Draft(document, folder=str(Path(path).parent))
+    amplifier = _read(draft, document.data, device_folder, limits)
+    return _sheet(draft, amplifier, Path(path).name, document.digest)
+
+
+def sheet_from(
+    mapping: Mapping[str, Any],
+    *,
+    device_folder: str | Path | None = None,
+    limits: Limits | None = None,
+    folder: str | Path = ".",
+    source: str = "python",
+) -> Sheet:
+    """Read a sheet from nested mappings, the tables of the file.
+
+    Parameters
+    ----------
+    mapping : Mapping
+        As the file, but a value may also be a float in SI units (degC, deg) or a pint quantity.
+    device_folder, limits
+        As for `load_sheet`.
+    folder : str or Path
+        Where the names of further files are looked up.
+    source : str
+        What complaints name in place of the file.
+
+    Raises
+    ------
+    ReadingError
+        With every complaint.
+    """
+    draft = Draft(_NoLines(source), allow_si=True, folder=str(folder))
+    return _sheet(draft, _read(draft, mapping, device_folder, limits), source, "")
+
+
+class _NoLines:
+    """Places of a sheet that is no file."""
+
+    def __init__(self, path: str) -> None:
+        self._path = path
+
+    @property
+    def path(self) -> str:
+        return self._path
+
+    def line(self, *_: str | int) -> int | None:
+        return None
+
+
+def _read(
+    draft: Draft, data: Mapping[str, Any], device_folder: str | Path | None, limits: Limits | None
+) -> Amplifier:
+    rules = limits or load_limits()
+    walk_sheet(draft, data)
+    try:
+        read_devices(draft, data, Path(device_folder) if device_folder is not None else None)
+    except ReadingError as trouble:
+        draft.complaints += trouble.complaints
+    fill_defaults(draft, rules)
+    ask_for_missing(draft)
+    ask(draft)
+    if draft.complaints:
+        raise ReadingError(in_order(draft.complaints))
+    return _amplifier(draft, data)
+
+
+def _amplifier(draft: Draft, data: Mapping[str, Any]) -> Amplifier:
+    tables = {name: _noun(draft, name, noun) for name, noun in TABLES.items() if name != "device"}
+    devices = {path.split(".")[1]: None for path in draft.values if path.startswith("device.")}
+    return Amplifier(
+        title=data["title"],
+        notes=data.get("notes", ""),
+        **tables,
+        device={name: _noun(draft, f"device.{name}", Device) for name in devices},
+        absent=frozenset(draft.absent),
+        origins=draft.origins,
+    )
+
+
+def _noun(draft: Draft, path: str, noun: type[Any]) -> Any:
+    """Return a noun filled with what the draft holds under its key path."""
+    inner = {name: _noun(draft, f"{path}.{name}", table) for name, table in tables_of(noun).items()}
+    plain = {
+        item.name: draft.values.get(f"{path}.{item.name}") for item in fields(noun) if item.name not in inner
+    }
+    return noun(**plain, **inner)
+
+
+def _sheet(draft: Draft, amplifier: Amplifier, source: str, digest: str) -> Sheet:
+    return Sheet(
+        amplifier=amplifier,
+        entries=draft.entries,
+        assumptions=tuple(draft.assumptions),
+        remarks=tuple(draft.remarks),
+        unassessed=unassessed(draft),
+        source=source,
+        digest=digest,
+    )

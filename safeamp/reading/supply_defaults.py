@@ -1,0 +1,80 @@
+"""Defaults of mains and supply."""
+
+from __future__ import annotations
+
+from safeamp.limits import Limits
+from safeamp.quantities import RATIO, VOLTAGE, Origin, show
+from safeamp.reading.draft import Draft
+
+#: Declared voltages of public supplies; 220 to 240 V were brought together as 230 V.
+DECLARED = (100.0, 120.0, 127.0, 230.0)
+HARMONISED = (220.0, 240.0)
+
+
+def declared_voltage(actual: float) -> float:
+    """Return the declared voltage of the public supply that lies nearest to a reading, V."""
+    if HARMONISED[0] <= actual <= HARMONISED[1]:
+        return 230.0
+    return min(DECLARED, key=lambda declared: abs(declared - actual))
+
+
+def fill_supply(draft: Draft, limits: Limits) -> None:
+    """Fill in what mains and supply leave open."""
+    if draft.word("supply.source") != "mains":
+        return
+    _nominal(draft)
+    _highest(draft, limits)
+    _present(draft)
+    _at_mains(draft)
+    if "supply.full_load" not in draft.written:
+        share = limits.default("supply.full_load")
+        spread = (share.low, share.high)
+        draft.fill("supply.full_load_share", share.nominal, RATIO, spread=spread, text="share of no_load")
+        text = f"{share.nominal:g} of no_load ({share.low:.2f} to {share.high:.2f})"
+        draft.assume("supply.full_load", text, share.says)
+
+
+def _nominal(draft: Draft) -> None:
+    actual = draft.number("mains.actual")
+    if actual is not None and "mains.nominal" not in draft.written:
+        nominal = declared_voltage(actual)
+        text = show(nominal, VOLTAGE)
+        draft.fill("mains.nominal", nominal, VOLTAGE, text=text)
+        draft.assume("mains.nominal", text, "the declared voltage nearest to mains.actual")
+
+
+def _highest(draft: Draft, limits: Limits) -> None:
+    nominal, actual = draft.number("mains.nominal"), draft.number("mains.actual")
+    if nominal is None or "mains.highest" in draft.written:
+        return
+    band = limits.default("mains.present")
+    highest = max(band.high * nominal, actual or 0.0)
+    text = show(highest, VOLTAGE, digits=4)
+    # A public supply does reach this voltage: it is a fact to be borne, not a guess to be settled.
+    draft.fill("mains.highest", highest, VOLTAGE, origin=Origin.STATED, text=text)
+    draft.assume(
+        "mains.highest", text, f"{band.high:g} times nominal ({band.source}), never below mains.actual"
+    )
+
+
+def _present(draft: Draft) -> None:
+    actual, highest = draft.entries.get("mains.actual"), draft.entries.get("mains.highest")
+    if actual is None or highest is None:
+        return
+    spread = (actual.low, max(highest.high, actual.high))
+    draft.fill(
+        "mains.present", actual.nominal, VOLTAGE, spread=spread, origin=actual.origin, text=actual.text
+    )
+
+
+def _at_mains(draft: Draft) -> None:
+    if "supply.at_mains" in draft.written or not draft.has("supply.no_load"):
+        return
+    measured = draft.origins["supply.no_load"] is Origin.MEASURED
+    source = "mains.actual" if measured else "mains.rated"
+    volts = draft.number(source)
+    if volts is None:
+        return
+    draft.fill("supply.at_mains", volts, VOLTAGE, text=show(volts, VOLTAGE, digits=4))
+    why = "the rail was measured today" if measured else "the rail is that of the plate's mains"
+    draft.assume("supply.at_mains", f"{source}, {show(volts, VOLTAGE, digits=4)}", why)

@@ -1,0 +1,58 @@
+"""Keys that a sheet may set and this version does not use, with the findings that they would change."""
+
+from __future__ import annotations
+
+from safeamp.reading.draft import Draft
+
+_HEAT = (
+    "heat.heatsink",
+    "heat.junction",
+    "heat.reading",
+    "soa.resistive_load",
+    "soa.loudspeaker",
+    "touch.temperature",
+)
+
+#: Key of the sheet (a device's without its name) -> ids of the findings that it would change.
+WOULD_CHANGE: dict[str, tuple[str, ...]] = {
+    "heatsink.fins": _HEAT,
+    "device.pulse": ("soa.resistive_load", "soa.loudspeaker"),
+    "device.transient": ("heat.junction",),
+    "device.temperature_coefficient": ("bias.runaway",),
+    "device.transconductance_parameter": ("bias.runaway",),
+    "loudspeaker.impedance_curve": ("soa.loudspeaker",),
+    "loudspeaker.crest_factor": ("loudspeaker.power",),
+    "loudspeaker.resonance": ("capacitor.cutoff",),
+    "loudspeaker.q_mechanical": ("capacitor.cutoff",),
+    "loudspeaker.q_electrical": ("capacitor.cutoff",),
+    "loudspeaker.inductance": ("capacitor.cutoff",),
+    "loudspeaker.moving_mass": ("capacitor.cutoff",),
+    "protection.vi_limiter": ("protection.short",),
+    "stage.bias_tracking": ("bias.runaway",),
+    "stage.idle_at": ("bias.runaway",),
+    "stage.bias_sensor": ("bias.runaway",),
+}
+
+
+def unassessed(draft: Draft) -> dict[str, tuple[str, ...]]:
+    """Return each such key that this sheet sets and the findings, if any, that it would change here."""
+    found = {}
+    for key, ids in WOULD_CHANGE.items():
+        for path in _written(draft, key):
+            if not (key == "heatsink.fins" and draft.has("heatsink.sink_to_air")):
+                found[path] = tuple(id for id in ids if _applies(draft, id))
+    return found
+
+
+def _written(draft: Draft, key: str) -> list[str]:
+    table, _, name = key.partition(".")
+    if table == "device":
+        paths = [f"device.{device}.{name}" for device in draft.outputs()]
+    else:
+        paths = [key]
+    return [path for path in paths if path in draft.written and path not in draft.absent]
+
+
+def _applies(draft: Draft, id: str) -> bool:
+    """Whether a finding applies to this amplifier: those of the output capacitor need one."""
+    return not (id.startswith("capacitor.") and draft.word("stage.coupling") == "direct")
