@@ -1,0 +1,156 @@
+"""Numbers of a finding as people read them: amount, limit, place."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Mapping
+
+from safeamp.amplifier import TABLES, Fins, keys_of, written_key
+from safeamp.findings import Bound, Finding
+from safeamp.quantities import (
+    ANGLE,
+    CURRENT,
+    FREQUENCY,
+    KINDS,
+    PERCENT,
+    POWER,
+    RATIO,
+    TEMPERATURE,
+    TIME,
+    VOLTAGE,
+    Kind,
+    show,
+)
+
+#: Findings whose value is how much of a rating is used, and the rating.
+USES = {
+    "supply.rail_to_rail": "of the rated voltage",
+    "supply.reservoir_voltage": "of the rated voltage",
+    "capacitor.voltage": "of the rated voltage",
+    "capacitor.ripple": "of the rated ripple current",
+    "soa.resistive_load": "of the safe area",
+    "soa.loudspeaker": "of the safe area",
+}
+_AT_KINDS = {
+    "voltage": VOLTAGE,
+    "current": CURRENT,
+    "power": POWER,
+    "angle": ANGLE,
+    "phase": ANGLE,
+    "phase_angle": ANGLE,
+    "frequency": FREQUENCY,
+    "temperature": TEMPERATURE,
+    "case": TEMPERATURE,
+    "time": TIME,
+}
+_BY_UNIT = {kind.unit: kind for kind in reversed(tuple(KINDS.values()))}
+
+
+def shown_kind(finding: Finding) -> Kind:
+    """Return the kind a finding is printed in: a use as a percentage."""
+    return PERCENT if finding.id in USES else finding.kind
+
+
+def _levels(bound: Bound | None) -> list[float]:
+    if bound is None:
+        return []
+    go = bound.go if isinstance(bound.go, tuple) else (bound.go,)
+    return [level for level in (*go, bound.stop) if level is not None]
+
+
+def amount(value: float | None, kind: Kind, apart_from: list[float] | None = None) -> str:
+    """Return a value with enough digits to look different from the limits it differs from."""
+    if value is None or not math.isfinite(value):
+        return show(value, kind)
+    others = [level for level in apart_from or [] if level != value]
+    for digits in range(3, 9):
+        text = show(value, kind, digits)
+        if all(text != show(level, kind, digits) for level in others):
+            return text
+    return show(value, kind, 9)
+
+
+def number_text(finding: Finding) -> str:
+    """Return the value of a finding in words: nominal, worst, and how much is used."""
+    if finding.unbounded:
+        return "without bound"
+    if finding.nominal is None or math.isnan(finding.nominal):
+        return "not read" if finding.to_be_read else "not known"
+    kind, levels = shown_kind(finding), _levels(finding.bound)
+    text = amount(finding.nominal, kind, levels)
+    if finding.id in USES:
+        text = f"uses {text} {USES[finding.id]}, {_left(finding.nominal)}"
+    worst = amount(finding.worst, kind, levels)
+    if finding.worst is not None and finding.worst != finding.nominal:
+        text += f"; worst case {worst}"
+    return text
+
+
+def _left(use: float) -> str:
+    left = 1.0 - use
+    return f"{show(left, PERCENT)} left" if left >= 0.0 else f"{show(-left, PERCENT)} too much"
+
+
+def limit_text(finding: Finding) -> str:
+    """Return the limit in words, such as "go up to 50 mV, stop above 100 mV"."""
+    bound = finding.bound
+    if bound is None:
+        return ""
+    kind = shown_kind(finding)
+    up, beyond = ("from", "below") if bound.sense == "at least" else ("up to", "above")
+    parts = []
+    if isinstance(bound.go, tuple):
+        parts.append(f"go from {show(bound.go[0], kind)} to {show(bound.go[1], kind)}")
+    elif bound.go is not None:
+        parts.append(f"go {up} {show(bound.go, kind)}")
+    if bound.stop is not None:
+        parts.append(f"stop {beyond} {show(bound.stop, kind)}")
+    changed = [f"changed by your limits file: {bound.source}"] if bound.overridden else []
+    return ", ".join(parts + changed)
+
+
+def kind_of(path: str, units: Mapping[str, str] | None = None) -> Kind | None:
+    """Return the kind of the value at a key path; None for words, flags and unknown keys."""
+    if path.endswith("_share"):
+        return PERCENT
+    key = written_key(path)
+    table, *_, name = key.split(".")
+    noun = Fins if ".fins." in key else TABLES.get(table)
+    found = keys_of(noun).get(name) if noun else None
+    if found is not None and len(found.kinds) == 1:
+        only: Kind = found.kinds[0]
+        return only
+    return _BY_UNIT.get((units or {}).get(key, ""))
+
+
+def place_text(finding: Finding) -> str:
+    """Return the worst corner in words, such as "supply.no_load 38.5 V, mains 253 V"."""
+    units = {written_key(item.key): item.unit for item in finding.inputs}
+    parts = []
+    for path, value in finding.worst_case.items():
+        parts.append(f"{_place_name(path)} {show(value, kind_of(path, units) or RATIO)}")
+    return ", ".join(parts)
+
+
+def _place_name(path: str) -> str:
+    if path == "mains.present":
+        return "mains"
+    return f"{written_key(path)}, share" if path.endswith("_share") else written_key(path)
+
+
+def at_text(finding: Finding) -> str:
+    """Return where in the cycle or chain the value stands, such as "voltage 36.4 V, zone power"."""
+    parts = []
+    for name, value in finding.at.items():
+        kind = _AT_KINDS.get(name.rpartition(" ")[2], RATIO)
+        parts.append(f"{name} {value if isinstance(value, str) else show(value, kind)}")
+    return ", ".join(parts)
+
+
+def also_text(finding: Finding) -> str:
+    """Return the further numbers, such as "at 60 deg 155 %"."""
+    use = finding.id in USES
+    kinds = [PERCENT if use and item.kind == RATIO else item.kind for item in finding.also]
+    return ", ".join(
+        f"{item.at} {show(item.value, kind)}" for item, kind in zip(finding.also, kinds, strict=True)
+    )

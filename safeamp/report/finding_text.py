@@ -1,0 +1,57 @@
+"""One finding as lines: a good one in short, any other with its reason, its corner and its next reading."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from safeamp.amplifier import written_key
+from safeamp.findings import Finding, Verdict
+from safeamp.report.amounts import also_text, at_text, limit_text, number_text, place_text
+from safeamp.report.layout import Ink, paragraph
+
+_HANG = " " * 13
+
+
+def finding_lines(finding: Finding, width: int, ink: Ink) -> list[str]:
+    """Return the lines of one finding."""
+    limit = limit_text(finding)
+    head = f"{finding.id}: {number_text(finding)}" + (f" ({limit})" if limit else "")
+    word = f"  {finding.verdict.word:<11}"
+    lines = paragraph(head, width, word)
+    lines[0] = ink.verdict(word, finding.verdict) + lines[0][len(word) :]
+    for text in _details(finding):
+        lines += paragraph(text, width, _HANG, _HANG + "  ")
+    return lines
+
+
+def _details(finding: Finding) -> Iterator[str]:
+    if finding.says:
+        yield finding.says
+    if finding.verdict is Verdict.GO:
+        return
+    for reason in finding.because:
+        yield f"because: {reason}"
+    for label, text in (
+        ("worst case at", place_text(finding)),
+        ("there", at_text(finding)),
+        ("also", also_text(finding)),
+        ("hangs on", _key_or_sentence(finding.overturned_by)),
+        ("to settle it, give", ", ".join(written_key(key) for key in finding.needs)),
+        ("next", finding.next),
+    ):
+        if text:
+            yield f"{label}: {text}"
+
+
+def _key_or_sentence(text: str) -> str:
+    return text if " " in text else written_key(text)
+
+
+def way_out(finding: Finding) -> str:
+    """Return what would clear a finding: its next reading and the keys that settle it."""
+    keys = ", ".join(dict.fromkeys(written_key(key) for key in finding.needs))
+    give = f"give {keys}" if keys else ""
+    reasons = "; ".join(finding.because) or finding.says
+    return (
+        "; ".join(part for part in (finding.next.rstrip("."), give) if part) or f"remove the cause: {reasons}"
+    )
