@@ -1,0 +1,14 @@
+"""Words in, words out, exit status; the only room that knows all others."""
+
+import os
+
+
+def main() -> None:
+    """Run the command line program; ends the process with its exit status."""
+    # Set before anything imports numpy: threads of a matrix library cost more than they bring here.
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
+    from safeamp.cli.app import app
+    from safeamp.cli.output import prepare_streams
+
+    prepare_streams()
+    app(prog_name="safeamp")
