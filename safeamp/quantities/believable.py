@@ -9,30 +9,30 @@ from safeamp.quantities.text import such_as
 from safeamp.quantities.units import to_base
 
 Range = tuple[float, float]
+_STAY_POSSIBLE = "write a value with a tolerance or a range that stays possible"
 
 
 def check_finite(name: str, values: tuple[float, ...], kind: Kind) -> None:
     """Raise QuantityError when a value is nan or without bound."""
     if not all(math.isfinite(value) for value in values):
-        raise QuantityError(f"{name} is beyond all numbers or none at all", such_as(kind))
+        raise QuantityError(f"{name} is no finite number", such_as(kind))
 
 
-def check_sign(name: str, nominal: float, low: float, sign: Sign, kind: Kind) -> None:
-    """Raise QuantityError when the sign of the nominal value is not allowed, or the tolerance reaches there."""
+def check_sign(name: str, reach: str, nominal: float, low: float, sign: Sign, kind: Kind) -> None:
+    """Raise QuantityError when a sign is not allowed; `reach` names the value with its bounds."""
     if sign is Sign.ANY:
         return
-    too_low = (lambda value: value <= 0) if sign is Sign.POSITIVE else (lambda value: value < 0)
-    if too_low(nominal):
-        raise QuantityError(f"{name} is not {_allowed(sign)}", f"{such_as(kind)}, {_allowed(sign)}")
-    if too_low(low):
+    allowed = Sign.POSITIVE if sign is Sign.POSITIVE else Sign.NON_NEGATIVE
+    if _too_low(nominal, sign):
+        raise QuantityError(f"{name} is not {allowed.value}", f"write {kind.article} {allowed.value}")
+    if _too_low(low, sign):
         raise QuantityError(
-            f"{name} reaches down to {show(low, kind)}, which is not {_allowed(sign)}",
-            "write a tolerance or a range that stays possible",
+            f"{reach} reaches down to {show(low, kind)}, which is not {allowed.value}", _STAY_POSSIBLE
         )
 
 
-def _allowed(sign: Sign) -> str:
-    return Sign.POSITIVE.value if sign is Sign.POSITIVE else Sign.NON_NEGATIVE.value
+def _too_low(value: float, sign: Sign) -> bool:
+    return value <= 0 if sign is Sign.POSITIVE else value < 0
 
 
 def check_possible(name: str, low: float, high: float, kind: Kind) -> None:
@@ -41,7 +41,7 @@ def check_possible(name: str, low: float, high: float, kind: Kind) -> None:
         if not kind.possible[0] <= end <= kind.possible[1]:
             raise QuantityError(
                 f"{name} reaches {show(end, kind)}, which is impossible for {kind.article}",
-                "write a value and a tolerance that stay possible",
+                _STAY_POSSIBLE,
             )
 
 

@@ -20,12 +20,16 @@ LETTER_PERCENT: Final = {
 }
 """Tolerance letter -> percent."""
 
-_MULTIPLIER: Final = {
+MULTIPLIER: Final = {
     "resistance": {"R": "ohm", "k": "kohm", "K": "kohm", "M": "Mohm"},
     "capacitance": {"u": "uF", "µ": "uF", "n": "nF", "p": "pF"},
 }
+"""Kind -> letter of the code -> spelling of the unit it stands for."""
 _CODE: Final = re.compile(r"([0-9]{0,6})([RkKMunpµ])([0-9]{0,4})(?: ?([FGJKM]))?(?= ?±| ?[+-]|$)")
-LOOKS_LIKE_CODE: Final = re.compile(r"[0-9]{1,6}[A-Za-zµ][0-9]{1,4} ?[FGJKM]?|R[0-9]{1,4}|[0-9]{1,6}[kKunpµ]")
+LOOKS_LIKE_CODE: Final = re.compile(
+    r"([0-9]{1,6}[RrkKMmunpµVv][0-9]{1,4}|R[0-9]{1,4}|[0-9]{1,6}[kKMunpµR])[FGJKM]?(?= |$)"
+)
+"""What a user may have meant as a code."""
 
 
 def match_code(text: str, kind: Kind) -> tuple[Decimal, str, Decimal | None, int] | None:
@@ -42,7 +46,7 @@ def match_code(text: str, kind: Kind) -> tuple[Decimal, str, Decimal | None, int
     if not found:
         return None
     whole, multiplier, part, letter = found.groups()
-    spelling = _MULTIPLIER[kind.name].get(multiplier)
+    spelling = MULTIPLIER[kind.name].get(multiplier)
     if spelling is None or not whole + part:
         return None
     if not part and f"{multiplier}{letter or ''}" in kind.spellings:

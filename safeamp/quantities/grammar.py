@@ -18,7 +18,10 @@ _TOLERANCE: Final = (
     rf"|(?P<one>[+-]{_UNSIGNED}) ?/ ?(?P<other>[+-]{_UNSIGNED}))"
     rf" ?(?P<in>{_UNIT})"
 )
-_RANGE: Final = re.compile(rf"(?P<low>{_NUMBER}) ?\.\. ?(?P<high>{_NUMBER}) ?(?P<unit>{_UNIT})", re.ASCII)
+# A third dot is refused: "0...5 V" would read as up to 0.5 V.
+_RANGE: Final = re.compile(
+    rf"(?P<low>{_NUMBER}) ?\.\.(?! ?\.) ?(?P<high>{_NUMBER}) ?(?P<unit>{_UNIT})", re.ASCII
+)
 _VALUE: Final = re.compile(
     rf"(?P<number>{_NUMBER}) ?(?P<unit>{_UNIT}?) ?(?P<tolerance>{_TOLERANCE})?", re.ASCII
 )
@@ -53,23 +56,30 @@ def parse(text: str, kind: Kind) -> Written:
         If it is not of the grammar, or the unit is not of the kind.
     """
     cleaned = clean(text, kind)
-    head, origin = split_origin(cleaned, kind)
+    head, origin = split_origin(cleaned)
     if code := match_code(head, kind):
         return _code(text, head, code, origin, kind)
     if found := _RANGE.fullmatch(head):
         return _range(text, found, origin, kind)
     found = _VALUE.fullmatch(head)
     if not found:
-        raise refuse_shape(head, kind)
+        raise refuse_shape(head, kind, _reads)
     unit = _known_unit(found["unit"], found["number"], head, kind)
     minus, plus = _distances(found, head)
     return Written(text, Decimal(found["number"]), unit, origin, minus, plus, (found["in"] or "").strip())
 
 
+def _reads(text: str, kind: Kind) -> bool:
+    """Return whether a suggestion would be read."""
+    head = text.partition(",")[0]
+    found = _RANGE.fullmatch(head) or _VALUE.fullmatch(head)
+    return found is not None and found["unit"].strip() in kind.spellings
+
+
 def _known_unit(unit: str, number: str, head: str, kind: Kind) -> str:
     unit = unit.strip()
     if unit not in kind.spellings:
-        raise refuse_unit(unit, number, head, kind)
+        raise refuse_unit(unit, number, head, kind, _reads)
     return unit
 
 
@@ -78,7 +88,8 @@ def _range(text: str, found: re.Match[str], origin: Origin, kind: Kind) -> Writt
     low, high = Decimal(found["low"]), Decimal(found["high"])
     if not low < high:
         raise QuantityError(
-            f"{quote(found.string)} does not rise", "write the smaller end first, or one number alone"
+            f"{quote(found.string)} does not rise",
+            f'write the smaller end first: "{found["high"]}..{found["low"]} {unit}", or one number alone',
         )
     return Written(text, (low + high) / 2, unit, origin, low=low, high=high)
 
@@ -89,14 +100,12 @@ def _code(
     number, unit, percent, length = code
     found = _AFTER_CODE.fullmatch(head, length)
     if not found:
-        raise refuse_shape(head, kind)
+        raise refuse_shape(head, kind, _reads)
     minus, plus = _distances(found, head)
     if percent is None:
         return Written(text, number, unit, origin, minus, plus, (found["in"] or "").strip())
     if minus is not None:
-        raise QuantityError(
-            f"{quote(head)} has a tolerance letter and a tolerance", "write one of the two"
-        )
+        raise QuantityError(f"{quote(head)} has a tolerance letter and a tolerance", "write one of the two")
     return Written(text, number, unit, origin, -percent, percent, "%")
 
 
@@ -108,10 +117,8 @@ def _distances(found: re.Match[str], head: str) -> tuple[Decimal | None, Decimal
         minus = -plus
     else:
         minus, plus = sorted((Decimal(found["one"]), Decimal(found["other"])))
-        if not (found["one"][0] != found["other"][0]):
-            raise QuantityError(
-                f"{quote(head)} has a tolerance to one side twice", 'write it as "-20/+50 %"'
-            )
+        if found["one"][0] == found["other"][0]:
+            raise QuantityError(f"{quote(head)} has a tolerance to one side twice", 'write it as "-20/+50 %"')
     if minus == plus:
         raise QuantityError(f"{quote(head)} has a tolerance of zero", "leave the tolerance out")
     return minus, plus

@@ -48,6 +48,14 @@ class QuantityError(ValueError):
         return f"{self.found}; {self.write}"
 
 
+class NotOfKindError(QuantityError):
+    """A text whose form or unit is not one of the kind asked for; `hint` when what to write is concrete."""
+
+    def __init__(self, found: str, write: str, *, hint: bool = False) -> None:
+        super().__init__(found, write)
+        self.hint = hint
+
+
 @dataclass(frozen=True)
 class Kind:
     """One kind of quantity: what it is called, how it is written, what is believable.

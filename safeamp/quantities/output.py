@@ -1,12 +1,13 @@
 """An SI float as text: the prefix chosen after rounding, no exponents, no noise of zeros."""
 
 import math
-from decimal import Context, Decimal
+from decimal import ROUND_HALF_UP, Context, Decimal
 
 from safeamp.quantities.nouns import Kind, Reading
 from safeamp.quantities.units import scale
 
-_FULL = 9
+_FULL = 9  # digits of a value in full
+_SHORT = 5  # longest percentage, in characters, that is not better said in the unit
 
 
 def show(value: float | None, kind: Kind, digits: int = 3) -> str:
@@ -37,22 +38,25 @@ def show(value: float | None, kind: Kind, digits: int = 3) -> str:
         return "unknown"
     if math.isinf(value):
         return "unbounded"
-    rounded = Context(prec=digits).create_decimal(Decimal(repr(float(value))))
-    symbol, number = _in_unit(rounded, kind, digits)
-    return f"{_plain(number)} {symbol}".strip()
+    exact = Decimal(repr(float(value)))
+    symbol, unit = _printing_unit(_round(exact, digits), kind)
+    return f"{_plain(_round(_in_unit(exact, unit, kind), digits))} {symbol}".strip()
 
 
-def _in_unit(value: Decimal, kind: Kind, digits: int) -> tuple[str, Decimal]:
-    symbol, unit = _printing_unit(value, kind)
+def _round(number: Decimal, digits: int) -> Decimal:
+    return Context(prec=digits, rounding=ROUND_HALF_UP).plus(number)
+
+
+def _in_unit(value: Decimal, unit: str, kind: Kind) -> Decimal:
     factor, offset = scale(unit, kind.base)
-    return symbol, Context(prec=digits).divide(value - offset, factor)
+    return (value - offset) / factor
 
 
-def _printing_unit(value: Decimal, kind: Kind) -> tuple[str, str]:
-    if value == 0:
+def _printing_unit(rounded: Decimal, kind: Kind) -> tuple[str, str]:
+    if rounded == 0:
         units = [(symbol, unit) for symbol, unit, _ in kind.shown]
         return next((pair for pair in units if pair[1] == kind.base), units[-1])
-    return [(symbol, unit) for symbol, unit, least in kind.shown if abs(value) >= Decimal(repr(least))][-1]
+    return [(symbol, unit) for symbol, unit, least in kind.shown if abs(rounded) >= Decimal(repr(least))][-1]
 
 
 def _plain(number: Decimal) -> str:
@@ -67,23 +71,33 @@ def _plain(number: Decimal) -> str:
 def show_reading(reading: Reading) -> str:
     """Return a reading in full: ``'34.8 V ±2 %, measured'``.
 
-    The tolerance is printed as it stands between the bounds, whichever way it was written.
+    The tolerance is printed as it stands between the bounds, whichever way it was written; without
+    origins that nobody writes (stated, assumed) and a dropped sign the text reads as the same value.
     """
     sign = " (sign dropped)" if reading.sign_dropped else ""
-    return f"{show(reading.nominal, reading.kind, _FULL)}{_tolerance(reading)}, {reading.origin.value}{sign}"
+    value = _with_tolerance(reading) if reading.toleranced else show(reading.nominal, reading.kind, _FULL)
+    return f"{value}, {reading.origin.value}{sign}"
 
 
-def _tolerance(reading: Reading) -> str:
-    if not reading.toleranced:
-        return ""
+def _with_tolerance(reading: Reading) -> str:
     kind = reading.kind
-    nominal, low, high = (Decimal(repr(value)) for value in (reading.nominal, reading.low, reading.high))
+    nominal, low, high = (Decimal(repr(end)) for end in (reading.nominal, reading.low, reading.high))
+    symbol, unit = _printing_unit(_round(nominal, _FULL), kind)
+    if kind.difference == {}:
+        ends = "..".join(_plain(_round(_in_unit(end, unit, kind), _FULL)) for end in (low, high))
+        return f"{ends} {symbol}"
+    head = show(reading.nominal, kind, _FULL)
     if kind.percent_tolerance and nominal:
-        minus, plus = (_plain(_full(abs(end - nominal) / abs(nominal) * 100)) for end in (low, high))
-        if max(len(minus), len(plus)) <= 5:
-            return f" ±{plus} %" if minus == plus else f" -{minus}/+{plus} %"
-    return f" ({show(reading.low, kind, _FULL)} to {show(reading.high, kind, _FULL)})"
+        below, above = sorted(100 * (end - nominal) / nominal for end in (low, high))
+        if max(len(_plain(_round(abs(part), _FULL))) for part in (below, above)) <= _SHORT:
+            return f"{head} {_sides(below, above)} %"
+    factor = scale(unit, kind.base)[0]
+    symbol = next(iter(kind.difference)) if kind.difference else symbol
+    return f"{head} {_sides((low - nominal) / factor, (high - nominal) / factor)} {symbol}".strip()
 
 
-def _full(number: Decimal) -> Decimal:
-    return Context(prec=_FULL).plus(number)
+def _sides(below: Decimal, above: Decimal) -> str:
+    minus, plus = (_plain(_round(abs(part), _FULL)) for part in (below, above))
+    if minus == plus:
+        return f"±{plus}"
+    return f"-{minus}/+{plus}"

@@ -1,17 +1,20 @@
 """Values in, readings out: text of a user, floats and pint quantities of a program."""
 
+import math
 from collections.abc import Mapping
-from decimal import Decimal
 from numbers import Real
-from typing import Any
+from typing import NamedTuple
 
 from safeamp.quantities.believable import Range, check_believable, check_finite, check_possible, check_sign
 from safeamp.quantities.grammar import Written, parse
-from safeamp.quantities.nouns import Kind, Origin, QuantityError, Reading, Sign
+from safeamp.quantities.nouns import Kind, NotOfKindError, Origin, QuantityError, Reading, Sign
 from safeamp.quantities.output import show
 from safeamp.quantities.text import quote, such_as
 from safeamp.quantities.tolerance import bounds
 from safeamp.quantities.units import is_quantity, magnitude
+
+_DIGITS_OF_A_FLOAT = 12
+_PRINTED = 1e15
 
 
 def read(
@@ -52,7 +55,8 @@ def read(
     if isinstance(value, str):
         return _read_text(value, kind, sign, believable)
     number = _bare_number(value, kind, allow_si)
-    return _finish((number, number, number), show(number, kind), None, Origin.STATED, kind, sign, believable)
+    text = show(number, kind, _DIGITS_OF_A_FLOAT) if math.isfinite(number) else str(number)
+    return _finish(_Ends(number, number, number), text, sign, believable, kind)
 
 
 def _bare_number(value: object, kind: Kind, allow_si: bool) -> float:
@@ -61,16 +65,18 @@ def _bare_number(value: object, kind: Kind, allow_si: bool) -> float:
     if isinstance(value, bool) or not isinstance(value, Real):
         raise QuantityError(f"{_named(value)} is not {kind.article}", _in_quotes(kind))
     if not (allow_si or "" in kind.spellings):
-        raise QuantityError(f"{value} has no unit", _in_quotes(kind))
+        raise QuantityError(f"{_named(value)} has no unit", _in_quotes(kind))
     try:
         return float(value)
     except OverflowError as error:
-        raise QuantityError("the number is beyond all use", such_as(kind)) from error
+        raise QuantityError("the number is beyond all use", _in_quotes(kind)) from error
 
 
 def _named(value: object) -> str:
     if isinstance(value, bool):
         return "true" if value else "false"
+    if isinstance(value, (int, float)):
+        return str(value) if -_PRINTED < value < _PRINTED else "the number"
     if isinstance(value, (list, tuple)):
         return "a list"
     return "a table" if isinstance(value, Mapping) else "nothing" if value is None else "what stands here"
@@ -85,32 +91,37 @@ def _in_quotes(kind: Kind) -> str:
 def _read_text(text: str, kind: Kind, sign: Sign, believable: Range | None) -> Reading:
     written = parse(text, kind)
     decimals, toleranced = bounds(written, kind)
-    nominal, low, high = (float(value) for value in decimals)
-    if written.number and not nominal and not decimals[0].is_zero():
+    ends = _Ends(*(float(value) for value in decimals))
+    if ends.nominal == 0 and decimals[0] != 0:
         raise QuantityError(f"{quote(text)} is nearer to zero than any number here", such_as(kind))
-    number = abs(written.number) if sign is Sign.MAGNITUDE else written.number
-    ends = (nominal, low, high)
-    return _finish(ends, quote(text), number, written.origin, kind, sign, believable, toleranced, written)
+    return _finish(ends, text, sign, believable, kind, written, toleranced)
+
+
+class _Ends(NamedTuple):
+    nominal: float
+    low: float
+    high: float
 
 
 def _finish(
-    ends: tuple[float, float, float],
-    name: str,
-    number: Decimal | None,
-    origin: Origin,
-    kind: Kind,
+    ends: _Ends,
+    text: str,
     sign: Sign,
     believable: Range | None,
-    toleranced: bool = False,
+    kind: Kind,
     written: Written | None = None,
+    toleranced: bool = False,
 ) -> Reading:
+    name = quote(text) if written else text
     check_finite(name, ends, kind)
-    dropped = sign is Sign.MAGNITUDE and ends[0] < 0
-    nominal, low, high = (-ends[0], -ends[2], -ends[1]) if dropped else ends
-    check_sign(name, nominal, low, sign, kind)
-    check_possible(name, low, high, kind)
-    check_believable(name, nominal, number, kind, believable)
-    text = written.text if written else name
+    dropped = sign is Sign.MAGNITUDE and ends.nominal < 0
+    nominal, low, high = (-ends.nominal, -ends.high, -ends.low) if dropped else ends
+    widened = written is not None and toleranced and written.low is None and written.minus is None
+    reach = f"{name}, widened as a guess," if widened else name
+    check_sign(name, reach, nominal, low, sign, kind)
+    check_possible(reach, low, high, kind)
+    check_believable(name, nominal, abs(written.number) if written else None, kind, believable)
+    origin = written.origin if written else Origin.STATED
     return Reading(nominal, low, high, origin, toleranced, kind, text, dropped)
 
 
@@ -141,34 +152,20 @@ def read_any(
         If the text is of none of them; the sentence names all.
     """
     ranges = believable or {}
-    if not isinstance(value, str) and not is_quantity(value):
-        raise QuantityError(f"{_named_or_number(value)} has no unit", _write_one_of(kinds))
+    if not isinstance(value, str) and not (allow_si and is_quantity(value)):
+        raise QuantityError(f"{_named(value)} has no unit", _write_one_of(kinds))
+    errors = []
     for kind in kinds:
-        if _fits(value, kind):
+        try:
             return read(value, kind, sign=sign, believable=ranges.get(kind.name), allow_si=allow_si)
-    try:
-        return read(value, kinds[0], sign=sign, allow_si=allow_si)
-    except QuantityError as error:
-        raise QuantityError(error.found, _write_one_of(kinds)) from error
-
-
-def _named_or_number(value: object) -> str:
-    return str(value) if isinstance(value, Real) and not isinstance(value, bool) else _named(value)
+        except NotOfKindError as error:
+            errors.append(error)
+    hints = [error for error in errors if error.hint]
+    raise hints[0] if hints else QuantityError(errors[0].found, _write_one_of(kinds))
 
 
 def _write_one_of(kinds: tuple[Kind, ...]) -> str:
     return "write " + " or ".join(f'{kind.article}, such as "{kind.example}"' for kind in kinds)
-
-
-def _fits(value: Any, kind: Kind) -> bool:
-    try:
-        if isinstance(value, str):
-            parse(value, kind)
-        else:
-            magnitude(value, kind)
-    except QuantityError:
-        return False
-    return True
 
 
 def convert(value: object, kind: Kind, *, sign: Sign = Sign.ANY) -> float:

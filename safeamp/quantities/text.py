@@ -31,6 +31,7 @@ ORIGIN_WORDS: Final = {
 }
 """The origins that a user may write."""
 
+_COMMA: Final = re.compile(r"(?<=[0-9]) ?, ?(?=[0-9])")
 _LIST_OF_ORIGINS: Final = "measured, marked, data sheet, manual, guess, example"
 
 
@@ -68,7 +69,7 @@ def clean(text: str, kind: Kind) -> str:
     return cleaned
 
 
-def split_origin(text: str, kind: Kind) -> tuple[str, Origin]:
+def split_origin(text: str) -> tuple[str, Origin]:
     """Return the text before the origin, and the origin (stated when there is none).
 
     Raises
@@ -76,30 +77,31 @@ def split_origin(text: str, kind: Kind) -> tuple[str, Origin]:
     QuantityError
         If a comma stands in a number, or the word after it is no origin.
     """
-    if comma := re.search(r"[0-9] ?, ?[0-9]", text):
-        raise _comma_in_number(text, comma)
+    if _COMMA.search(text):
+        raise _comma_in_number(text)
     head, comma_found, word = (part.strip() for part in text.partition(","))
     if not comma_found:
         return head, Origin.STATED
     if word in ORIGIN_WORDS:
         return head, ORIGIN_WORDS[word]
-    raise _unknown_origin(text, word, kind)
+    raise _unknown_origin(text, word)
 
 
-def _comma_in_number(text: str, comma: re.Match[str]) -> QuantityError:
-    point = re.sub(r"([0-9]) ?, ?(?=[0-9])", r"\1.", text)
-    without = re.sub(r"([0-9]) ?, ?(?=[0-9])", r"\1", text)
-    if len(re.findall(r"[0-9] ?, ?(?=[0-9])", text)) > 1 or re.search(r"[.'][0-9]+,|,[0-9]+[.']", text):
-        write = "write decimals after a point and thousands without a mark"
-    elif re.match(r".[0-9]{3}(?![0-9])", text[comma.end() - 2 :]) and not re.match(r"[+-]?0 ?,", text):
+def _comma_in_number(text: str) -> QuantityError:
+    found = f"{quote(text)} has a comma"
+    commas = len(_COMMA.findall(text))
+    if commas > 1 or "." in text or "'" in text:
+        return QuantityError(found, "write decimals after a point and thousands without a mark")
+    point = _COMMA.sub(".", text)
+    if re.search(r"(?<![0-9])[1-9][0-9]{0,2} ?, ?[0-9]{3}(?![0-9])", text):
         # "1,500" is 1.5 in one country and 1500 in the next: both are said.
-        write = f'write "{point}" if it marks decimals, "{without}" if it marks thousands'
-    else:
-        write = f'write decimals after a point: "{point}"'
-    return QuantityError(f"{quote(text)} has a comma in the number", write)
+        return QuantityError(
+            found, f'write "{point}" if it marks decimals, "{_COMMA.sub("", text)}" if it marks thousands'
+        )
+    return QuantityError(found, f'write decimals after a point: "{point}"')
 
 
-def _unknown_origin(text: str, word: str, kind: Kind) -> QuantityError:
+def _unknown_origin(text: str, word: str) -> QuantityError:
     if word == Origin.STATED.value:
         return QuantityError(
             f'{quote(text)} ends with "stated", which is never written',
@@ -107,10 +109,14 @@ def _unknown_origin(text: str, word: str, kind: Kind) -> QuantityError:
         )
     if word == Origin.ASSUMED.value:
         return QuantityError(
-            f'{quote(text)} ends with "assumed", which only the program fills in', 'write "guess" for your own'
+            f'{quote(text)} ends with "assumed", which only the program fills in',
+            'write "guess" for your own',
         )
     if not word:
         return QuantityError(
-            f"{quote(text)} ends with a comma", f"write an origin after it ({_LIST_OF_ORIGINS}) or leave it out"
+            f"{quote(text)} ends with a comma",
+            f"write an origin after it ({_LIST_OF_ORIGINS}) or leave it out",
         )
+    if re.search(r"±|\+/-|%|[0-9]\.\.[0-9]", word):
+        return QuantityError(f"{quote(text)} has its tolerance after the comma", "write it before the comma")
     return QuantityError(f"{quote(word)} is not an origin", f"write one of {_LIST_OF_ORIGINS}")

@@ -52,8 +52,13 @@ def _wrong_unit(written: Written, unit: str, kind: Kind) -> QuantityError:
     found = f"{quote(written.text)} has a tolerance {f'in {unit}' if unit else 'without unit'}"
     if kind.difference == {}:
         return QuantityError(found, 'write a range with two dots instead, such as "70..90 %"')
-    allowed = [*(["%"] if kind.percent_tolerance else []), *(kind.spellings if kind.difference is None else kind.difference)]
-    return QuantityError(found, f"write the tolerance of {kind.article} in {' or '.join(filter(None, allowed))}")
+    allowed = [
+        *(["%"] if kind.percent_tolerance else []),
+        *(kind.spellings if kind.difference is None else kind.difference),
+    ]
+    return QuantityError(
+        found, f"write the tolerance of {kind.article} in {' or '.join(filter(None, allowed))}"
+    )
 
 
 def _widened(nominal: Decimal, written: Written, kind: Kind) -> Bounds:

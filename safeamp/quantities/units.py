@@ -7,7 +7,7 @@ from functools import cache
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
-from safeamp.quantities.nouns import Kind, QuantityError
+from safeamp.quantities.nouns import Kind, NotOfKindError, QuantityError
 
 if TYPE_CHECKING:
     import pint
@@ -54,7 +54,7 @@ def difference_to_base(number: Decimal, unit: str, kind: Kind) -> Decimal:
     return number * scale(unit, kind.base)[0]
 
 
-def quantity(value: Any, kind: Kind) -> pint.Quantity:
+def quantity(value: Any, kind: Kind) -> pint.Quantity[Any]:
     """Return a pint quantity.
 
     Parameters
@@ -91,6 +91,6 @@ def magnitude(value: Any, kind: Kind) -> float:
     try:
         return float(value.to(kind.base or "dimensionless").magnitude)
     except pint.errors.PintError as error:
-        raise QuantityError(f"a quantity in {value.units} is not {kind.article}", write) from error
+        raise NotOfKindError(f"a quantity in {value.units} is not {kind.article}", write) from error
     except (TypeError, ValueError) as error:
         raise QuantityError(f"a quantity of several values is not one {kind.name}", write) from error
