@@ -11,7 +11,27 @@ _FILE = Path(__file__).with_name("published.toml")
 _CASES = {entry["id"]: entry for entry in tomllib.loads(_FILE.read_text(encoding="utf-8"))["case"]}
 _NUMBER = re.compile(r"(-?\d+(?:\.\d+)?(?:e-?\d+)?)\s*(.*)")
 _FACTOR = {"%": 1e-2, "k": 1e3, "M": 1e6, "m": 1e-3, "u": 1e-6, "n": 1e-9}
-_WHOLE = {"", "V", "A", "W", "Hz", "H", "F", "ohm", "s", "min", "h", "degC", "deg", "K", "K/W", "W/K", "dB"}
+_WHOLE = {
+    "",
+    "V",
+    "A",
+    "W",
+    "Hz",
+    "H",
+    "F",
+    "ohm",
+    "s",
+    "min",
+    "h",
+    "degC",
+    "deg",
+    "K",
+    "K/W",
+    "W/K",
+    "dB",
+    "N/A",
+    "/K",
+}
 
 
 def case(name: str) -> dict[str, Any]:

@@ -10,7 +10,7 @@ from safeamp.physics.stage import THERMAL_VOLTAGE, Law, carrying_current, worst_
 
 
 def exponential_root(load_current, idle, resistor, voltage):
-    """Both device equations with the bias voltage held; solved for the smaller current, which is the hard one."""
+    """Both device equations with the bias voltage held, solved for the smaller current."""
     magnitude = abs(load_current)
 
     def mismatch(log_smaller):
@@ -19,7 +19,9 @@ def exponential_root(load_current, idle, resistor, voltage):
         sums = resistor * (larger + smaller - 2 * idle)
         return voltage * (np.log(larger / idle) + log_smaller - np.log(idle)) + sums
 
-    smaller = np.exp(brentq(mismatch, -3e4, np.log(magnitude + 4 * idle), xtol=1e-9))
+    if mismatch(-700) >= 0:
+        return 0.0 if load_current < 0 else magnitude
+    smaller = np.exp(brentq(mismatch, -700, np.log(magnitude + 4 * idle), xtol=1e-9))
     return smaller if load_current < 0 else magnitude + smaller
 
 
