@@ -86,10 +86,12 @@ def _known_unit(unit: str, number: str, head: str, kind: Kind) -> str:
 def _range(text: str, found: re.Match[str], origin: Origin, kind: Kind) -> Written:
     unit = _known_unit(found["unit"], found["high"], found.string, kind)
     low, high = Decimal(found["low"]), Decimal(found["high"])
-    if not low < high:
+    if low == high:
+        raise QuantityError(f"{quote(found.string)} has two equal ends", "write one number alone")
+    if low > high:
         raise QuantityError(
             f"{quote(found.string)} does not rise",
-            f'write the smaller end first: "{found["high"]}..{found["low"]} {unit}", or one number alone',
+            f'write the smaller end first: "{found["high"]}..{found["low"]} {unit}"',
         )
     return Written(text, (low + high) / 2, unit, origin, low=low, high=high)
 

@@ -120,7 +120,8 @@ def _finish(
     reach = f"{name}, widened as a guess," if widened else name
     check_sign(name, reach, nominal, low, sign, kind)
     check_possible(reach, low, high, kind)
-    check_believable(name, nominal, abs(written.number) if written else None, kind, believable)
+    number = None if written is None else abs(written.number) if dropped else written.number
+    check_believable(name, nominal, number, kind, believable)
     origin = written.origin if written else Origin.STATED
     return Reading(nominal, low, high, origin, toleranced, kind, text, dropped)
 
