@@ -70,8 +70,8 @@ def _place(complaint: Complaint) -> str:
 
 
 def columns() -> int:
-    """Return the width to print at: 80, or that of the terminal between 60 and 100."""
-    return min(max(shutil.get_terminal_size((80, 24)).columns, 60), 100) if sys.stdout.isatty() else 80
+    """Return the width to print at: 80, or that of the terminal up to 100."""
+    return min(max(shutil.get_terminal_size((80, 24)).columns, 80), 100) if sys.stdout.isatty() else 80
 
 
 def colourful() -> bool:

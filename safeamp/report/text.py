@@ -20,17 +20,17 @@ def render(report: Report, *, width: int = 80, colour: bool = False) -> str:
     Parameters
     ----------
     width : int
-        Columns; no line is longer. At least 60.
+        Columns; no line is longer. At least 80.
     colour : bool
         Whether verdicts are coloured; nothing is said by colour alone.
 
     Raises
     ------
     ValueError
-        If the width is below 60.
+        If the width is below 80.
     """
-    if width < 60:
-        raise ValueError(f"a report needs 60 columns, not {width}")
+    if width < 80:
+        raise ValueError(f"a report needs 80 columns, not {width}")
     ink = Ink(colour=colour)
     lines = [*_head(report, width, ink), *block("Steps, in their order", _steps(report, ink))]
     for entry in report.steps:
@@ -125,7 +125,7 @@ def _way_on(report: Report, width: int) -> list[str]:
 
 def _as_many(ids: list[str], room: int) -> str:
     for count in range(len(ids), 0, -1):
-        text = ", ".join(ids[:count]) + (f" +{len(ids) - count}, above" if count < len(ids) else "")
+        text = ", ".join(ids[:count]) + (f" +{len(ids) - count} above" if count < len(ids) else "")
         if len(text) <= room:
             return text
     return "see above"
@@ -134,7 +134,7 @@ def _as_many(ids: list[str], room: int) -> str:
 def _last(report: Report, width: int) -> list[str]:
     first = report.first_blocked
     if first is not None and first.verdict is not None:
-        head = f"First step not cleared: {first.step.value} ({first.verdict.word}). To clear it: "
+        head = f"First step not cleared: {first.step.value} ({first.verdict.word}); to clear: "
         return [head + _as_many([item.id for item in _blocking(report)], width - len(head))]
     if not report.verdict.clears:
         return paragraph(f"Nothing is cleared: {report.verdict.word} for {what_for(report)}", width)
