@@ -1,4 +1,4 @@
-"""Every formula with one value, range and unit a parameter: what the shared tests of ranges and units run on."""
+"""Every formula with one value, range and unit a parameter: what the tests of ranges and units run on."""
 
 from dataclasses import dataclass, field
 from types import ModuleType
@@ -20,7 +20,8 @@ from safeamp.physics import (
 )
 
 MODULES: tuple[ModuleType, ...] = (
-    bias, capacitor, coil_heating, feedback, fuse, heat, lamp, limiter, loudspeaker, offset, settling, supply, zobel,
+    bias, capacitor, coil_heating, feedback, fuse, heat, lamp, limiter, loudspeaker, offset, settling, supply,
+    zobel,
 )  # fmt: skip
 
 P, N, F = "greater than zero", "zero or more", "free"
@@ -131,7 +132,8 @@ FORMULAS = (
         "transconductance_parameter": (3.0, P, "A/V**2"), "drift": (0.0064, F, "V/K"),
     }),
     Formula(feedback, "loop_index", "", {
-        "device_voltage": (52.0, P, "V"), "seen_resistance": (4.15, F, "K/W"), "current_slope": (4e-3, F, "A/K"),
+        "device_voltage": (52.0, P, "V"), "seen_resistance": (4.15, F, "K/W"),
+        "current_slope": (4e-3, F, "A/K"),
     }),
     Formula(settling, "programme_rise", "K", {
         "sink": (60.0, F, "K"), "air": (30.0, F, "K"), "sink_resistance": (3.0, N, "K/W"),
@@ -182,7 +184,8 @@ FORMULAS = (
     Formula(offset, "coil_power", "W", COIL),
     Formula(offset, "cone_displacement", "m", {**COIL, **DRIVER}),
     Formula(offset, "allowed_dc", "V", {
-        **DRIVER, "linear_excursion": (6.5e-3, P, "m"), "dc_resistance": (5.5, P, "ohm"), "share": (0.1, P, ""),
+        **DRIVER, "linear_excursion": (6.5e-3, P, "m"), "dc_resistance": (5.5, P, "ohm"),
+        "share": (0.1, P, ""),
     }),
     Formula(offset, "detector_threshold", "V", {
         "time_constant": (1.0, P, "s"), "step": (32.0, F, "V"), "trip_after": (0.05, N, "s"),
@@ -219,9 +222,15 @@ FORMULAS = (
     Formula(loudspeaker, "noise_voltage", "V", {"power": (125.0, N, "W"), "impedance": (6.0, P, "ohm")}),
     Formula(loudspeaker, "crest_decibels", "", {"crest_factor": (2.0, P, "")}),
     Formula(loudspeaker, "power_change", "", {"resistance_ratio": (1.8, P, "")}),
-    Formula(loudspeaker, "minimum_allowed_impedance", "ohm", {"nominal": (8.0, P, "ohm"), "share": (0.8, P, "")}),
-    Formula(loudspeaker, "dc_fault_current", "A", {"voltage": (60.0, N, "V"), "dc_resistance": (5.6, P, "ohm")}),
-    Formula(loudspeaker, "dc_fault_power", "W", {"voltage": (60.0, N, "V"), "dc_resistance": (5.6, P, "ohm")}),
+    Formula(loudspeaker, "minimum_allowed_impedance", "ohm", {
+        "nominal": (8.0, P, "ohm"), "share": (0.8, P, ""),
+    }),
+    Formula(loudspeaker, "dc_fault_current", "A", {
+        "voltage": (60.0, N, "V"), "dc_resistance": (5.6, P, "ohm"),
+    }),
+    Formula(loudspeaker, "dc_fault_power", "W", {
+        "voltage": (60.0, N, "V"), "dc_resistance": (5.6, P, "ohm"),
+    }),
     Formula(coil_heating, "copper_ratio", "", {
         "rise": (200.0, F, "K"), "start": (25.0, F, "K"), "coefficient": (0.00393, P, "1/K"),
         "coefficient_at": (20.0, F, "K"),
@@ -234,7 +243,9 @@ FORMULAS = (
     Formula(fuse, "slowest_time", None, {"times_rating": (3.0, N, "")}, {"gates": fuse.GATES["T"]}),
     Formula(fuse, "fastest_time", None, {"times_rating": (3.0, N, "")}, {"gates": fuse.GATES["T"]}),
     Formula(lamp, "hot_resistance", "ohm", LAMP),
-    Formula(lamp, "lamp_resistance", "ohm", {"voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, "")}),
+    Formula(lamp, "lamp_resistance", "ohm", {
+        "voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, ""),
+    }),
     Formula(lamp, "lamp_current", "A", {"voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, "")}),
     Formula(lamp, "worst_fault_power", "W", {"rated_power": (60.0, P, "W")}),
     Formula(lamp, "voltage_behind_lamp", None, {
