@@ -165,6 +165,25 @@ def _law(
     return _Law(array(set_current), array(resistor), array(drift), overdrive, array(thermal_voltage))
 
 
+def _junction(current: Array, *chain: ArrayLike) -> Array:
+    names = ("device_voltage", "junction_to_case", "case_to_sink", "sink_resistance", "air", "sink_rise")
+    return idle_junction(current=current, **dict(zip(names, chain, strict=True)))
+
+
+def _rises_per_ampere(
+    volts: ArrayLike,
+    inner: ArrayLike,
+    middle: ArrayLike,
+    outer: ArrayLike,
+    sensor: Sensor | str,
+    tracking: ArrayLike,
+) -> tuple[Array, Array, Array]:
+    """Return the untracked rise per ampere up to the heatsink, that of the heatsink, and its share."""
+    of_sink, of_case = untracked(sensor=sensor, tracking=tracking)
+    device = array(volts) * (array(inner) + of_case * array(middle))
+    return device, array(volts) * of_sink * array(outer), of_sink
+
+
 def settled_idle(
     *,
     set_current: ArrayLike,
@@ -229,26 +248,16 @@ def settled_idle(
     """
     law = _law(set_current, emitter_resistor, drift, transconductance_parameter, thermal_voltage)
     non_negative(sink_rise=sink_rise)
-    of_sink, of_case = untracked(sensor=sensor, tracking=tracking)
-    heated = {
-        "device_voltage": device_voltage,
-        "junction_to_case": junction_to_case,
-        "case_to_sink": case_to_sink,
-        "air": air,
-        "sink_rise": sink_rise,
-    }
-    volts = array(device_voltage)
-    inner = volts * (array(junction_to_case) + of_case * array(case_to_sink))
-    whole = inner + volts * of_sink * array(sink_resistance)
+    chain = (device_voltage, junction_to_case, case_to_sink)
+    inner, of_heatsink, of_sink = _rises_per_ampere(*chain, sink_resistance, sensor, tracking)
+    warm = _is_warm(idle_at)
     rise = of_sink * (array(air) + array(sink_rise) - array(set_air))
-    if _is_warm(idle_at):
-        rise = rise - whole * law.set_current
+    rise = rise - float(warm) * (inner + of_heatsink) * law.set_current
     worst = np.zeros(())
-    for rise_per_ampere, of_heatsink in ((inner, 0.0), (whole, sink_resistance)):
-        current = law.set_current * law.lowest_ratio(rise, rise_per_ampere)
-        junction = idle_junction(current=current, sink_resistance=of_heatsink, **heated)
-        lost = junction > array(junction_limit)
-        if _is_warm(idle_at):
-            lost = lost | (rise_per_ampere * law.slope() >= 1)
+    for per_ampere, resistance in ((inner, 0.0), (inner + of_heatsink, sink_resistance)):
+        current = law.set_current * law.lowest_ratio(rise, per_ampere)
+        junction = _junction(current, *chain, resistance, air, sink_rise)
+        unstable = warm & (per_ampere * law.slope() >= 1)
+        lost = (junction > array(junction_limit)) | unstable
         worst = np.maximum(worst, np.where(lost, np.inf, current))
     return np.where(np.isnan(array(junction_limit)), np.nan, worst)[()]
