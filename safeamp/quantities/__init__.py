@@ -28,7 +28,7 @@ from safeamp.quantities.kinds import (
     TRANSCONDUCTANCE_PARAMETER,
     VOLTAGE,
 )
-from safeamp.quantities.nouns import Kind, Origin, QuantityError, Reading, Sign
+from safeamp.quantities.nouns import Kind, Number, Origin, QuantityError, Reading, Sign
 from safeamp.quantities.output import show, show_reading
 from safeamp.quantities.reading import convert, read, read_any
 from safeamp.quantities.units import quantity, registry
@@ -58,6 +58,7 @@ __all__ = [
     "TRANSCONDUCTANCE_PARAMETER",
     "VOLTAGE",
     "Kind",
+    "Number",
     "Origin",
     "QuantityError",
     "Reading",

@@ -3,6 +3,10 @@
 import enum
 from collections.abc import Mapping
 from dataclasses import dataclass, field
+from typing import Any
+
+#: A float, or an array over the flat case axis.
+Number = Any
 
 
 class Origin(enum.Enum):

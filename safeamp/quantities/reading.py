@@ -50,8 +50,12 @@ def read(
     ------
     QuantityError
         If it is not read, not possible or not believable.
+    ValueError
+        If a caller asks for the magnitude of a temperature.
     """
     sign = sign or kind.sign
+    if sign is Sign.MAGNITUDE and kind.believable[0] < 0:
+        raise ValueError(f"{kind.article} has no magnitude: its zero is a point on a scale")
     if isinstance(value, str):
         return _read_text(value, kind, sign, believable)
     number = _bare_number(value, kind, allow_si)

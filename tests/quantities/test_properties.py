@@ -73,7 +73,7 @@ def test_a_reading_in_full_is_read_back(kind, data, percent, origin):
 @example(text="1 V/" * 20, kind=q.VOLTAGE)
 @example(text="\ud800", kind=q.VOLTAGE)
 def test_any_text_is_read_or_refused(text, kind):
-    for sign in Sign:
+    for sign in Sign if kind is not q.TEMPERATURE else (Sign.ANY, Sign.POSITIVE, Sign.NON_NEGATIVE):
         outcome = read_or_refuse(text, kind, sign)
         if isinstance(outcome, Reading):
             assert_sound(outcome, sign)

@@ -161,3 +161,9 @@ def test_range_with_negative_low_end_is_signed():
     assert read("-10 degC", q.TEMPERATURE, believable=(-20, 60)).nominal == -10.0
     with pytest.raises(QuantityError, match="not believable"):
         read("-30 degC", q.TEMPERATURE, believable=(-20, 60))
+
+
+def test_temperature_has_no_magnitude():
+    with pytest.raises(ValueError, match="a temperature has no magnitude"):
+        read("-5 degC", q.TEMPERATURE, sign=Sign.MAGNITUDE)
+    assert read("-45 deg", q.ANGLE, sign=Sign.MAGNITUDE).nominal == 45.0
