@@ -89,6 +89,11 @@ def test_first_point_under_the_power_line_is_continued():
         assert left == pytest.approx(min(line, 150 / 36) if continued else 150 / 36)
 
 
+def test_first_point_belongs_to_its_line():
+    rating = replace(DEVICE, points=((40.0, 3.65), (160.0, 0.25)))
+    assert current([39.999, 40, 40.001], rating) == pytest.approx([3.75, 3.65, 3.65], rel=1e-3)
+
+
 def test_last_point_leaves_the_power_line_as_a_number():
     short = replace(DEVICE, points=DEVICE.points[:2])
     assert current([100, 100.001, 160], short) == pytest.approx([0.75, 1.5, 150 / 160], rel=1e-4)

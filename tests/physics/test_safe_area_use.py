@@ -80,13 +80,22 @@ def test_nan_uses_nan(name, use):
     assert np.isnan(pair).tolist() == [False, True]
 
 
+@pytest.mark.parametrize("peak", [0.0, 30.0])
 @pytest.mark.parametrize(
-    "name", ["current", "power", "power_at", "junction_limit", "junction_to_case", "voltage", "points"]
+    "name", ["current", "power", "power_at", "junction_limit", "junction_to_case", "voltage"]
 )
-def test_nan_rating_uses_nan(name):
-    nan = ((40.0, 3.75), (100.0, np.nan)) if name == "points" else np.nan
-    a = BASE | {"phase_angle": 60.0, "rating": replace(DEVICE, **{name: nan})}
+def test_nan_rating_uses_nan(name, peak):
+    a = BASE | {"peak": peak, "idle_current": 0, "rating": replace(DEVICE, **{name: np.nan})}
     assert np.isnan(envelope_use(**a).use)
+
+
+@pytest.mark.parametrize("peak", [0.0, 10.0, 30.0])
+@pytest.mark.parametrize("place", range(6))
+def test_nan_in_any_point_uses_nan(place, peak):
+    numbers = [40.0, 3.75, 100.0, 0.75, 160.0, 0.25]
+    numbers[place] = np.nan
+    points = tuple(zip(numbers[::2], numbers[1::2], strict=True))
+    assert np.isnan(envelope_use(**BASE | {"peak": peak, "rating": replace(DEVICE, points=points)}).use)
 
 
 def test_nan_imbalance_and_parameter_use_nan():

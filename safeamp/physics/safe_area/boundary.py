@@ -72,6 +72,7 @@ def boundary(rating: Rating, case_temperature: ArrayLike) -> Boundary:
     last: Array = np.asarray(np.nan)
     if rating.points:
         last = np.where(unusable(rating), 0.0, array(rating.points[-1][0]))
+        last = last + 0.0 * sum(array(v) * array(i) for v, i in rating.points)  # one nan spoils the curve
     return Boundary(
         rating=rating,
         derating=derating(

@@ -98,7 +98,7 @@ def worst_use(*, locus: Locus, boundary: Boundary, low: float, high: float) -> U
 def _at(angle: Array, reach: Array, locus: Locus, boundary: Boundary) -> Use:
     """Return what holds at the worst angle of a locus that carries current up to the voltage `reach`."""
     voltage, current = locus(angle)
-    use = np.where(reach > boundary.rating.voltage, np.inf, _ratio(voltage, current, boundary))
+    use = _ratio(voltage, current, boundary)
     enters = (reach > boundary.last) & (boundary.last < boundary.rating.voltage)
     fields = np.broadcast_arrays(use, voltage, current, _zone(voltage, boundary), enters)
     return Use(*(field[..., 0] for field in fields))
