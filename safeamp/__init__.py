@@ -5,6 +5,8 @@ from __future__ import annotations
 from importlib import import_module
 from typing import TYPE_CHECKING, Any
 
+from safeamp._version import __version__
+
 if TYPE_CHECKING:
     from collections.abc import Mapping
     from pathlib import Path
@@ -17,7 +19,6 @@ if TYPE_CHECKING:
     from safeamp.reading import load_sheet, sheet_from
     from safeamp.reading.limits import load_limits
 
-__version__ = "0.1.0"
 __all__ = ["__version__", "check", "load_limits", "load_sheet", "quantity", "read", "sheet_from", "show"]
 
 # Rooms are imported by the first use of a name: "import safeamp" alone must cost nothing.

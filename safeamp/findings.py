@@ -5,17 +5,9 @@ from __future__ import annotations
 import enum
 from collections.abc import Mapping
 from dataclasses import dataclass, field
-from typing import TYPE_CHECKING, Any, Literal
+from typing import Literal
 
-from safeamp.quantities import Kind, Origin
-
-if TYPE_CHECKING:
-    import numpy as np
-    import numpy.typing as npt
-
-    Number = float | npt.NDArray[np.float64]
-else:
-    Number = Any
+from safeamp.quantities import Kind, Number, Origin
 
 Sense = Literal["at most", "at least", "between"]
 
@@ -90,8 +82,11 @@ class Also:
 class Measure:
     """What a check yields: one number per case with its bounds, before judging.
 
-    `value`, `go` and `stop` are floats or arrays over the flat case axis (index 0 nominal); `go`, `stop` and
-    `sense` are None where the limit of the same id holds as it stands.
+    `value`, `go` and `stop` are floats or arrays over the flat case axis (index 0 nominal); `go` and `stop`
+    are None where the limit of the same id holds as it stands, and `without_stop` says that no number is a
+    stop here. `word` is a verdict that follows from structure alone; `unknown` marks the cases in which
+    nothing can be said; with `everywhere` go must hold in every case; `kind` replaces the kind of the
+    register; `needs` are keys that would settle a remark.
     """
 
     value: Number
@@ -105,6 +100,11 @@ class Measure:
     at: Mapping[str, float | str] = field(default_factory=dict)
     method: str = ""
     as_built: AsBuilt | None = None
+    kind: Kind | None = None
+    word: Verdict | None = None
+    unknown: Number | None = None
+    everywhere: bool = False
+    needs: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True)

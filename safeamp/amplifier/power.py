@@ -5,7 +5,6 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 
 from safeamp.amplifier.keys import count, flag, internal, number, special, word
-from safeamp.findings import Number
 from safeamp.quantities import (
     CAPACITANCE,
     CURRENT,
@@ -17,6 +16,7 @@ from safeamp.quantities import (
     THERMAL_RESISTANCE,
     TIME,
     VOLTAGE,
+    Number,
     Sign,
 )
 
@@ -37,16 +37,16 @@ class Fuse:
 class Mains:
     """What the public supply is, what the plate says, what the socket gives today."""
 
-    nominal: Number | None = number(
-        VOLTAGE, "declared voltage of the public supply", believable=MAINS_VOLTS
-    )
+    nominal: Number | None = number(VOLTAGE, "declared voltage of the public supply", believable=MAINS_VOLTS)
     rated: Number | None = number(VOLTAGE, "mains voltage on the amplifier's plate", believable=MAINS_VOLTS)
     rated_frequency: Number | None = number(
         FREQUENCY, "mains frequency on the amplifier's plate", believable=(15.0, 420.0)
     )
     actual: Number | None = number(VOLTAGE, "mains measured today", believable=MAINS_VOLTS)
     highest: Number | None = number(
-        VOLTAGE, "highest mains the amplifier must stand; 1.1 times nominal when left out", believable=MAINS_VOLTS
+        VOLTAGE,
+        "highest mains the amplifier must stand; 1.1 times nominal when left out",
+        believable=MAINS_VOLTS,
     )
     frequency: Number | None = number(FREQUENCY, "frequency of the public supply", believable=(15.0, 420.0))
     present: Number | None = internal()
@@ -91,8 +91,10 @@ class Supply:
     reservoir_rated_voltage: Number | None = number(
         VOLTAGE, "rated voltage printed on the reservoir", believable=(3.0, 1000.0)
     )
-    rail_fuse: Fuse | None = special("fuse", "fuse fitted: \"T 2 A\", an imprint such as \"T2AL250V\", or \"none\"", none="absent")
-    rail_fuse_rated: Fuse | None = special("fuse", "fuse printed on plate or board, or \"none\"", none="absent")
+    rail_fuse: Fuse | None = special(
+        "fuse", 'fuse fitted: "T 2 A", an imprint such as "T2AL250V", or "none"', none="absent"
+    )
+    rail_fuse_rated: Fuse | None = special("fuse", 'fuse printed on plate or board, or "none"', none="absent")
     transformer_power: Number | None = number(POWER, "rated power of the transformer, VA written as W")
     secondary: Number | None = number(VOLTAGE, "secondary voltage of one winding, rms", believable=RAIL_VOLTS)
 
@@ -115,7 +117,9 @@ class Heatsink:
     """The way of the heat from the case to the air."""
 
     sink_to_air: Number | None = number(THERMAL_RESISTANCE, "thermal resistance from heatsink to air")
-    case_to_sink: Number | None = number(THERMAL_RESISTANCE, "thermal resistance from case to heatsink, insulator and paste included")
+    case_to_sink: Number | None = number(
+        THERMAL_RESISTANCE, "thermal resistance from case to heatsink, insulator and paste included"
+    )
     insulator: str | None = word("name of a mounting in the table of interfaces, in place of case_to_sink")
     air: Number | None = number(
         TEMPERATURE,
@@ -123,9 +127,7 @@ class Heatsink:
         required=True,
         believable=(-10.0, 90.0),
     )
-    shared_by: Number | None = count(
-        "channels or bridged sides on the whole heatsink", believable=(1, 16)
-    )
+    shared_by: Number | None = count("channels or bridged sides on the whole heatsink", believable=(1, 16))
     other_heat: Number | None = number(
         POWER,
         "further heat on the same heatsink (drivers, regulators)",
@@ -145,18 +147,16 @@ class Protection:
     """What stands between a fault and the loudspeaker."""
 
     trip_voltage: Number | None = number(
-        VOLTAGE, "DC at which the relay opens, or \"none\"", believable=(0.05, 60.0), none="absent"
+        VOLTAGE, 'DC at which the relay opens, or "none"', believable=(0.05, 60.0), none="absent"
     )
     trip_delay: Number | None = number(
-        TIME, "time from the fault to open contacts, or \"none\"", believable=(0.0005, 60.0), none="absent"
+        TIME, 'time from the fault to open contacts, or "none"', believable=(0.0005, 60.0), none="absent"
     )
-    loudspeaker_fuse: Fuse | None = special("fuse", "fuse in the loudspeaker line, or \"none\"", none="absent")
+    loudspeaker_fuse: Fuse | None = special("fuse", 'fuse in the loudspeaker line, or "none"', none="absent")
     vi_limiter: tuple[tuple[Number, Number], ...] | None = number(
         (VOLTAGE, CURRENT),
-        "points of device voltage and device current at which the limiter acts, or \"none\"",
+        'points of device voltage and device current at which the limiter acts, or "none"',
         shape="points",
         sign=Sign.MAGNITUDE,
         none="absent",
     )
-
-

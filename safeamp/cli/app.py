@@ -48,7 +48,7 @@ DeviceFolderOption = Annotated[
 
 def _version(wanted: bool) -> None:
     if wanted:
-        from safeamp import __version__
+        from safeamp._version import __version__
 
         emit(f"safeamp {__version__}\n")
         raise typer.Exit

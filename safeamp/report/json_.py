@@ -6,7 +6,7 @@ import json
 import math
 from typing import Any
 
-from safeamp import __version__
+from safeamp._version import __version__
 from safeamp.answers import Report, StepVerdict
 from safeamp.findings import Bound, Finding
 from safeamp.report.safety import SAFETY

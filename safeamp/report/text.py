@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from safeamp import __version__
+from safeamp._version import __version__
 from safeamp.answers import Report, StepVerdict
 from safeamp.findings import Finding, Step, Verdict
 from safeamp.report.finding_text import finding_lines, way_out

@@ -1,0 +1,3 @@
+"""The version of the program, where every room may read it."""
+
+__version__ = "0.1.0"

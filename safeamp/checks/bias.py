@@ -1,0 +1,177 @@
+"""Idle current: level, sharing, balance, drift."""
+
+from __future__ import annotations
+
+from functools import reduce
+
+import numpy as np
+
+from safeamp.amplifier import Amplifier
+from safeamp.checks import operating
+from safeamp.checks.registry import finding
+from safeamp.checks.trace import miss, needed
+from safeamp.checks.words import level, nominal, text
+from safeamp.findings import Also, Measure, NotApplicable, Remark, Step, Verdict
+from safeamp.limits import Limits
+from safeamp.physics import bias
+from safeamp.quantities import CURRENT, POWER, RATIO, VOLTAGE, Number, Origin
+
+NEXT_IDLE = (
+    "read mV across ONE emitter resistor of each device, warm, input shorted, no load; enter each as a list"
+)
+
+
+def _measured(amplifier: Amplifier, path: str) -> bool:
+    return amplifier.origin(path) in (Origin.MEASURED, Origin.EXAMPLE)
+
+
+def _has_resistor(amplifier: Amplifier) -> bool:
+    return "stage.emitter_resistor" not in amplifier.absent
+
+
+def bench_idle(amplifier: Amplifier) -> Number:
+    """Return the idle current of each device as read at the bench, A; noted as missing when nobody read it."""
+    read = operating.read_idle(amplifier)
+    if read is not None:
+        return operating.as_current(amplifier, read, "V")
+    if amplifier.stage.idle is not None and _measured(amplifier, "stage.idle"):
+        return operating.as_current(amplifier, amplifier.stage.idle, amplifier.stage.idle_unit)
+    miss(amplifier, "readings.idle_upper", "readings.idle_lower")
+    return np.nan
+
+
+def _shown(amplifier: Amplifier, current: Number) -> Number:
+    """Return a current as volts across one emitter resistor, or as it is where there is none."""
+    return current * needed(amplifier, "stage.emitter_resistor")[0] if _has_resistor(amplifier) else current
+
+
+def _is_class_ab_bipolar(amplifier: Amplifier, idle: Number, limits: Limits) -> bool:
+    kinds = {operating.device_of(amplifier, side).kind for side in ("upper", "lower")}
+    peak = operating.clipping_peak(amplifier) / operating.nominal_load(amplifier)[0]
+    share = limits["bias.idle"].extra["class_ab_share_of_peak"]
+    low = nominal(idle) < share * nominal(peak) / nominal(operating.conducting(amplifier))
+    return bool(low) and kinds <= {"bipolar", "darlington"}
+
+
+@finding("bias.idle", Step.BIAS, VOLTAGE, at_bench=True)
+def check_idle(amplifier: Amplifier, limits: Limits) -> Measure:
+    """V across one emitter resistor (A where there is none)."""
+    idle = bench_idle(amplifier)
+    go, stop, remarks = _idle_bounds(amplifier, idle, limits)
+    value = _shown(amplifier, idle)
+    return Measure(
+        value,
+        _idle_text(amplifier, idle, limits),
+        go=go,
+        stop=stop,
+        without_stop=stop is None,
+        remarks=remarks,
+        also=_idle_also(amplifier, idle),
+        kind=VOLTAGE if _has_resistor(amplifier) else CURRENT,
+        next=NEXT_IDLE,
+        method="reading across one emitter resistor; the larger mean of the two sides",
+    )
+
+
+def _idle_bounds(
+    amplifier: Amplifier, idle: Number, limits: Limits
+) -> tuple[Number | tuple[float, float] | None, Number | None, tuple[Remark, ...]]:
+    extra, specified = limits["bias.idle"].extra, _specified(amplifier)
+    if np.isnan(nominal(idle)):
+        return None, None, ()
+    class_ab = _is_class_ab_bipolar(amplifier, idle, limits) and _has_resistor(amplifier)
+    stop = None if specified is None else extra["stop_times_specified"] * specified
+    if class_ab:
+        return limits["bias.idle"].go, stop, ()
+    if specified is not None:
+        return extra["go_times_specified"] * specified, stop, ()
+    because = "class A, a MOSFET or no emitter resistor: only stage.idle_specified says what is right"
+    return np.inf, None, (Remark(Verdict.CAUTION, because),)
+
+
+def _specified(amplifier: Amplifier) -> Number | None:
+    table = amplifier.stage
+    if table.idle_specified is None:
+        return None
+    current = operating.as_current(amplifier, table.idle_specified, table.idle_specified_unit)
+    return _shown(amplifier, current)
+
+
+def _idle_text(amplifier: Amplifier, idle: Number, limits: Limits) -> str:
+    if not _has_resistor(amplifier):
+        return f"{text(idle, CURRENT)} of each device"
+    drop = _shown(amplifier, idle)
+    said = f"{text(drop, VOLTAGE)} across one emitter resistor is {text(idle, CURRENT)} of each device"
+    if nominal(drop) < limits["bias.idle"].extra["dead_zone_below"]:
+        return f"{said}; so little leaves a dead zone around zero: crossover distortion, no danger"
+    return said
+
+
+def _idle_also(amplifier: Amplifier, idle: Number) -> tuple[Also, ...]:
+    half = operating.half(amplifier, operating.no_load_rail(amplifier))
+    resistor = needed(amplifier, "stage.emitter_resistor")[0]
+    found = [
+        Also("current of each device", nominal(idle), CURRENT),
+        Also("heat of each device without signal", nominal(idle * (half - idle * resistor)), POWER),
+    ]
+    if _has_resistor(amplifier):
+        best = bias.oliver_idle(emitter_resistor=resistor)
+        found.append(Also("Oliver's optimum for this resistor", nominal(best), CURRENT))
+    return tuple(found)
+
+
+def _sides_read(amplifier: Amplifier) -> list[tuple[Number, ...]]:
+    upper, lower = needed(amplifier, "readings.idle_upper", "readings.idle_lower")
+    return [side for side in (upper, lower) if isinstance(side, tuple)]
+
+
+@finding("bias.imbalance", Step.BIAS, RATIO, at_bench=True)
+def check_imbalance(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicable:
+    """Largest departure of one device from the mean of its group."""
+    if nominal(needed(amplifier, "stage.pairs")[0]) == 1:
+        if amplifier.origin("stage.pairs") is not Origin.ASSUMED:
+            return NotApplicable("stage.pairs = 1")
+        miss(amplifier, "stage.pairs")
+    groups = _sides_read(amplifier)
+    if len(groups) < 2:
+        return Measure(np.nan, "how the parallel devices share is not given", next=NEXT_IDLE)
+    means = [sum(group) / len(group) for group in groups]
+    departures = [
+        np.abs(one / mean - 1.0) for group, mean in zip(groups, means, strict=True) for one in group
+    ]
+    small = reduce(np.minimum, means) < limits["bias.imbalance"].extra["small_reading_below"]
+    return Measure(
+        reduce(np.maximum, departures),
+        f"{len(groups[0])} devices a side, mean {text(means[0], VOLTAGE)} above and {text(means[1], VOLTAGE)} below",
+        stop=np.where(small, np.inf, level(limits["bias.imbalance"], "stop")),
+        next="compare each resistor's reading; the odd one out has another gain, or is open",
+        method="largest departure from the mean of its group, over that mean",
+    )
+
+
+@finding("bias.balance", Step.BIAS, RATIO, at_bench=True)
+def check_balance(amplifier: Amplifier, limits: Limits) -> Measure:
+    """Upper sum against lower sum."""
+    groups = _sides_read(amplifier)
+    if len(groups) < 2:
+        return Measure(np.nan, "upper and lower readings are not both given", next=NEXT_IDLE)
+    upper, lower = sum(groups[0]), sum(groups[1])
+    return Measure(
+        np.abs(upper - lower) / ((upper + lower) / 2.0),
+        f"upper side {text(upper, VOLTAGE)}, lower side {text(lower, VOLTAGE)} in sum",
+        next="a difference flows through the load, a driver or a leak: read the output's DC with it",
+        method="difference of the sums over their mean",
+    )
+
+
+@finding("bias.drift", Step.BIAS, RATIO, at_bench=True)
+def check_drift(amplifier: Amplifier, limits: Limits) -> Measure:
+    """Idle warm over cold."""
+    (cold,) = needed(amplifier, "readings.idle_cold")
+    warm = _shown(amplifier, bench_idle(amplifier))
+    return Measure(
+        warm / np.where(np.asarray(cold) > 0.0, cold, np.nan),
+        f"idle {text(cold, VOLTAGE)} just after switch-on, {text(warm, VOLTAGE)} warm",
+        next="read again after ten and twenty minutes; a reading that still rises after that is a fault: switch off",
+        method="warm reading over cold reading",
+    )

@@ -1,0 +1,272 @@
+"""The loudspeaker: its label, its power, a rail on its coil."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from safeamp.amplifier import Amplifier, Fuse
+from safeamp.checks import operating
+from safeamp.checks.registry import finding
+from safeamp.checks.trace import miss, needed
+from safeamp.checks.words import nominal, text
+from safeamp.findings import Also, Measure, Remark, Step, Verdict
+from safeamp.limits import Limits
+from safeamp.physics import capacitor, loudspeaker
+from safeamp.physics.coil_heating import time_to_temperature
+from safeamp.physics.fuse import Gates, slowest_time
+from safeamp.quantities import CURRENT, ENERGY, POWER, RATIO, RESISTANCE, TIME, VOLTAGE, Number
+
+#: Room in which the loudspeaker stands, degC.
+ROOM = 25.0
+COPPER = 0.00393
+THERMAL = (
+    "loudspeaker.coil_to_magnet",
+    "loudspeaker.coil_time_constant",
+    "loudspeaker.magnet_to_air",
+    "loudspeaker.magnet_time_constant",
+    "loudspeaker.coil_limit",
+)
+
+
+def label_ratio(amplifier: Amplifier) -> Number:
+    """Return DC resistance over nominal impedance as printed."""
+    coil, printed = needed(amplifier, "loudspeaker.dc_resistance", "loudspeaker.nominal_impedance")
+    ratio: Number = coil / printed
+    return ratio
+
+
+@finding("loudspeaker.label", Step.LOUDSPEAKER, RATIO)
+def check_label(amplifier: Amplifier, limits: Limits) -> Measure:
+    """DC resistance over nominal impedance."""
+    ratio = label_ratio(amplifier)
+    return Measure(
+        ratio,
+        _label_text(amplifier, ratio),
+        next="read the DC resistance at the loudspeaker's terminals, cable off",
+        method="DC resistance over nominal impedance",
+    )
+
+
+def _label_text(amplifier: Amplifier, ratio: Number) -> str:
+    coil, printed = needed(amplifier, "loudspeaker.dc_resistance", "loudspeaker.nominal_impedance")
+    said = f"the coil reads {text(coil, RESISTANCE)}, the label says {text(printed, RESISTANCE)}"
+    if nominal(ratio) < operating.LABEL_FLOOR:
+        believed = text(operating.believed_nominal(amplifier), RESISTANCE)
+        return f"{said}: not believed, everything is computed for {believed}"
+    return said
+
+
+@finding("loudspeaker.power", Step.LOUDSPEAKER, RATIO)
+def check_power(amplifier: Amplifier, limits: Limits) -> Measure:
+    """Power at clipping into the nominal impedance over the rated noise power."""
+    rated, share, parallel = needed(
+        amplifier, "loudspeaker.rated_power", "loudspeaker.power_share", "loudspeaker.parallel"
+    )
+    each = operating.output_power(amplifier) / parallel
+    noise = rated * share
+    return Measure(
+        each / noise,
+        f"{text(each, POWER)} sine power at clipping, {text(noise, POWER)} rated noise power",
+        also=(Also("power at clipping", nominal(each), POWER),),
+        next="look up which kind of power the label means (loudspeaker.power_word); turn back when it sounds strained",
+        method="sine power at clipping into the nominal impedance over rated noise power",
+    )
+
+
+@dataclass(frozen=True, eq=False)
+class _Fault:
+    """A direct voltage on the coil, V, and how it gets there."""
+
+    volts: Number
+    how: str
+
+
+def _fault(amplifier: Amplifier) -> _Fault:
+    rail = operating.no_load_rail(amplifier)
+    if amplifier.stage.bridged:
+        total = rail if operating.is_single(amplifier) else 2.0 * rail
+        return _Fault(total, "one device of each side shorted")
+    return _Fault(rail, "one device shorted")
+
+
+def _capacitor_holds(amplifier: Amplifier) -> Number:
+    """Return where the output capacitor stands the whole rail at the highest mains."""
+    (rated,) = needed(amplifier, "output_capacitor.rated_voltage")
+    rail = operating.rails_as_read(amplifier)[0] * operating.highest_factor(amplifier)
+    holds: Number = np.asarray(rail) <= rated
+    return holds
+
+
+@finding("loudspeaker.dc_fault", Step.LOUDSPEAKER, POWER)
+def check_dc_fault(amplifier: Amplifier, limits: Limits) -> Measure:
+    """Power in the coil with one device shorted, and what stops it in what time."""
+    (coil,) = needed(amplifier, "loudspeaker.dc_resistance")
+    fault = _fault(amplifier)
+    current = loudspeaker.dc_fault_current(voltage=fault.volts, dc_resistance=coil)
+    power = loudspeaker.dc_fault_power(voltage=fault.volts, dc_resistance=coil)
+    also = (Also("current in the coil", nominal(current), CURRENT), *_step_also(amplifier))
+    if operating.is_capacitor_coupled(amplifier):
+        holds = _capacitor_holds(amplifier)
+        if np.all(np.asarray(holds)):
+            return _blocked(fault, power, also)
+    return _stopped_in_time(amplifier, fault, power, also, limits)
+
+
+def _blocked(fault: _Fault, power: Number, also: tuple[Also, ...]) -> Measure:
+    return Measure(
+        power,
+        f"{fault.how}: the output capacitor blocks the whole rail; without it {text(power, POWER)} in the coil",
+        go=np.inf,
+        without_stop=True,
+        also=also,
+        method="rail over the DC resistance; whole rail against the capacitor's rated voltage",
+    )
+
+
+def _step_also(amplifier: Amplifier) -> tuple[Also, ...]:
+    farads = amplifier.output_capacitor.capacitance
+    if not operating.is_capacitor_coupled(amplifier) or farads is None:
+        return ()
+    rail, middle = operating.no_load_rail(amplifier), operating.midpoint(amplifier)
+    coil = amplifier.loudspeaker.dc_resistance
+    step = np.maximum(rail - middle, middle)
+    found = [
+        Also(
+            "energy of the midpoint's step",
+            nominal(capacitor.step_energy(capacitance=farads, step=step)),
+            ENERGY,
+        )
+    ]
+    if coil is not None:
+        found.append(Also("current with only the capacitor shorted", nominal(middle / coil), CURRENT))
+        found.append(Also("power with only the capacitor shorted", nominal(middle**2 / coil), POWER))
+    return tuple(found)
+
+
+def _stopped_in_time(
+    amplifier: Amplifier, fault: _Fault, power: Number, also: tuple[Also, ...], limits: Limits
+) -> Measure:
+    burns_after = _time_to_limit(amplifier, fault)
+    relay, fuse = _relay_time(amplifier), _fuse_time(amplifier, fault, limits)
+    acts_after = np.fmin(relay, fuse)
+    if np.all(np.isnan(acts_after)):
+        acts_after = np.where(_nothing_fitted(amplifier), np.inf, acts_after)
+    in_time = np.asarray(acts_after) < burns_after
+    undecided = np.isnan(np.asarray(burns_after)) | np.isnan(np.asarray(acts_after))
+    return Measure(
+        np.where(undecided, np.nan, power),
+        _fault_text(fault, power, acts_after, burns_after, relay),
+        go=np.where(in_time, np.inf, -np.inf),
+        without_stop=True,
+        everywhere=True,
+        remarks=(
+            *_trip_remarks(amplifier, limits),
+            *_contact_remarks(fault, relay, fuse, burns_after, limits),
+        ),
+        also=(*also, *_times(acts_after, burns_after)),
+        next="a relay with a DC detector, or a loudspeaker fuse, must act before the coil reaches its limit",
+        method="two-stage heating of the coil, copper's resistance rise, relay delay, slowest fuse gate",
+    )
+
+
+def _times(acts_after: Number, burns_after: Number) -> tuple[Also, ...]:
+    return (
+        Also("protection acts after", nominal(acts_after), TIME),
+        Also("coil reaches its limit after", nominal(burns_after), TIME),
+    )
+
+
+def _nothing_fitted(amplifier: Amplifier) -> bool:
+    fitted = ("protection.trip_delay", "protection.loudspeaker_fuse")
+    return all(path in amplifier.absent for path in fitted)
+
+
+def _time_to_limit(amplifier: Amplifier, fault: _Fault) -> Number:
+    """Return the time to the coil limit, s, from where one eighth of clipping power has warmed the coil."""
+    coil, to_magnet, fast, to_air, slow, limit = needed(amplifier, "loudspeaker.dc_resistance", *THERMAL)
+    each = operating.output_power(amplifier) / needed(amplifier, "loudspeaker.parallel")[0]
+    start = ROOM + each / 8.0 * (to_magnet + to_air)
+    values = np.broadcast_arrays(fault.volts, coil, to_magnet, fast, to_air, slow, start, limit)
+    if any(np.any(np.isnan(value)) for value in values):
+        return np.nan
+    return time_to_temperature(
+        voltage=fault.volts,
+        dc_resistance=coil,
+        coil_to_magnet=to_magnet,
+        coil_time_constant=fast,
+        magnet_to_air=to_air,
+        magnet_time_constant=slow,
+        start=np.minimum(start, limit),
+        air=ROOM,
+        limit=limit,
+    )
+
+
+def _relay_time(amplifier: Amplifier) -> Number:
+    if "protection.trip_delay" in amplifier.absent:
+        return np.inf
+    if amplifier.protection.trip_delay is None and amplifier.protection.loudspeaker_fuse is None:
+        miss(amplifier, "protection.trip_delay", "protection.loudspeaker_fuse")
+    return np.nan if amplifier.protection.trip_delay is None else amplifier.protection.trip_delay
+
+
+def _fuse_time(amplifier: Amplifier, fault: _Fault, limits: Limits) -> Number:
+    """Return the slowest acting time of the loudspeaker fuse with the coil as hot as its limit, s."""
+    fitted = amplifier.protection.loudspeaker_fuse
+    if fitted is None:
+        return np.inf if "protection.loudspeaker_fuse" in amplifier.absent else np.nan
+    coil, limit = needed(amplifier, "loudspeaker.dc_resistance", "loudspeaker.coil_limit")
+    hot = coil * (1.0 + COPPER * (np.fmax(limit, 20.0) - 20.0))
+    parallel = needed(amplifier, "loudspeaker.parallel")[0]
+    return slowest_time(
+        times_rating=fault.volts / hot * parallel / fitted.rating, gates=_gates(fitted, limits)
+    )
+
+
+def _gates(fuse: Fuse, limits: Limits) -> Gates:
+    """Return the gates of a fuse's letter; without a table of its own the slower one's."""
+    table = limits.fuse_gates.get(fuse.letter) or limits.fuse_gates["T"]
+    return Gates(
+        multiples=tuple(gate.times_rating for gate in table.gates),
+        fastest=tuple(gate.shortest for gate in table.gates),
+        slowest=tuple(gate.longest for gate in table.gates),
+    )
+
+
+def _fault_text(fault: _Fault, power: Number, acts: Number, burns: Number, relay: Number) -> str:
+    said = f"{fault.how}: {text(power, POWER)} in the coil from {text(fault.volts, VOLTAGE)}"
+    acting, burning = nominal(acts), nominal(burns)
+    if np.isinf(acting):
+        return f"{said}; nothing stops it"
+    if np.isnan(acting):
+        return f"{said}; what stops it is not given"
+    what = "the relay" if np.isfinite(nominal(relay)) and nominal(relay) <= acting else "the fuse"
+    if np.isnan(burning):
+        return f"{said}; {what} stops it after {text(acts, TIME)}, what the coil stands is not given"
+    return f"{said}; {what} stops it after {text(acts, TIME)}, the coil reaches its limit after {text(burns, TIME)}"
+
+
+def _trip_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
+    if amplifier.protection.trip_delay is None:
+        return ()
+    bound = limits["loudspeaker.dc_fault.trip_voltage"].go
+    trip = amplifier.protection.trip_voltage
+    if trip is None:
+        return (Remark(Verdict.CAUTION, "protection.trip_voltage is not given: at what DC the relay opens"),)
+    if isinstance(bound, (int, float)) and np.any(np.asarray(trip) > bound * (1.0 + 1e-9)):
+        return (Remark(Verdict.CAUTION, f"the relay opens only above {text(trip, VOLTAGE)}"),)
+    return ()
+
+
+def _contact_remarks(
+    fault: _Fault, relay: Number, fuse: Number, burns_after: Number, limits: Limits
+) -> tuple[Remark, ...]:
+    above = limits["loudspeaker.dc_fault"].extra["contacts_caution_above"]
+    leans_on_relay = np.isfinite(nominal(relay)) and not nominal(fuse) < nominal(burns_after)
+    if not leans_on_relay or not np.any(np.asarray(fault.volts) > above * (1.0 + 1e-9)):
+        return ()
+    return (
+        Remark(Verdict.CAUTION, f"relay contacts on more than {above:.0f} V DC: are they rated to break it?"),
+    )

@@ -1,0 +1,119 @@
+"""DC at the output: offset, drift, midpoint."""
+
+from __future__ import annotations
+
+from functools import reduce
+
+import numpy as np
+
+from safeamp.amplifier import Amplifier
+from safeamp.checks import operating
+from safeamp.checks.registry import finding
+from safeamp.checks.trace import needed
+from safeamp.checks.words import nominal, text
+from safeamp.findings import Also, Measure, NotApplicable, Step
+from safeamp.limits import Limits
+from safeamp.physics import capacitor, offset
+from safeamp.quantities import LENGTH, PERCENT, POWER, RATIO, VOLTAGE, Number
+
+COUPLED = 'stage.coupling is "capacitor"'
+DIRECT = 'stage.coupling is "direct"'
+
+
+def _across(amplifier: Amplifier, path: str, value: Number) -> Number:
+    """Return the magnitude that a reading means for the loudspeaker; bridged sides without signs add up."""
+    other = amplifier.readings.offset_other_side
+    if not amplifier.stage.bridged or other is None:
+        return np.abs(value)
+    unsigned = amplifier.readings.unsigned or frozenset()
+    if path in unsigned or "readings.offset_other_side" in unsigned:
+        return np.abs(value) + np.abs(other)
+    return np.abs(value - other)
+
+
+@finding("offset.output", Step.BIAS, VOLTAGE, at_bench=True)
+def check_output(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicable:
+    """DC at the output: the worst of cold, warm and with signal."""
+    if operating.is_capacitor_coupled(amplifier):
+        return NotApplicable(COUPLED)
+    cold, warm = needed(amplifier, "readings.offset_cold", "readings.offset_warm")
+    found = {"readings.offset_cold": cold, "readings.offset_warm": warm}
+    if amplifier.readings.offset_with_signal is not None:
+        found["readings.offset_with_signal"] = amplifier.readings.offset_with_signal
+    worst = reduce(np.fmax, [_across(amplifier, path, value) for path, value in found.items()])
+    return Measure(
+        worst,
+        _says(worst, limits),
+        also=_coil(amplifier, worst),
+        next="read again after 40 minutes and with signal, no loudspeaker connected",
+        method="largest magnitude of the readings",
+    )
+
+
+def _says(worst: Number, limits: Limits) -> str:
+    said = f"{text(worst, VOLTAGE)} of DC at the output"
+    if nominal(worst) > limits["offset.output"].extra["switch_off_above"]:
+        return f"{said}: switch off, the stage is stuck towards a rail"
+    return said
+
+
+def _coil(amplifier: Amplifier, volts: Number) -> tuple[Also, ...]:
+    table = amplifier.loudspeaker
+    if table.dc_resistance is None:
+        return ()
+    power = offset.coil_power(voltage=volts, dc_resistance=table.dc_resistance)
+    found = [Also("power in the coil", nominal(power), POWER)]
+    if table.force_factor is not None and table.compliance is not None:
+        shift = offset.cone_displacement(
+            voltage=volts,
+            dc_resistance=table.dc_resistance,
+            force_factor=table.force_factor,
+            compliance=table.compliance,
+        )
+        found.append(Also("cone displacement", nominal(shift), LENGTH))
+        if table.linear_excursion is not None:
+            found.append(Also("of the linear excursion", nominal(shift / table.linear_excursion), PERCENT))
+    return tuple(found)
+
+
+@finding("offset.drift", Step.BIAS, VOLTAGE, at_bench=True)
+def check_drift(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicable:
+    """Warm minus cold."""
+    if operating.is_capacitor_coupled(amplifier):
+        return NotApplicable(COUPLED)
+    cold, warm = needed(amplifier, "readings.offset_cold", "readings.offset_warm")
+    return Measure(
+        np.abs(warm - cold),
+        f"{text(cold, VOLTAGE)} cold, {text(warm, VOLTAGE)} warm",
+        next="read at 0, 10, 20 and 40 minutes; it must settle",
+        method="magnitude of warm minus cold",
+    )
+
+
+@finding("offset.midpoint", Step.BIAS, RATIO, at_bench=True)
+def check_midpoint(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicable:
+    """Departure of the midpoint from half the rail."""
+    if not operating.is_capacitor_coupled(amplifier):
+        return NotApplicable(DIRECT)
+    middle, rails = needed(amplifier, "readings.midpoint", "supply.no_load")
+    error = (middle - rails[0] / 2.0) / (rails[0] / 2.0)
+    return Measure(
+        np.abs(error),
+        f"midpoint {text(middle, VOLTAGE)} on a rail of {text(rails[0], VOLTAGE)}: {text(error, PERCENT)} from half",
+        also=_turn_on(amplifier),
+        next="set the midpoint to half the rail, warm, then read it again",
+        method="(midpoint - half the rail) over half the rail",
+    )
+
+
+def _turn_on(amplifier: Amplifier) -> tuple[Also, ...]:
+    table = amplifier.output_capacitor
+    if table.rise_time is None or table.capacitance is None:
+        return ()
+    peak = capacitor.turn_on_peak(
+        capacitance=table.capacitance,
+        load_resistance=operating.nominal_load(amplifier)[0],
+        midpoint=operating.midpoint(amplifier),
+        rise_time=table.rise_time,
+    )
+    return (Also("peak across the loudspeaker at switch-on", nominal(peak), VOLTAGE),)

@@ -1,0 +1,272 @@
+"""Use of the safe area into a resistor and into a loudspeaker."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import reduce
+
+import numpy as np
+
+from safeamp.amplifier import Amplifier
+from safeamp.checks import operating, thermal
+from safeamp.checks.loudspeaker import label_ratio
+from safeamp.checks.registry import finding
+from safeamp.checks.trace import needed
+from safeamp.checks.words import idle_remarks, nominal, text
+from safeamp.findings import Also, AsBuilt, Measure, Remark, Step, Verdict
+from safeamp.limits import Limit, Limits
+from safeamp.physics import safe_area
+from safeamp.physics.safe_area import ZONES, Rating, Use
+from safeamp.quantities import CURRENT, POWER, RATIO, RESISTANCE, TEMPERATURE, VOLTAGE, Number, Origin, show
+
+#: Angle at which the minimum impedance is judged, deg.
+MINIMUM_ANGLE = 30.0
+#: Angle shown beside the one that is judged, deg.
+SHOWN_ANGLE = 60.0
+SIDES = ("upper", "lower")
+METHOD = "DC safe area at case temperature, closed-form envelope of all angles, class-AB law"
+NEXT = "keep the loudspeaker off until the use is cleared: higher load, lower mains or stronger devices"
+
+
+@dataclass(frozen=True, eq=False)
+class _Load:
+    """A load of one side: magnitude (ohm), largest angle (deg), and how it is called."""
+
+    magnitude: Number
+    angle: Number
+    name: str
+
+
+def _rating(amplifier: Amplifier, side: str) -> Rating:
+    device = operating.device_of(amplifier, side)
+    return Rating(
+        current=thermal.device_value(amplifier, side, "current"),
+        power=thermal.device_value(amplifier, side, "power"),
+        power_at=thermal.device_value(amplifier, side, "power_at"),
+        junction_limit=thermal.device_value(amplifier, side, "junction_limit"),
+        junction_to_case=device.junction_to_case,
+        voltage=thermal.device_value(amplifier, side, "voltage"),
+        points=device.safe_area or (),
+    )
+
+
+def _use_of(amplifier: Amplifier, side: str, load: _Load, case: Number, rating: Rating) -> Use:
+    table = operating.sides(amplifier)[SIDES.index(side)]
+    return safe_area.envelope_use(
+        half_supply=table.burst,
+        peak=operating.peak_into(amplifier, table.burst, table.loss, load.magnitude),
+        load_magnitude=load.magnitude,
+        phase_angle=load.angle,
+        conducting=operating.conducting(amplifier),
+        emitter_resistor=needed(amplifier, "stage.emitter_resistor")[0],
+        idle_current=operating.idle_current(amplifier),
+        law=operating.law_of(table.device),
+        imbalance=_imbalance(amplifier),
+        case_temperature=case,
+        rating=rating,
+        transconductance_parameter=table.device.transconductance_parameter,
+    )
+
+
+def _imbalance(amplifier: Amplifier) -> Number | None:
+    """Return the stated excess, None for the spread of a batch; a single device has none."""
+    single = np.asarray(operating.conducting(amplifier)) <= 1
+    if amplifier.stage.imbalance is not None:
+        return np.where(single, 0.0, amplifier.stage.imbalance)
+    return np.zeros(np.shape(single)) if np.all(single) else None
+
+
+def _sides_to_judge(amplifier: Amplifier) -> tuple[str, ...]:
+    """Return the sides that differ in structure: equal devices on a split supply are one."""
+    table = amplifier.stage
+    split_loss = table.swing_loss_up is not None or table.swing_loss_down is not None
+    same = table.upper == table.lower and not operating.is_single(amplifier) and not split_loss
+    return ("upper",) if same else SIDES
+
+
+@dataclass(frozen=True, eq=False)
+class _Worst:
+    """The worst use over sides and loads, with the structure of the nominal worst point."""
+
+    use: Number
+    unknown: Number
+    point: Use
+    case: Number
+    side: str
+    load: _Load
+
+
+def _worst(amplifier: Amplifier, loads: tuple[_Load, ...], fraction: float, angle: Number) -> _Worst:
+    found = []
+    for side in _sides_to_judge(amplifier):
+        case = thermal.hotter_case(amplifier, side, fraction, angle)
+        rating = _rating(amplifier, side)
+        found += [(_use_of(amplifier, side, load, case, rating), case, side, load) for load in loads]
+    point, case, side, load = max(found, key=lambda one: _sortable(one[0].use))
+    use = reduce(np.maximum, [one[0].use for one in found])
+    unknown = reduce(np.logical_or, [one[0].enters_unknown for one in found])
+    return _Worst(use, unknown, point, case, side, load)
+
+
+def _sortable(use: Number) -> float:
+    value = nominal(use)
+    return np.inf if np.isnan(value) else value
+
+
+def _remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
+    found = [*idle_remarks(amplifier)]
+    for side in dict.fromkeys((amplifier.stage.upper, amplifier.stage.lower)):
+        found += _device_remarks(amplifier, str(side))
+    return tuple(found)
+
+
+def _device_remarks(amplifier: Amplifier, name: str) -> list[Remark]:
+    side = "upper" if amplifier.stage.upper == name else "lower"
+    device, found = operating.device_of(amplifier, side), []
+    if amplifier.origin(f"device.{name}.voltage") is Origin.ASSUMED:
+        because = f"the ratings of {name} are typical ones of its class: enter your data sheet's"
+        found.append(Remark(Verdict.UNVERIFIED, because))
+    if not device.safe_area and device.kind != "lateral mosfet":
+        because = f"device.{name}.safe_area is not given: second breakdown is not judged"
+        found.append(Remark(Verdict.UNVERIFIED, because))
+    problem = safe_area.points_problem(_rating(amplifier, side))
+    if problem is not None:
+        found.append(Remark(Verdict.UNVERIFIED, problem))
+    return found
+
+
+def _needs(amplifier: Amplifier) -> tuple[str, ...]:
+    names = dict.fromkeys((str(amplifier.stage.upper), str(amplifier.stage.lower)))
+    sides = {str(amplifier.stage.lower): "lower", str(amplifier.stage.upper): "upper"}
+    devices = {name: operating.device_of(amplifier, sides[name]) for name in names}
+    return tuple(
+        f"device.{name}.safe_area"
+        for name, device in devices.items()
+        if not device.safe_area and device.kind != "lateral mosfet"
+    )
+
+
+def _point(worst: _Worst) -> dict[str, float | str]:
+    zone = int(nominal(worst.point.zone))
+    return {
+        "voltage": nominal(worst.point.voltage),
+        "current": nominal(worst.point.current),
+        "zone": ZONES[zone],
+    }
+
+
+def _says(worst: _Worst, use: Number) -> str:
+    point = _point(worst)
+    value = nominal(use)
+    amount = (
+        f"uses {value:.0%} of the safe area" if np.isfinite(value) else "current flows where none is allowed"
+    )
+    return (
+        f"{worst.side} device {amount} into {worst.load.name}, at {show(float(point['voltage']), VOLTAGE)} and "
+        f"{show(float(point['current']), CURRENT)} ({point['zone']}), case {text(worst.case, TEMPERATURE)}"
+    )
+
+
+@finding("soa.resistive_load", Step.LOAD_TEST, RATIO)
+def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
+    """Use of the safe area into a resistor of the nominal impedance."""
+    magnitude, turned = operating.nominal_load(amplifier)
+    load = _Load(magnitude, turned, f"a resistor of {text(magnitude, RESISTANCE)}")
+    worst = _worst(amplifier, (load,), thermal.ONE_THIRD, 0.0)
+    return Measure(
+        worst.use,
+        _says(worst, worst.use),
+        remarks=_remarks(amplifier),
+        unknown=worst.unknown,
+        needs=_needs(amplifier),
+        at=_point(worst),
+        also=_usable(amplifier, worst),
+        next="passing with a resistor says nothing about a loudspeaker",
+        method=METHOD,
+    )
+
+
+def _usable(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
+    rating = _rating(amplifier, worst.side)
+    left = safe_area.derating(
+        case_temperature=worst.case, power_at=rating.power_at, junction_limit=rating.junction_limit
+    )
+    power = safe_area.usable_power(
+        power=rating.power,
+        power_at=rating.power_at,
+        junction_limit=rating.junction_limit,
+        junction_to_case=rating.junction_to_case,
+    )
+    return (Also("power allowed at this case temperature", nominal(left * power), POWER),)
+
+
+@finding("soa.loudspeaker", Step.LOUDSPEAKER, RATIO)
+def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
+    """Use of the safe area into the loudspeaker: nominal at its angle, minimum at 30 deg, the worse counts."""
+    angle = operating.phase_angle(amplifier)
+    worst = _worst(amplifier, _loads(amplifier, angle), thermal.ONE_EIGHTH, angle)
+    return Measure(
+        worst.use,
+        _says(worst, worst.use),
+        remarks=_remarks(amplifier),
+        unknown=worst.unknown,
+        needs=_needs(amplifier),
+        at=_point(worst),
+        also=(*_at_sixty(amplifier, worst), *_usable(amplifier, worst)),
+        next=NEXT,
+        method=METHOD,
+        as_built=_as_built(amplifier, limits["soa.loudspeaker"], limits["loudspeaker.label"]),
+    )
+
+
+def _loads(amplifier: Amplifier, angle: Number) -> tuple[_Load, ...]:
+    magnitude, turned = operating.nominal_load(amplifier, angle)
+    lowest, lowest_turned = operating.minimum_load(amplifier, MINIMUM_ANGLE)
+    at = f"at up to {nominal(angle):.0f} deg"
+    return (
+        _Load(magnitude, turned, f"{text(magnitude, RESISTANCE)} {at}"),
+        _Load(
+            lowest, lowest_turned, f"{text(lowest, RESISTANCE)} (minimum) at up to {MINIMUM_ANGLE:.0f} deg"
+        ),
+    )
+
+
+def _at_sixty(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
+    magnitude, turned = operating.nominal_load(amplifier, SHOWN_ANGLE)
+    load = _Load(magnitude, turned, "60 deg")
+    use = _use_of(amplifier, worst.side, load, worst.case, _rating(amplifier, worst.side))
+    return (Also("60 deg", nominal(use.use), RATIO),)
+
+
+def _as_built(amplifier: Amplifier, limit: Limit, label: Limit) -> AsBuilt:
+    """Return whether the maker's own ratings cover this load, these devices and this mains."""
+    table, mains = amplifier.stage, amplifier.mains
+    most = limit.extra["as_built_mains_over_rated"]
+    load = nominal(operating.believed_nominal(amplifier) / needed(amplifier, "loudspeaker.parallel")[0])
+    conditions = {
+        "stage.rated_load": table.rated_load is not None and nominal(table.rated_load) <= load * (1.0 + 1e-9),
+        "stage.original_devices": table.original_devices is True,
+        "stage.pairs_conducting": _all_conduct(amplifier),
+        "loudspeaker.dc_resistance": _label_is_go(amplifier, label),
+        "mains.rated": _mains_within(mains.actual, mains.rated, most),
+        "loudspeaker.impedance_curve": amplifier.loudspeaker.impedance_curve is None,
+    }
+    failed = tuple(key for key, holds in conditions.items() if not holds)
+    return AsBuilt(not failed, limit.extra["as_built_ceiling"], failed)
+
+
+def _all_conduct(amplifier: Amplifier) -> bool:
+    conducting = operating.conducting(amplifier)
+    return nominal(conducting) >= nominal(needed(amplifier, "stage.pairs")[0])
+
+
+def _label_is_go(amplifier: Amplifier, label: Limit) -> bool:
+    if amplifier.loudspeaker.dc_resistance is None or not isinstance(label.go, tuple):
+        return False
+    return bool(label.go[0] <= nominal(label_ratio(amplifier)) <= label.go[1])
+
+
+def _mains_within(actual: Number | None, rated: Number | None, most: float) -> bool:
+    if actual is None or rated is None:
+        return False
+    return nominal(actual) <= most * nominal(rated) * (1.0 + 1e-9)

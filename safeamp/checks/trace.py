@@ -1,0 +1,67 @@
+"""Which values a check reads, and which it would need: recorded while it runs, never listed by hand."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field, is_dataclass
+from typing import Any, cast
+
+from safeamp.amplifier import Amplifier, value_at, written_key
+
+NAN = float("nan")
+
+
+@dataclass
+class Trace:
+    """Key paths read and key paths found missing, in order."""
+
+    reads: dict[str, None] = field(default_factory=dict)
+    missing: dict[str, None] = field(default_factory=dict)
+
+
+class _Watched:
+    """An amplifier, a table or a mapping that notes what is read of it."""
+
+    def __init__(self, node: Any, path: str, trace: Trace) -> None:
+        self._node, self._path, self.trace = node, path, trace
+
+    def __getattr__(self, name: str) -> Any:
+        node = self._node
+        found = node[name] if isinstance(node, Mapping) else getattr(node, name)
+        if callable(found) or name in {"absent", "origins"}:
+            return found
+        path = f"{self._path}.{name}" if self._path else name
+        if isinstance(found, Mapping) or _is_table(found):
+            return _Watched(found, path, self.trace)
+        self.trace.reads[path] = None
+        return found
+
+
+def _is_table(found: Any) -> bool:
+    """Tell a table from a leaf such as a fuse: tables hold arrays and so compare by identity alone."""
+    return is_dataclass(found) and type(found).__eq__ is object.__eq__
+
+
+def watched(amplifier: Amplifier, trace: Trace) -> Amplifier:
+    """Return the amplifier so that every read is noted in `trace`."""
+    return cast(Amplifier, _Watched(amplifier, "", trace))
+
+
+def needed(amplifier: Amplifier, *paths: str) -> list[Any]:
+    """Return the values at key paths; a missing one is noted and stands as nan, which never reaches go."""
+    return [_value(amplifier, path) for path in paths]
+
+
+def _value(amplifier: Amplifier, path: str) -> Any:
+    found = value_at(amplifier, path)
+    if found is None:
+        miss(amplifier, path)
+        return NAN
+    return found
+
+
+def miss(amplifier: Amplifier, *paths: str) -> None:
+    """Note that a check would need the values at these key paths."""
+    trace = getattr(amplifier, "trace", None)
+    if trace is not None:
+        trace.missing.update(dict.fromkeys(written_key(path) for path in paths))
