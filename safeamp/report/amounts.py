@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Mapping
+from decimal import Decimal
 
 from safeamp.amplifier import TABLES, Fins, keys_of, written_key
 from safeamp.findings import Bound, Finding
@@ -31,6 +32,12 @@ USES = {
     "soa.resistive_load": "of the safe area",
     "soa.loudspeaker": "of the safe area",
 }
+#: Ratios that people read as a percentage.
+PERCENTAGES = frozenset(
+    {"power_up.rails", "power_up.output", "bias.imbalance", "bias.balance", "offset.midpoint"}
+)
+#: Findings that rest on a word; a number would say nothing.
+WORDS = {"power_up.draw": "go when dark or dim, stop when bright or rising"}
 _AT_KINDS = {
     "voltage": VOLTAGE,
     "current": CURRENT,
@@ -48,7 +55,8 @@ _BY_UNIT = {kind.unit: kind for kind in reversed(tuple(KINDS.values()))}
 
 def shown_kind(finding: Finding) -> Kind:
     """Return the kind a finding is printed in: a use as a percentage."""
-    return PERCENT if finding.id in USES else finding.kind
+    ratio = finding.id in PERCENTAGES and finding.kind == RATIO
+    return PERCENT if finding.id in USES or ratio else finding.kind
 
 
 def _levels(bound: Bound | None) -> list[float]:
@@ -72,6 +80,8 @@ def amount(value: float | None, kind: Kind, apart_from: list[float] | None = Non
 
 def number_text(finding: Finding) -> str:
     """Return the value of a finding in words: nominal, worst, and how much is used."""
+    if finding.id in WORDS and finding.nominal is not None and not math.isnan(finding.nominal):
+        return finding.says
     if finding.unbounded:
         return "without bound"
     if finding.nominal is None or math.isnan(finding.nominal):
@@ -79,34 +89,42 @@ def number_text(finding: Finding) -> str:
     kind, levels = shown_kind(finding), _levels(finding.bound)
     text = amount(finding.nominal, kind, levels)
     if finding.id in USES:
-        text = f"uses {text} {USES[finding.id]}, {_left(finding.nominal)}"
+        text = f"uses {text} {USES[finding.id]}, {_left(text)}"
     worst = amount(finding.worst, kind, levels)
     if finding.worst is not None and finding.worst != finding.nominal:
         text += f"; worst case {worst}"
     return text
 
 
-def _left(use: float) -> str:
-    left = 1.0 - use
-    return f"{show(left, PERCENT)} left" if left >= 0.0 else f"{show(-left, PERCENT)} too much"
+def _left(used: str) -> str:
+    # From the printed digits: what is used and what is left must add up to 100 %.
+    left = 100 - Decimal(used.removesuffix(" %"))
+    return f"{left} % left" if left >= 0 else f"{-left} % too much"
 
 
 def limit_text(finding: Finding) -> str:
     """Return the limit in words, such as "go up to 50 mV, stop above 100 mV"."""
     bound = finding.bound
-    if bound is None:
-        return ""
+    if bound is None or finding.id in WORDS:
+        return WORDS.get(finding.id, "")
     kind = shown_kind(finding)
     up, beyond = ("from", "below") if bound.sense == "at least" else ("up to", "above")
     parts = []
     if isinstance(bound.go, tuple):
         parts.append(f"go from {show(bound.go[0], kind)} to {show(bound.go[1], kind)}")
     elif bound.go is not None:
-        parts.append(f"go {up} {show(bound.go, kind)}")
+        parts.append(f"go {up} {show(_effective(bound.go, bound), kind)}")
     if bound.stop is not None:
         parts.append(f"stop {beyond} {show(bound.stop, kind)}")
     changed = [f"changed by your limits file: {bound.source}"] if bound.overridden else []
     return ", ".join(parts + changed)
+
+
+def _effective(go: float, bound: Bound) -> float:
+    """Return up to where a finding is go: where both levels contradict each other, stop wins."""
+    if bound.stop is None:
+        return go
+    return max(go, bound.stop) if bound.sense == "at least" else min(go, bound.stop)
 
 
 def kind_of(path: str, units: Mapping[str, str] | None = None) -> Kind | None:

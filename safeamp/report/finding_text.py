@@ -25,7 +25,7 @@ def finding_lines(finding: Finding, width: int, ink: Ink) -> list[str]:
 
 
 def _details(finding: Finding) -> Iterator[str]:
-    if finding.says:
+    if finding.says and finding.says != number_text(finding):
         yield finding.says
     if finding.verdict is Verdict.GO:
         return

@@ -125,7 +125,7 @@ def _way_on(report: Report, width: int) -> list[str]:
 
 def _as_many(ids: list[str], room: int) -> str:
     for count in range(len(ids), 0, -1):
-        text = ", ".join(ids[:count]) + (f" +{len(ids) - count} above" if count < len(ids) else "")
+        text = ", ".join(ids[:count]) + (f" +{len(ids) - count}" if count < len(ids) else "")
         if len(text) <= room:
             return text
     return "see above"

@@ -37,7 +37,7 @@ def test_the_kinds() -> None:
 @pytest.mark.parametrize("kind", KINDS)
 def test_every_key_stands_in_every_starter(kind: str) -> None:
     found = tomllib.loads(without_comments(render_starter(kind)))
-    found = {**{key: value for key, value in found.items()}, "top": found}
+    found = {**found, "top": dict(found)}
     found["heatsink.fins"] = found["heatsink"]["fins"]
     found["device"] = found["device"]["fitted"]
     for table, keys in tables().items():
@@ -98,7 +98,7 @@ def test_kinds_may_be_typed_with_hyphens_or_blanks(kind: str) -> None:
 
 def test_an_unknown_kind_names_the_kinds() -> None:
     with pytest.raises(
-        KeyError, match="split-rial is not a kind of starter; did you mean split-rail.*bench-mockup"
+        KeyError, match=r"split-rial is not a kind of starter; did you mean split-rail.*bench-mockup"
     ):
         render_starter("split-rial")
 

@@ -1,12 +1,13 @@
 import re
 from dataclasses import replace
+from decimal import Decimal
 
 import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from safeamp.findings import Bound, Step, Verdict
-from safeamp.quantities import RESISTANCE, VOLTAGE
+from safeamp.quantities import RATIO, RESISTANCE
 from safeamp.report.text import render
 from tests.report.hand_made import DEVICES, OFFSET, SAFE_AREA, SCOPE, caution, report_of
 
@@ -70,7 +71,7 @@ def test_the_last_line_stays_one_line_when_much_is_missing() -> None:
     many = [replace(OFFSET, id=f"offset.reading_{number}") for number in range(9)]
     last = lines_of(*many)[-1]
     assert last.startswith("First step not cleared: bias (unverified); to clear: offset.reading_0")
-    assert last.endswith("+8 above")
+    assert last.endswith("+8")
 
 
 def test_the_worst_stands_first_among_what_clears_a_step() -> None:
@@ -113,6 +114,32 @@ def test_a_use_is_told_as_used_and_left() -> None:
     assert "uses 85 % of the safe area, 15 % left (go up to 80 %, stop above 100 %)" in " ".join(
         " ".join(lines_of(good)).split()
     )
+
+
+@pytest.mark.parametrize("use", [0.4677, 0.4674, 0.0002, 0.9996, 1.3333, 0.5])
+def test_used_and_left_add_up(use: float) -> None:
+    text = " ".join(" ".join(lines_of(replace(SAFE_AREA, nominal=use))).split())
+    used, other, word = re.search(
+        r"uses ([\d.]+) % of the safe area, ([\d.]+) % (left|too much)", text
+    ).groups()
+    assert Decimal(used) + Decimal(other) * (1 if word == "left" else -1) == 100
+
+
+def test_a_finding_that_rests_on_a_word_shows_no_number() -> None:
+    finding = replace(DEVICES, id="power_up.draw", kind=RATIO, nominal=2.0, says="the limiter is bright")
+    text = " ".join(" ".join(lines_of(finding)).split())
+    assert "power_up.draw: the limiter is bright (go when dark or dim, stop when bright or rising)" in text
+    assert text.count("the limiter is bright") == 1
+
+
+def test_ratios_that_people_read_as_percentages() -> None:
+    finding = replace(SAFE_AREA, id="bias.balance", nominal=0.125, worst=0.125)
+    assert "bias.balance: 12.5 % (go up to 80 %, stop above 100 %)" in " ".join(lines_of(finding))
+
+
+def test_a_go_level_beyond_stop_is_not_shown_as_go() -> None:
+    text = " ".join(lines_of(replace(OFFSET, bound=Bound(0.026, 0.022, "at most", "s", "e"))))
+    assert "(go up to 22 mV, stop above 22 mV)" in text
 
 
 def test_nothing_is_called_margin_or_safe() -> None:
@@ -239,4 +266,3 @@ def test_kinds_of_other_values_are_printed_too() -> None:
     finding = replace(caution(finding), inputs=(replace(SAFE_AREA.inputs[0], key="stage.idle", unit="V"),))
     text = " ".join(lines_of(finding))
     assert "device.fitted.power 150 W, stage.idle 12 mV" in text
-    assert VOLTAGE.unit == "V"
