@@ -7,6 +7,7 @@ from hypothesis import strategies as st
 from scipy.optimize import brentq
 
 from safeamp.physics.stage import THERMAL_VOLTAGE, Law, carrying_current, worst_device_current
+from safeamp.physics.stage import law as law_module
 
 
 def exponential_root(load_current, idle, resistor, voltage):
@@ -140,6 +141,35 @@ def test_what_cannot_be_is_refused(name):
             emitter_resistor=0,
             law=Law.MOSFET,
             transconductance_parameter=0,
+        )
+
+
+@pytest.mark.parametrize("law", list(Law))
+def test_far_from_any_amplifier_the_law_still_settles(law):
+    i = np.array([0, 1e-9, 1e-3, 1, 1e3])[:, None, None, None]
+    idle = np.array([1e-9, 1e-3, 1, 1e3])[:, None, None]
+    resistor, parameter = np.array([0, 1e-6, 1, 1e6])[:, None], np.array([1e-6, 1, 1e6])
+    x = carrying_current(
+        load_current=i,
+        idle_current=idle,
+        emitter_resistor=resistor,
+        law=law,
+        transconductance_parameter=parameter,
+    )
+    assert np.all(np.isfinite(x))
+    assert np.all(x >= i * (1 - 1e-9))
+
+
+@pytest.mark.parametrize("law", list(Law))
+def test_what_does_not_settle_is_no_answer(law, monkeypatch):
+    monkeypatch.setattr(law_module, "_ROUNDS", 1)
+    with pytest.raises(ArithmeticError, match="did not settle"):
+        carrying_current(
+            load_current=1.0,
+            idle_current=1.0,
+            emitter_resistor=1.0,
+            law=law,
+            transconductance_parameter=1.0,
         )
 
 

@@ -179,7 +179,8 @@ def angle_use(
     """Return the use of the safe area into a load of one angle, every amplitude up to `peak`.
 
     The ellipse of the largest amplitude encloses those of the smaller ones, and both signs of the
-    angle run through the same points.
+    angle run through the same points. Every output voltage comes twice in a cycle; the half cycle
+    searched holds the larger current of the two.
 
     Parameters and errors as in `envelope_use`.
 
@@ -210,4 +211,4 @@ def angle_use(
     def locus(t: Array) -> tuple[Array, Array]:
         return device(np.sin(np.deg2rad(t)), np.sin(np.deg2rad(t + angle)))
 
-    return _search(locus, case_temperature, rating, -180.0, 180.0)
+    return _search(locus, case_temperature, rating, -90.0, 90.0)

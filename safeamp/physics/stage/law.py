@@ -12,6 +12,7 @@ THERMAL_VOLTAGE = 1.380649e-23 * 298.15 / 1.602176634e-19
 
 _SETTLED = 1e-3  # of the logarithm; Newton is quadratic, so what remains is below 1e-6
 _ROUNDS = 100
+_UNSETTLED = "the currents of the devices did not settle; inputs are far from any amplifier"
 
 
 class Law(Enum):
@@ -44,6 +45,8 @@ def _exponential(magnitude: Array, idle: Array, resistor: Array, voltage: Array)
         q = q - step
         if not np.any(np.abs(step) > _SETTLED):
             break
+    else:
+        raise ArithmeticError(_UNSETTLED)
     product = fourfold * np.exp(q)
     larger = (np.sqrt(square + product) + magnitude) / 2.0
     return larger, product / (4.0 * larger)
@@ -88,6 +91,8 @@ def _sum_of_roots(magnitude: Array, idle: Array, resistor: Array, parameter: Arr
         m = reduced
         if settled:
             break
+    else:
+        raise ArithmeticError(_UNSETTLED)
     return m
 
 
@@ -169,6 +174,8 @@ def carrying_current(
     ------
     ValueError
         If a value is outside its range.
+    ArithmeticError
+        If the solution does not settle.
 
     References
     ----------
