@@ -11,7 +11,7 @@ from safeamp.checks.trace import miss, needed
 from safeamp.checks.words import heat_remarks, idle_remarks, nominal, text
 from safeamp.findings import Also, Measure, NotApplicable, Step
 from safeamp.limits import Limits
-from safeamp.quantities import POWER, RATIO, TEMPERATURE, Number
+from safeamp.quantities import POWER, RATIO, TEMPERATURE, TEMPERATURE_DIFFERENCE, Number
 
 FREE_AIR = "nothing is said of a heatsink and the devices are rated in free air (junction_to_ambient)"
 METHOD = "class-AB law, heat of a sine at one third of clipping power and without signal, thermal chain"
@@ -58,11 +58,12 @@ def check_junction(amplifier: Amplifier, limits: Limits) -> Measure:
     (hot, limit, case), (other, other_limit, other_case) = found
     worse = np.asarray(hot) - limit >= np.asarray(other) - other_limit
     value, stop = np.where(worse, hot, other), np.where(worse, limit, other_limit)
-    start = extra["span_from"]
+    start: float = extra["span_from"]
+    share: float = extra["go_share_of_span"]
     return Measure(
         value,
         f"junction {text(value, TEMPERATURE)}, allowed {text(stop, TEMPERATURE)}",
-        go=start + extra["go_share_of_span"] * (stop - start),
+        go=start + share * (np.asarray(stop) - start),
         stop=stop,
         remarks=(*heat_remarks(amplifier), *idle_remarks(amplifier)),
         also=(Also("case", nominal(np.maximum(case, other_case)), TEMPERATURE),),
@@ -95,7 +96,7 @@ def check_reading(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicab
     rise, expected = read - air, (computed - air if level in LEVELS or level == "idle" else np.nan)
     return Measure(
         rise / np.where(np.asarray(expected) > 0.0, expected, np.nan),
-        f"read {nominal(rise):.3g} K above air, computed {nominal(expected):.3g} K",
+        f"read {text(rise, TEMPERATURE_DIFFERENCE)} above air, computed {text(expected, TEMPERATURE_DIFFERENCE)}",
         remarks=(*heat_remarks(amplifier), *idle_remarks(amplifier)),
         next="read heatsink and air beside it once both have settled, and say at which level",
         method="read rise over computed rise at the same level",

@@ -16,6 +16,8 @@ Marks = npt.NDArray[np.bool_]
 
 #: A value this close to a level, relative to it, counts as at the level: rounding is not a finding.
 CLOSE = 1e-9
+#: Added to how bad a case is that can never be go: more than any value of a finding.
+NEVER_GO = 1e15
 
 
 @dataclass(frozen=True, eq=False)
@@ -76,7 +78,14 @@ def badness(value: Cases, bounds: Bounds) -> Cases:
     bad = reference - value if bounds.sense == "at least" else value - reference
     if bounds.sense == "between":
         bad = np.maximum(bad, np.where(np.isfinite(bounds.low), bounds.low - value, -np.inf))
-    return np.where(np.isnan(bad), np.inf, bad)
+    bad = np.where(_never(bounds.go, bounds.sense), bad + NEVER_GO, bad)
+    return np.where(np.isnan(bad) | _never(bounds.stop, bounds.sense), np.inf, bad)
+
+
+def _never(level: Cases, sense: Sense) -> Marks:
+    """Return where a level is set so that no value can keep it."""
+    marks: Marks = np.isposinf(level) if sense == "at least" else np.isneginf(level)
+    return marks
 
 
 def judge(measure: Measure, limit: Limit, guessed: Marks, words: tuple[str, ...] = ()) -> Judgement:

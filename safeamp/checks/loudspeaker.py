@@ -154,9 +154,8 @@ def _stopped_in_time(
     if np.all(np.isnan(acts_after)):
         acts_after = np.where(_nothing_fitted(amplifier), np.inf, acts_after)
     in_time = np.asarray(acts_after) < burns_after
-    undecided = np.isnan(np.asarray(burns_after)) | np.isnan(np.asarray(acts_after))
     return Measure(
-        np.where(undecided, np.nan, power),
+        power,
         _fault_text(fault, power, acts_after, burns_after, relay),
         go=np.where(in_time, np.inf, -np.inf),
         without_stop=True,

@@ -92,7 +92,7 @@ def _guard(guard: bool) -> tuple[Remark, ...]:
 
 
 def _hotter(amplifier: Amplifier) -> Number:
-    quiet, loud = thermal.no_signal(amplifier), thermal.atlevel(amplifier, thermal.ONE_EIGHTH)
+    quiet, loud = thermal.no_signal(amplifier), thermal.at_level(amplifier, thermal.ONE_EIGHTH)
     if not thermal.stands_free(amplifier):
         return np.maximum(
             thermal.sink_temperature(amplifier, quiet), thermal.sink_temperature(amplifier, loud)

@@ -18,8 +18,6 @@ WOULD_CHANGE: dict[str, tuple[str, ...]] = {
     "heatsink.fins": _HEAT,
     "device.pulse": ("soa.resistive_load", "soa.loudspeaker"),
     "device.transient": ("heat.junction",),
-    "device.temperature_coefficient": ("bias.runaway",),
-    "device.transconductance_parameter": ("bias.runaway",),
     "loudspeaker.impedance_curve": ("soa.loudspeaker",),
     "loudspeaker.crest_factor": ("loudspeaker.power",),
     "loudspeaker.resonance": ("capacitor.cutoff",),
@@ -28,9 +26,6 @@ WOULD_CHANGE: dict[str, tuple[str, ...]] = {
     "loudspeaker.inductance": ("capacitor.cutoff",),
     "loudspeaker.moving_mass": ("capacitor.cutoff",),
     "protection.vi_limiter": ("protection.short",),
-    "stage.bias_tracking": ("bias.runaway",),
-    "stage.idle_at": ("bias.runaway",),
-    "stage.bias_sensor": ("bias.runaway",),
 }
 
 
@@ -46,10 +41,8 @@ def unassessed(draft: Draft) -> dict[str, tuple[str, ...]]:
 
 def _written(draft: Draft, key: str) -> list[str]:
     table, _, name = key.partition(".")
-    if table == "device":
-        paths = [f"device.{device}.{name}" for device in draft.outputs()]
-    else:
-        paths = [key]
+    devices = [f"device.{device}.{name}" for device in draft.outputs()]
+    paths = devices if table == "device" else [key]
     return [path for path in paths if path in draft.written and path not in draft.absent]
 
 
