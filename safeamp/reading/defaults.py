@@ -2,14 +2,15 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from dataclasses import replace
 from typing import Any
 
 from safeamp.amplifier import TABLES, Key, keys_of
 from safeamp.limits import Limits
-from safeamp.quantities import PERCENT, RATIO, TEMPERATURE, VOLTAGE, Origin, read, show
+from safeamp.quantities import PERCENT, RATIO, VOLTAGE, Origin, read, show
 from safeamp.reading.draft import Draft
 from safeamp.reading.heat_defaults import fill_heat
+from safeamp.reading.parts import written_devices
 from safeamp.reading.supply_defaults import fill_supply
 
 #: Share of the printed power that is rated noise power, by the word beside it (AES2).
@@ -26,18 +27,11 @@ def fill_defaults(draft: Draft, limits: Limits) -> None:
 def fill_plain(draft: Draft) -> None:
     """Fill in the defaults that the nouns themselves carry."""
     for table, noun in TABLES.items():
-        paths = [f"device.{name}" for name in used_devices(draft)] if table == "device" else [table]
+        paths = [f"device.{name}" for name in written_devices(draft)] if table == "device" else [table]
         for path in paths:
             if _applies(draft, table):
                 for name, key in keys_of(noun).items():
                     _plain(draft, f"{path}.{name}", key)
-
-
-def used_devices(draft: Draft) -> tuple[str, ...]:
-    """Return the names of all devices that have a table."""
-    return tuple(
-        path.split(".")[1] for path in draft.written if path.startswith("device.") and path.count(".") == 1
-    )
 
 
 def _applies(draft: Draft, table: str) -> bool:
@@ -116,7 +110,7 @@ def _midpoint(draft: Draft, _: Limits) -> None:
         return
     rails, entry = draft.numbers("supply.no_load"), draft.entries.get("readings.midpoint")
     if rails and entry and entry.low < rails[0] / 2 < entry.high:
-        draft.entries[entry.path] = type(entry)(**{**vars(entry), "middle": (rails[0] / 2,)})
+        draft.entries[entry.path] = replace(entry, middle=(rails[0] / 2,))
 
 
 def _loudspeaker(draft: Draft, limits: Limits) -> None:

@@ -41,8 +41,10 @@ def _junction(draft: Draft, device: str) -> None:
         return
     implied = (limit - at) / resistance
     if max(power, implied) > POWERS_APART * min(power, implied):
-        text = f"{show(power, POWER)} is printed, but junction_limit and junction_to_case mean {show(implied, POWER)}"
-        draft.complain(f"{device}.power", f"{text}; read all four in the data sheet again")
+        text = f"{show(power, POWER)} is printed, but junction_limit and junction_to_case mean"
+        draft.complain(
+            f"{device}.power", f"{text} {show(implied, POWER)}; read all four in the data sheet again"
+        )
 
 
 def _pulse_curve(draft: Draft, device: str) -> None:
@@ -54,8 +56,9 @@ def _pulse_curve(draft: Draft, device: str) -> None:
                 path, "a point of the safe area has a voltage and a current above zero; read it again"
             )
         elif power is not None and volts * amperes > PULSE_CURVE * power:
-            at = f"{show(volts * amperes, POWER)} at {show(volts, VOLTAGE)} is more than the {show(power, POWER)} of the device"
-            draft.complain(path, f"{at}: this looks like a pulse curve; read the DC curve")
+            at = f"{show(volts * amperes, POWER)} at {show(volts, VOLTAGE)} is more than"
+            text = f"{at} the {show(power, POWER)} of the device: this looks like a pulse curve"
+            draft.complain(path, f"{text}; read the DC curve")
 
 
 def _coefficient(draft: Draft, device: str) -> None:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable
 from dataclasses import dataclass, field
 from dataclasses import replace as changed
 from typing import Any, Protocol
@@ -37,7 +37,7 @@ class Places(Protocol):
 
 @dataclass
 class Draft:
-    """Everything by key path, such as ``supply.no_load.0``; `values` holds whole keys only (``supply.no_load``)."""
+    """Everything by key path, ``supply.no_load.0``; `values` holds whole keys, ``supply.no_load``."""
 
     places: Places
     allow_si: bool = False
@@ -58,8 +58,8 @@ class Draft:
     def complain(self, path: str, trouble: str | QuantityError) -> None:
         """Add a complaint at a key path, with the file and line where it stands."""
         file, line = self.seat(path)
-        # A shared table such as one of two equal device names complains once.
-        complaint = Complaint(file, line, path, str(trouble))
+        complaint = Complaint(file, line, _printable(path), _printable(str(trouble)))
+        # What two questions find in one way is said once.
         if complaint not in self.complaints:
             self.complaints.append(complaint)
 
@@ -69,19 +69,19 @@ class Draft:
         self.seats[path] = (self.places.path, self.places.line(*parts))
 
     def seat(self, path: str) -> tuple[str, int | None]:
-        """Return file and line of a written key path, or of the list it is in; no line when it is not written."""
-        while path and path not in self.seats:
-            path, _, last = path.rpartition(".")
-            if not last.isdigit():
-                break
-        return self.seats.get(path, (self.places.path, None))
+        """Return file and line of a written key path or of the list it is in; no line for a missing key."""
+        if path in self.seats:
+            return self.seats[path]
+        outer, _, last = path.rpartition(".")
+        file, line = self.seat(outer) if outer else (self.places.path, None)
+        return file, line if last.isdigit() else None
 
     def put(self, path: str, value: Any, origin: Origin = Origin.STATED) -> None:
         """Give a key path its value."""
         self.values[path] = value
         self.origins[path] = origin
 
-    def put_reading(self, path: str, reading: Reading, value: Any = None) -> float:
+    def put_reading(self, path: str, reading: Reading) -> float:
         """Enter a number that was read at a key path and return it."""
         line = self.seat(path)[1]
         self.entries[path] = Entry.of(path, reading, line)
@@ -138,12 +138,16 @@ class Draft:
         names = (self.word("stage.upper"), self.word("stage.lower"))
         return tuple(dict.fromkeys(name for name in names if name and self.has(f"device.{name}.kind")))
 
-    def drop(self, prefix: str) -> None:
+    def drop(self, table: str) -> None:
         """Forget everything under a table."""
-        for table in (self.values, self.entries, self.origins):
-            for path in [path for path in table if path.startswith(f"{prefix}.")]:
-                del table[path]  # type: ignore[attr-defined]
-        self.absent -= {path for path in self.absent if path.startswith(f"{prefix}.")}
+        under = f"{table}."
+        stores: tuple[dict[str, Any], ...] = (self.values, self.entries, self.origins)
+        for store in stores:
+            for path in [path for path in store if path.startswith(under)]:
+                del store[path]
+        self.absent = {path for path in self.absent if not path.startswith(under)}
+        self.dropped = [path for path in self.dropped if not path.startswith(under)]
+        self.assumptions = [assumed for assumed in self.assumptions if not assumed.key.startswith(under)]
 
 
 def weakest(origins: Iterable[Origin]) -> Origin:
@@ -151,10 +155,13 @@ def weakest(origins: Iterable[Origin]) -> Origin:
     return min(origins, key=WEAKEST_FIRST.index, default=Origin.STATED)
 
 
-def in_order(complaints: Iterable[Complaint]) -> tuple[Complaint, ...]:
-    """Return the complaints by file and line, those without a line last."""
+def _printable(text: str) -> str:
+    """Return a text without what would move the cursor of a terminal."""
+    return "".join(sign if sign.isprintable() else "\ufffd" for sign in text)
+
+
+def in_order(complaints: Iterable[Complaint], first: str) -> tuple[Complaint, ...]:
+    """Return the complaints by file, one file first, and by line, those without a line last."""
     listed = list(complaints)
-    files: Mapping[str, int] = {
-        name: place for place, name in enumerate(dict.fromkeys(c.path for c in listed))
-    }
+    files = {name: place for place, name in enumerate(dict.fromkeys((first, *(c.path for c in listed))))}
     return tuple(sorted(listed, key=lambda c: (files[c.path], c.line is None, c.line or 0)))

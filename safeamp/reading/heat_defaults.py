@@ -1,4 +1,4 @@
-"""Defaults of the heatsink: how far a thermal resistance that nobody measured may lie from what is written."""
+"""Defaults of the heatsink: how far a thermal resistance may lie from what is written."""
 
 from __future__ import annotations
 

@@ -47,7 +47,6 @@ def read_devices(draft: Draft, data: Mapping[str, Any], folder: Path | None) -> 
         found = _rename(draft, path, name, [*inline, *files, *(generic or {})])
         if found is not None:
             _from_file(draft, found, files, generic or {})
-    _unused(draft, inline)
 
 
 def _inline(draft: Draft, data: Mapping[str, Any]) -> list[str]:
@@ -121,9 +120,17 @@ def _call_assumed(draft: Draft, name: str) -> None:
     draft.assume(f"device.{name}", GENERIC, REPLACE)
 
 
-def _unused(draft: Draft, inline: list[str]) -> None:
+def set_aside_unused(draft: Draft) -> None:
+    """Forget the devices that the stage does not name, and say so."""
     used = {name for _, name in _named(draft)}
-    for name in inline:
+    for name in written_devices(draft):
         if name not in used:
             draft.remarks.append(f"device.{name} is not used: stage names other devices")
             draft.drop(f"device.{name}")
+
+
+def written_devices(draft: Draft) -> tuple[str, ...]:
+    """Return the names of all devices that have a table."""
+    return tuple(
+        path.split(".")[1] for path in draft.written if path.startswith("device.") and path.count(".") == 1
+    )

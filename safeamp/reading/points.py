@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from typing import Any
+from itertools import pairwise
+from typing import Any, TypeGuard
 
 from safeamp.amplifier import Key
 from safeamp.quantities import CURRENT, TIME, VOLTAGE, Kind, QuantityError, Reading, read
@@ -18,7 +19,7 @@ def read_points(draft: Draft, path: str, key: Key, value: object) -> Points | No
     if not _is_list(value) or not value:
         draft.complain(path, QuantityError("this is not a list of points", f"write [{example}, ...]"))
         return None
-    readings = [_pair(draft, f"{path}.{place}", key, key.kinds, item) for place, item in enumerate(value)]
+    readings = [_pair(draft, f"{path}.{place}", key, item) for place, item in enumerate(value)]
     whole = [pair for pair in readings if pair is not None]
     if len(whole) < len(readings):
         return None
@@ -38,9 +39,10 @@ def read_curves(draft: Draft, path: str, key: Key, value: object) -> tuple[tuple
     if len(whole) < len(curves):
         return None
     durations = [duration for duration, _ in whole]
-    if any(later <= earlier for earlier, later in zip(durations, durations[1:], strict=False)):
+    if any(later <= earlier for earlier, later in pairwise(durations)):
         draft.complain(path, QuantityError("the durations do not rise", "write the shortest curve first"))
         return None
+    draft.origins[path] = weakest(draft.origins[f"{path}.{place}"] for place in range(len(whole)))
     return tuple(whole)
 
 
@@ -51,12 +53,15 @@ def _curve(draft: Draft, path: str, key: Key, value: Any, form: str) -> tuple[fl
     duration = _part(draft, path, key, TIME, value[0])
     below = Key(help=key.help, kinds=(VOLTAGE, CURRENT), shape="points", sign=key.sign)
     points = read_points(draft, path, below, list(value[1:]))
-    return None if duration is None or points is None else (duration.nominal, points)
+    if duration is None or points is None:
+        return None
+    draft.origins[path] = weakest((draft.origins[path], duration.origin))
+    return duration.nominal, points
 
 
-def _pair(
-    draft: Draft, path: str, key: Key, kinds: tuple[Kind, ...], value: Any
-) -> tuple[Reading, Reading] | None:
+def _pair(draft: Draft, path: str, key: Key, value: object) -> tuple[Reading, Reading] | None:
+    draft.sit(path)
+    kinds = key.kinds
     if not _is_list(value) or len(value) != 2:
         write = f'write two texts, such as ["{kinds[0].example}", "{kinds[1].example}"]'
         draft.complain(path, QuantityError("this is not a point", write))
@@ -84,8 +89,7 @@ def _part(draft: Draft, path: str, key: Key, kind: Kind, value: object) -> Readi
 
 def _note_parts(draft: Draft, path: str, parts: list[Reading]) -> None:
     """Give the curve the origin of its weakest part, and remember dropped signs."""
-    known = draft.origins.get(path)
-    draft.origins[path] = weakest([part.origin for part in parts] + ([known] if known else []))
+    draft.origins[path] = weakest(part.origin for part in parts)
     if any(part.sign_dropped for part in parts):
         draft.dropped.append(path)
 
@@ -93,7 +97,7 @@ def _note_parts(draft: Draft, path: str, parts: list[Reading]) -> None:
 def _in_order(draft: Draft, path: str, points: Points) -> bool:
     """Whether voltage rises and current does not, from point to point."""
     good = True
-    for place, ((low, more), (high, less)) in enumerate(zip(points, points[1:], strict=False), 1):
+    for place, ((low, more), (high, less)) in enumerate(pairwise(points), 1):
         if high <= low:
             draft.complain(
                 f"{path}.{place}",
@@ -114,5 +118,5 @@ def _in_order(draft: Draft, path: str, points: Points) -> bool:
     return good
 
 
-def _is_list(value: object) -> bool:
+def _is_list(value: object) -> TypeGuard[Sequence[Any]]:
     return isinstance(value, Sequence) and not isinstance(value, str)

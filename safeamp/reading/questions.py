@@ -75,7 +75,7 @@ def _swing(draft: Draft) -> None:
 
 
 def _set(draft: Draft, name: str) -> bool:
-    return draft.number(f"stage.{name}") is not None
+    return f"stage.{name}" in draft.written
 
 
 def _room(draft: Draft, given: list[str]) -> None:

@@ -1,4 +1,4 @@
-"""Questions about what was read at the bench: was it read at the right place?"""
+"""Questions about what was read at the bench: whether it was read at the right place."""
 
 from __future__ import annotations
 
@@ -10,6 +10,7 @@ from safeamp.reading.draft import Draft
 OFFSETS = ("offset_cold", "offset_warm", "offset_with_signal", "offset_other_side")
 NEXT_TO_NOTHING = 0.5e-3
 FAR_MIDPOINT = 0.3
+ROUNDING = 1e-9
 LARGEST_LEAKAGE_RESISTOR = 10e3
 
 
@@ -25,9 +26,10 @@ def _offset(draft: Draft) -> None:
     if not given or not relay or any(path in draft.toleranced for path in given):
         return
     if all(abs(draft.values[path]) <= NEXT_TO_NOTHING for path in given):
-        text = f"{show(draft.values[given[0]], VOLTAGE)} with protection fitted: read before or behind the relay, and did it close?"
-        write = 'read it before the relay; a reading that stays is written with its tolerance, "0.3 mV ±0.1 mV, measured"'
-        draft.complain(given[0], f"{text} {write}")
+        text = f"{show(draft.values[given[0]], VOLTAGE)} with protection fitted"
+        ask = "was it read before or behind the relay, and did it close?"
+        write = 'read before the relay; what stays is written with its tolerance, "0.3 mV ±0.1 mV, measured"'
+        draft.complain(given[0], f"{text}: {ask} {write}")
 
 
 def _midpoint(draft: Draft) -> None:
@@ -35,14 +37,11 @@ def _midpoint(draft: Draft) -> None:
     if midpoint is None or draft.word("readings.taken_on") == "limiter":
         return
     if draft.word("supply.rails") == "split":
-        text = "a split supply has no midpoint to read; write the DC at the output as offset_cold and offset_warm"
-        draft.complain("readings.midpoint", text)
-    elif rails and abs(midpoint - rails[0] / 2) > FAR_MIDPOINT * rails[0] / 2:
+        draft.remarks.append('readings.midpoint is not used: supply.rails is "split"')
+    elif rails and abs(2 * midpoint / rails[0] - 1) > FAR_MIDPOINT + ROUNDING:
         text = f"{show(midpoint, VOLTAGE)} is far from half the rail, {show(rails[0] / 2, VOLTAGE)}"
-        draft.complain(
-            "readings.midpoint",
-            f"{text}: was it read before the output capacitor, and had it settled? if so, switch off: the stage is faulty",
-        )
+        ask = "was it read before the output capacitor, and had it settled?"
+        draft.complain("readings.midpoint", f"{text}: {ask} if so, switch off: the stage is at fault")
 
 
 def _leakage(draft: Draft) -> None:
@@ -51,7 +50,8 @@ def _leakage(draft: Draft) -> None:
         text = f"{show(resistor, RESISTANCE)} is above {show(LARGEST_LEAKAGE_RESISTOR, RESISTANCE)}"
         draft.complain(
             "readings.capacitor_leakage_resistor",
-            f"{text}: across so much, as across open terminals, a good capacitor shows volts too; read across 100 ohm",
+            f"{text}: across so much, as across open terminals, a good capacitor shows volts too;"
+            " read across 100 ohm",
         )
     if (
         draft.has("readings.capacitor_leakage_drop")
@@ -66,8 +66,7 @@ def _heatsink(draft: Draft) -> None:
     if sink is not None and air is not None and sink < air:
         text = f"{show(sink, TEMPERATURE)} is below heatsink_air, {show(air, TEMPERATURE)}"
         draft.complain(
-            "readings.heatsink_temperature",
-            f"{text}; a heatsink does not cool below its air: read both again",
+            "readings.heatsink_temperature", f"{text}; no heatsink cools below its air: read both again"
         )
 
 

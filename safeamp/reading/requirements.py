@@ -20,8 +20,6 @@ def ask_for_missing(draft: Draft) -> None:
                 require(draft, f"{table}.{name}", inner)
     _output_capacitor(draft)
     _shared_by(draft)
-    _signs(draft)
-    draft.values["readings.unsigned"] = frozenset(draft.unsigned)
 
 
 def _table(draft: Draft, table: str) -> None:
@@ -42,16 +40,16 @@ def _output_capacitor(draft: Draft) -> None:
 
 
 def _shared_by(draft: Draft) -> None:
-    given = "heatsink.shared_by" in draft.written
-    if "heatsink.sink_to_air" in draft.written or "heatsink.fins" in draft.written:
-        if not given and "heatsink" in draft.written:
-            text = "is missing: channels or bridged sides on the whole heatsink; write shared_by = 1 if it is one"
-            draft.complain("heatsink.shared_by", text)
-    elif given and _free_air(draft):
-        text = "no heatsink is shared: there is no sink_to_air, and the devices have junction_to_ambient"
+    path = "heatsink.shared_by"
+    given = path in draft.written
+    data = "heatsink.sink_to_air" in draft.written or "heatsink.fins" in draft.written
+    if data and not given:
         draft.complain(
-            "heatsink.shared_by", f"{text}; write sink_to_air, or leave shared_by out for free air"
+            path, "is missing: channels or bridged sides on the whole heatsink; write shared_by = 1"
         )
+    elif given and not data and _free_air(draft):
+        text = "nothing is shared in free air: junction_to_ambient is given, and no sink_to_air"
+        draft.complain(path, f"{text}; write sink_to_air, or leave shared_by out")
 
 
 def _free_air(draft: Draft) -> bool:
@@ -60,7 +58,7 @@ def _free_air(draft: Draft) -> bool:
     return bool(names) and all(draft.has(f"device.{name}.junction_to_ambient") for name in names)
 
 
-def _signs(draft: Draft) -> None:
+def say_signs(draft: Draft) -> None:
     """Say once which signs were dropped."""
     if draft.dropped:
         keys = dict.fromkeys(

@@ -14,9 +14,9 @@ from safeamp.reading.defaults import fill_defaults
 from safeamp.reading.document import read_document
 from safeamp.reading.draft import Draft, in_order
 from safeamp.reading.limits import load_limits
-from safeamp.reading.parts import read_devices
+from safeamp.reading.parts import read_devices, set_aside_unused
 from safeamp.reading.questions import ask
-from safeamp.reading.requirements import ask_for_missing
+from safeamp.reading.requirements import ask_for_missing, say_signs
 from safeamp.reading.unassessed import unassessed
 from safeamp.reading.walk import tables_of, walk_sheet
 
@@ -103,7 +103,10 @@ def _read(
     ask_for_missing(draft)
     ask(draft)
     if draft.complaints:
-        raise ReadingError(in_order(draft.complaints))
+        raise ReadingError(in_order(draft.complaints, draft.places.path))
+    set_aside_unused(draft)
+    say_signs(draft)
+    draft.values["readings.unsigned"] = frozenset(draft.unsigned)
     return _amplifier(draft, data)
 
 

@@ -77,8 +77,7 @@ def _top(draft: Draft, data: Mapping[str, Any]) -> None:
 
 
 def _unknown_table(name: str) -> str:
-    near = nearest(name, [*TABLES, *TOP])
-    return f"not a known table or key{near}{'' if near else _home(name)}"
+    return f"not a known table or key{_home(name) or nearest(name, [*TABLES, *TOP])}"
 
 
 def _unknown_key(name: str, path: str, known: Iterable[str]) -> str:
