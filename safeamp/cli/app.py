@@ -79,7 +79,7 @@ def check(
 ) -> None:
     """Say whether the next step may be taken, what to read, and at which reading to switch off."""
     up_to = None if step is None else _step(step)
-    read_only = (sheet, limits)
+    read_only = (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
     if output is not None:
         check_output(output, read_only)
     report = _judge(sheet, limits=limits, device_folder=device_folder, on_paper=on_paper, up_to=up_to)

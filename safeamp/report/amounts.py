@@ -114,15 +114,26 @@ def limit_text(finding: Finding) -> str:
         parts.append(f"go from {show(bound.go[0], kind)} to {show(bound.go[1], kind)}")
     elif bound.go is not None:
         parts.append(f"go {up} {show(_effective(bound.go, bound), kind)}")
-    if bound.stop is not None:
+    if bound.stop is not None and math.isfinite(bound.stop):
         parts.append(f"stop {beyond} {show(bound.stop, kind)}")
     changed = [f"changed by your limits file: {bound.source}"] if bound.overridden else []
     return ", ".join(parts + changed)
 
 
+def shortfall_text(finding: Finding) -> str:
+    """Return how far a value must move to leave stop; empty where no finite level says so."""
+    bound = finding.bound
+    if bound is None or bound.stop is None or not math.isfinite(bound.stop) or finding.id in WORDS:
+        return ""
+    kind = shown_kind(finding)
+    now = "without bound" if finding.unbounded else amount(finding.nominal, kind, [bound.stop])
+    most = "at least" if bound.sense == "at least" else "at most"
+    return f"now {now}, must be {most} {show(bound.stop, kind)}"
+
+
 def _effective(go: float, bound: Bound) -> float:
     """Return up to where a finding is go: where both levels contradict each other, stop wins."""
-    if bound.stop is None:
+    if bound.stop is None or not math.isfinite(bound.stop):
         return go
     return max(go, bound.stop) if bound.sense == "at least" else min(go, bound.stop)
 

@@ -6,7 +6,14 @@ from collections.abc import Iterator
 
 from safeamp.amplifier import written_key
 from safeamp.findings import Finding, Verdict
-from safeamp.report.amounts import also_text, at_text, limit_text, number_text, place_text
+from safeamp.report.amounts import (
+    also_text,
+    at_text,
+    limit_text,
+    number_text,
+    place_text,
+    shortfall_text,
+)
 from safeamp.report.layout import Ink, paragraph
 
 _HANG = " " * 13
@@ -48,10 +55,10 @@ def _key_or_sentence(text: str) -> str:
 
 
 def way_out(finding: Finding) -> str:
-    """Return what would clear a finding: its next reading and the keys that settle it."""
-    keys = ", ".join(dict.fromkeys(written_key(key) for key in finding.needs))
-    give = f"give {keys}" if keys else ""
+    """Return what would clear a finding: how far it is off, its next reading, the keys that settle it."""
+    keys = dict.fromkeys(written_key(key) for key in finding.needs)
+    missing = ", ".join(key for key in keys if key not in finding.next)
+    off = shortfall_text(finding) if finding.verdict is Verdict.STOP else ""
+    parts = (off, finding.next.rstrip("."), f"give {missing}" if missing else "")
     reasons = "; ".join(finding.because) or finding.says
-    return (
-        "; ".join(part for part in (finding.next.rstrip("."), give) if part) or f"remove the cause: {reasons}"
-    )
+    return "; ".join(part for part in parts if part) or f"remove the cause: {reasons}"

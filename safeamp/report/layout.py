@@ -2,12 +2,18 @@
 
 from __future__ import annotations
 
+import re
 import textwrap
 import unicodedata
 from collections.abc import Iterable
 
 from safeamp.findings import Verdict
 
+#: A blank between number and unit; "110" at the end of one line and "%" on the next is misread.
+_BEFORE_UNIT = re.compile(
+    r"(?<=\d) (?=(?:%|°C|K|K/W|m?V|[mµ]?A|[mk]?W|[mkM]?ohm|k?Hz|[µnp]F|deg|m?s|min)(?!\w))"
+)
+_HELD = "\u00a0"
 _COLOURS = {Verdict.GO: "32", Verdict.CAUTION: "33", Verdict.UNVERIFIED: "35", Verdict.STOP: "1;31"}
 
 
@@ -19,13 +25,14 @@ def clean(text: str) -> str:
 
 def paragraph(text: str, width: int, first: str = "", rest: str | None = None) -> list[str]:
     """Return lines no longer than the width; the first starts with `first`, the others with `rest`."""
-    return textwrap.wrap(
-        clean(text),
+    lines = textwrap.wrap(
+        _BEFORE_UNIT.sub(_HELD, clean(text)),
         width,
         initial_indent=first,
         subsequent_indent=" " * len(first) if rest is None else rest,
         break_on_hyphens=False,
     )
+    return [line.replace(_HELD, " ") for line in lines]
 
 
 def points(texts: Iterable[str], width: int, indent: str = "  ") -> list[str]:

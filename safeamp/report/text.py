@@ -12,6 +12,8 @@ from safeamp.report.layout import Ink, block, clean, paragraph, points
 from safeamp.report.safety import SAFETY
 
 PAPER = "on paper: clears no power"
+#: Findings named in the head; the others stand below.
+MANY = 6
 
 
 def render(report: Report, *, width: int = 80, colour: bool = False) -> str:
@@ -62,7 +64,8 @@ def _head(report: Report, width: int, ink: Ink) -> Iterator[str]:
     yield from lines
     deciding = [item.id for item in _asked(report) if item.verdict is report.verdict]
     if deciding and report.verdict is not Verdict.GO:
-        yield from paragraph(f"decided by: {', '.join(deciding)}", width, "  ", "    ")
+        more = f" and {len(deciding) - MANY} more" if len(deciding) > MANY else ""
+        yield from paragraph(f"decided by: {', '.join(deciding[:MANY])}{more}", width, "  ", "    ")
 
 
 def _asked(report: Report) -> list[Finding]:

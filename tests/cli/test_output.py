@@ -45,7 +45,7 @@ def test_a_report_is_written_as_it_would_be_printed(sheet: Path) -> None:
     assert sorted(path.name for path in sheet.parent.iterdir()) == ["amp.toml", "report.txt"]
 
 
-@pytest.mark.parametrize("way", ["itself", "link", "hard link", "detour", "limits"])
+@pytest.mark.parametrize("way", ["itself", "link", "hard link", "detour", "limits", "device"])
 def test_a_file_that_is_read_is_never_written_over(sheet: Path, way: str) -> None:
     before = sheet.read_bytes()
     target, more = sheet, ()
@@ -61,6 +61,10 @@ def test_a_file_that_is_read_is_never_written_over(sheet: Path, way: str) -> Non
         target = sheet.with_name("own.toml")
         target.write_text('[cold.devices]\ngo = "2 kohm"\n', encoding="utf-8")
         more = ("--limits", target)
+    elif way == "device":
+        target = sheet.with_name("device.toml")
+        target.write_text("", encoding="utf-8")
+        more = ("--device-folder", target.parent)
     result = run("check", sheet, "--output", target, *more)
     assert result.exit_code == 2
     assert f"--output {target} is a file that is read" in result.stderr
@@ -150,3 +154,9 @@ def test_letters_that_a_terminal_lacks_are_spelt_out(
     output.prepare_streams()
     output.emit(text)
     assert raw.getvalue() == found.encode("ascii")
+
+
+def test_only_letters_that_cannot_be_written_are_spelt_out() -> None:
+    trouble = UnicodeDecodeError("ascii", b"\xff", 0, 1, "no letter")
+    with pytest.raises(UnicodeDecodeError):
+        output._spell_out(trouble)

@@ -79,6 +79,43 @@ def test_the_worst_stands_first_among_what_clears_a_step() -> None:
     assert lines_of(OFFSET, worse)[-1].endswith("bias (stop); to clear: offset.drift, offset.output")
 
 
+@pytest.mark.parametrize(
+    ("more", "text"),
+    [
+        ({}, "now 121 %, must be at most 100 %; Use a loudspeaker of more ohms; give stage.rated_load"),
+        ({"nominal": None, "unbounded": True}, "now without bound, must be at most 100 %; Use a loudspeaker"),
+        ({"next": "give stage.rated_load"}, "now 121 %, must be at most 100 %; give stage.rated_load"),
+        ({"bound": None, "next": "", "needs": ()}, "remove the cause: 1.21 of the safe area is used"),
+        ({"bound": None, "next": "", "needs": (), "because": ()}, "remove the cause: The device leaves"),
+        ({"bound": Bound(1.0, float("-inf"), "at most", "s", "e")}, "Use a loudspeaker of more ohms"),
+    ],
+)
+def test_what_clears_a_stop_begins_with_how_far_it_is_off(more: dict, text: str) -> None:
+    found = section(lines_of(replace(SAFE_AREA, **more)), "What clears the step loudspeaker")
+    assert found.startswith(f"- soa.loudspeaker (stop): {text}")
+    assert found.count("stage.rated_load") <= 1
+
+
+def test_a_level_without_end_is_not_shown() -> None:
+    text = " ".join(lines_of(replace(OFFSET, bound=Bound(0.05, float("-inf"), "at most", "s", "e"))))
+    assert "(go up to 50 mV)" in text
+
+
+def test_the_head_names_a_handful_of_what_decides() -> None:
+    many = [replace(OFFSET, id=f"offset.reading_{number}") for number in range(9)]
+    text = " ".join(" ".join(lines_of(*many)).split())
+    assert "offset.reading_4, offset.reading_5 and 3 more Steps" in text
+    assert "offset.reading_5 and" not in " ".join(lines_of(*many[:6]))
+
+
+@pytest.mark.parametrize("shift", range(20))
+def test_number_and_unit_stay_on_one_line(shift: int) -> None:
+    lines = lines_of(
+        replace(SAFE_AREA, because=("x" * shift + " 12 % 3.5 mV 7 K/W 4 kohm 25 °C 45 deg" * 3,))
+    )
+    assert not [line for line in lines if re.match(r" *(%|mV|K/W|kohm|°C|deg)( |$)", line)]
+
+
 def test_steps_after_one_that_is_not_cleared_are_not_reached() -> None:
     steps = section(lines_of(DEVICES, OFFSET, SAFE_AREA), "Steps, in their order")
     assert "go for cold checks" in steps
@@ -266,3 +303,18 @@ def test_kinds_of_other_values_are_printed_too() -> None:
     finding = replace(caution(finding), inputs=(replace(SAFE_AREA.inputs[0], key="stage.idle", unit="V"),))
     text = " ".join(lines_of(finding))
     assert "device.fitted.power 150 W, stage.idle 12 mV" in text
+
+
+def test_nothing_judged_is_told_as_nothing_cleared() -> None:
+    lines = lines_of()
+    assert lines[-1] == f"Nothing is cleared: unverified for {SCOPE}"
+    assert "All steps cleared" not in " ".join(lines)
+
+
+def test_an_id_too_long_for_the_last_line_is_looked_up_above() -> None:
+    last = lines_of(replace(OFFSET, id="offset." + "x" * 70))[-1]
+    assert last == "First step not cleared: bias (unverified); to clear: see above"
+
+
+def test_a_report_without_a_file_names_none() -> None:
+    assert "SHA-256" not in render(report_of(DEVICES, source=""))
