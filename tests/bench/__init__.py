@@ -1,0 +1,1 @@
+"""How long the commands take, as ratios to importing numpy: a number to read, never a test that fails."""
