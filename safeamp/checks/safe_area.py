@@ -232,6 +232,8 @@ def _loads(amplifier: Amplifier, angle: Number) -> tuple[_Load, ...]:
 
 
 def _at_sixty(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
+    if np.ndim(worst.use):  # only the nominal figure is shown: over the corners it would be work for nothing
+        return ()
     magnitude, turned = operating.nominal_load(amplifier, SHOWN_ANGLE)
     load = _Load(magnitude, turned, "60 deg")
     use = _use_of(amplifier, worst.side, load, worst.case, _rating(amplifier, worst.side))
