@@ -103,12 +103,18 @@ class Supply:
 class Fins:
     """A finned heatsink by ruler."""
 
-    width: Number | None = number(LENGTH, "width of the plate, across the fins", required=True)
-    height: Number | None = number(LENGTH, "height, vertical, along the fins", required=True)
-    depth: Number | None = number(LENGTH, "length of a fin from plate to tip", required=True)
-    thickness: Number | None = number(LENGTH, "thickness of a fin", required=True)
+    width: Number | None = number(
+        LENGTH, "width of the plate, across the fins", required=True, believable=(0.005, 2.0)
+    )
+    height: Number | None = number(
+        LENGTH, "height, vertical, along the fins", required=True, believable=(0.005, 2.0)
+    )
+    depth: Number | None = number(
+        LENGTH, "length of a fin from plate to tip", required=True, believable=(0.001, 0.5)
+    )
+    thickness: Number | None = number(LENGTH, "thickness of a fin", required=True, believable=(2e-4, 0.05))
     count: Number | None = count("number of fins", required=True, believable=(1, 500))
-    plate: Number | None = number(LENGTH, "thickness of the base plate")
+    plate: Number | None = number(LENGTH, "thickness of the base plate", believable=(5e-4, 0.1))
     emissivity: Number | None = number(RATIO, "emissivity of the surface, 0 to 1", believable=(0.01, 1.0))
 
 
@@ -116,9 +122,13 @@ class Fins:
 class Heatsink:
     """The way of the heat from the case to the air."""
 
-    sink_to_air: Number | None = number(THERMAL_RESISTANCE, "thermal resistance from heatsink to air")
+    sink_to_air: Number | None = number(
+        THERMAL_RESISTANCE, "thermal resistance from heatsink to air", believable=(0.01, 100.0)
+    )
     case_to_sink: Number | None = number(
-        THERMAL_RESISTANCE, "thermal resistance from case to heatsink, insulator and paste included"
+        THERMAL_RESISTANCE,
+        "thermal resistance from case to heatsink, insulator and paste included",
+        believable=(0.005, 50.0),
     )
     insulator: str | None = word("name of a mounting in the table of interfaces, in place of case_to_sink")
     air: Number | None = number(

@@ -75,7 +75,7 @@ class Stage:
         why="without a sensor the idle current follows the heat: the unsafe side",
     )
     bias_tracking: Number | None = number(
-        PERCENT, "share of the temperature rise that the bias generator follows"
+        PERCENT, "share of the temperature rise that the bias generator follows", believable=(0.0, 1.2)
     )
     swing_loss: Number | None = number(
         VOLTAGE,
@@ -204,10 +204,16 @@ class Device:
         (TIME, VOLTAGE, CURRENT), "further curves by duration", shape="curves", sign=Sign.MAGNITUDE
     )
     transconductance_parameter: Number | None = number(
-        TRANSCONDUCTANCE_PARAMETER, "K of I = K/2 times overdrive squared", symbol="K"
+        TRANSCONDUCTANCE_PARAMETER,
+        "K of I = K/2 times overdrive squared",
+        symbol="K",
+        believable=(0.01, 500.0),
     )
     temperature_coefficient: Number | None = number(
-        TEMPERATURE_COEFFICIENT, "mV/K of the control voltage at constant current", sign=Sign.ANY
+        TEMPERATURE_COEFFICIENT,
+        "mV/K of the control voltage at constant current",
+        sign=Sign.ANY,
+        believable=(0.0, 0.03),
     )
     transient: tuple[tuple[Number, Number], ...] | None = number(
         (THERMAL_RESISTANCE, TIME), "Foster pairs of the transient thermal resistance", shape="points"

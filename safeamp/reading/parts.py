@@ -58,16 +58,22 @@ def _inline(draft: Draft, data: Mapping[str, Any]) -> list[str]:
     for name, table in tables.items():
         path = f"device.{name}"
         draft.seats[path] = (draft.places.path, draft.places.line("device", name))
-        if "." in name or name.isdigit() or not name.strip():
-            draft.complain(
-                path, "is no name for a device; write letters, digits and hyphens, without a point"
-            )
-        elif not isinstance(table, Mapping):
+        if not _is_name(draft, path, name):
+            continue
+        if not isinstance(table, Mapping):
             draft.complain(path, f"this is no table; write [{path}] and its keys below it")
         else:
             walk_table(draft, path, Device, table)
             require(draft, path, Device)
     return list(tables)
+
+
+def _is_name(draft: Draft, path: str, name: str) -> bool:
+    """Whether a name can stand in a key path; complain if not."""
+    good = "." not in name and not name.isdigit() and bool(name.strip())
+    if not good:
+        draft.complain(path, "is no name for a device; write letters, digits and hyphens, without a point")
+    return good
 
 
 def _named(draft: Draft) -> list[tuple[str, str]]:
@@ -101,9 +107,11 @@ def _from_file(
         return
     table = files.get(name) or generic[name]
     here, draft.places = draft.places, _Within(table)
-    draft.sit(f"device.{name}")
-    walk_table(draft, f"device.{name}", Device, table.data)
-    require(draft, f"device.{name}", Device)
+    path = f"device.{name}"
+    draft.seats[path] = (table.path, table.line())
+    if _is_name(draft, path, name):
+        walk_table(draft, path, Device, table.data)
+        require(draft, path, Device)
     draft.places = here
     if name not in files:
         _call_assumed(draft, name)
@@ -130,7 +138,6 @@ def set_aside_unused(draft: Draft) -> None:
 
 
 def written_devices(draft: Draft) -> tuple[str, ...]:
-    """Return the names of all devices that have a table."""
-    return tuple(
-        path.split(".")[1] for path in draft.written if path.startswith("device.") and path.count(".") == 1
-    )
+    """Return the names of all devices that have a table, in the order of the files."""
+    tables = [path for path in draft.seats if path.startswith("device.") and path.count(".") == 1]
+    return tuple(path.removeprefix("device.") for path in tables if path in draft.written)

@@ -26,7 +26,7 @@ def tables_of(noun: type[Any]) -> dict[str, type[Any]]:
 
 
 def walk_sheet(draft: Draft, data: Mapping[str, Any]) -> None:
-    """Read everything of a sheet but its devices, which `devices_of` finds."""
+    """Read everything of a sheet but its devices, which `read_devices` finds."""
     _top(draft, data)
     for name, value in data.items():
         if name in TOP or name == "device":

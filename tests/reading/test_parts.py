@@ -111,3 +111,15 @@ def test_troubles_of_the_folder_are_said_with_those_of_the_sheet(tmp_path):
 def test_an_unknown_device_is_refused_with_the_nearest_generic_name(tmp_path):
     found = complaints(tmp_path, {"stage.upper": "to3-npn-140v-160w"})
     assert any(f"did you mean {GENERIC}?" in text for text in found)
+
+
+@pytest.mark.parametrize("name", ["to3.npn", "7", " "])
+def test_a_name_that_cannot_stand_in_a_key_is_refused_in_a_device_file_too(tmp_path, name):
+    folder = folder_with(tmp_path, "own")
+    file = folder / "one.toml"
+    file.write_text(
+        file.read_text(encoding="utf-8").replace("[device.own]", f'[device."{name}"]'), encoding="utf-8"
+    )
+    found = complaints(tmp_path, {"stage.upper": name}, device_folder=folder)
+    words = "is not a text" if name == " " else "is no name for a device; write letters, digits and hyphens"
+    assert any(words in text for text in found), found
