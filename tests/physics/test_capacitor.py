@@ -176,3 +176,11 @@ def test_oscillation_at_a_higher_frequency_is_hotter(frequency, more):
     assert zobel.dissipation(**network, frequency=frequency * more) > zobel.dissipation(
         **network, frequency=frequency
     )
+
+
+@pytest.mark.parametrize("ratio", [1e-6, 5e-4, 0.00099, 0.00101])
+def test_turn_on_energy_of_short_rises(ratio):
+    # Derived: (x - 1 + exp(-x))/x^2 = 1/2 - x/6 + x^2/24 - x^3/120 + x^4/720 ...
+    series = 0.5 - ratio / 6 + ratio**2 / 24 - ratio**3 / 120 + ratio**4 / 720
+    found = capacitor.turn_on_energy(capacitance=1, load_resistance=1, midpoint=1, rise_time=ratio)
+    assert found == pytest.approx(series, rel=1e-9)

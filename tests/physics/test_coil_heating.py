@@ -5,8 +5,10 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 from scipy.integrate import solve_ivp
+from scipy.linalg import expm
 
 from safeamp.physics import loudspeaker
+from safeamp.physics.coil_heating import _Coil
 
 COIL = {
     "voltage": 35.0,
@@ -161,3 +163,29 @@ def test_scaling_stands_in_for_dimensions(scale):
     assert loudspeaker.time_to_temperature(**electric, limit=180) == pytest.approx(plain)
     slower = {**COIL, "coil_time_constant": 4 * scale, "magnet_time_constant": 900 * scale}
     assert loudspeaker.time_to_temperature(**slower, limit=180) == pytest.approx(plain * scale)
+
+
+@pytest.mark.parametrize(("fast", "slow"), [(4.0, 4.0), (10.0, 2.0), (4.0, 12.0)])
+def test_stages_of_like_time_constants(fast, slow):
+    coil = {**COIL, "coil_time_constant": fast, "magnet_time_constant": slow, "magnet_to_air": 4.0}
+    for limit in (100.0, 250.0, 380.0):
+        _, wanted = integrated(coil, 2000, limit)
+        assert wanted < np.inf
+        assert loudspeaker.time_to_temperature(**coil, limit=limit) == pytest.approx(wanted, rel=0.005)
+    for time in (1.0, 5.0, 30.0):
+        wanted, _ = integrated(coil, time)
+        found = loudspeaker.fault_coil_temperature(**coil, time=time)
+        assert found - 25 == pytest.approx(wanted - 25, rel=0.002)
+
+
+@pytest.mark.parametrize("time", [1e-3, 1.0, 5.0, 50.0])
+def test_one_step_of_any_length_is_exact_while_the_heat_is_constant(time):
+    # Derived: without a resistance rise the network is linear, x' = J x + f, solved by the exponential of J.
+    fast, slow, inner, outer, watts = 4.0, 6.0, 2.0, 3.0, 50.0
+    coil = _Coil(*(np.array(x) for x in (watts, 0.0, inner, fast, outer, slow)))
+    ratio = outer / inner
+    jacobian = np.array([[-1 / fast, 1 / fast], [ratio / slow, -(1 + ratio) / slow]])
+    settled = np.array([watts * (inner + outer), watts * outer])
+    start = np.array([30.0, 10.0])
+    wanted = settled + expm(jacobian * time) @ (start - settled)
+    assert list(coil.advance(*start, time)) == pytest.approx(list(wanted), rel=1e-9)

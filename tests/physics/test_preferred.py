@@ -86,3 +86,16 @@ def test_rated_voltage_of_cases_and_refusals():
         next_rated_voltage([50.0, 160.1])
     with pytest.raises(ValueError, match=r"^voltage must be greater than zero, got -1\.0$"):
         next_rated_voltage(-1.0)
+
+
+def test_e24_follows_its_geometric_series():
+    # IEC 60063: 24 values a decade, each within 5 % of a power of the 24th root of ten.
+    ideal = 10 * 10 ** (np.arange(24) / 24)
+    assert np.max(np.abs(np.array(SERIES["E24"]) / ideal - 1)) < 0.05
+    assert list(SERIES["E24"]) == sorted(SERIES["E24"])
+
+
+def test_rated_voltages_one_by_one():
+    just_above = np.array([0.1, *RATED_VOLTAGES[:-1]]) * 1.0001
+    wanted = [6.3, 10, 16, 25, 35, 40, 50, 63, 80, 100, 160]
+    assert list(next_rated_voltage(just_above)) == wanted
