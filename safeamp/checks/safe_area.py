@@ -37,7 +37,8 @@ class _Load:
     name: str
 
 
-def _rating(amplifier: Amplifier, side: str) -> Rating:
+def rating_of(amplifier: Amplifier, side: str) -> Rating:
+    """Return the ratings of the device of a side."""
     device = operating.device_of(amplifier, side)
     return Rating(
         current=thermal.device_value(amplifier, side, "current"),
@@ -76,7 +77,7 @@ def _imbalance(amplifier: Amplifier) -> Number | None:
     return np.zeros(np.shape(single)) if np.all(single) else None
 
 
-def _sides_to_judge(amplifier: Amplifier) -> tuple[str, ...]:
+def sides_to_judge(amplifier: Amplifier) -> tuple[str, ...]:
     """Return the sides that differ in structure: equal devices on a split supply are one."""
     table = amplifier.stage
     split_loss = table.swing_loss_up is not None or table.swing_loss_down is not None
@@ -98,9 +99,9 @@ class _Worst:
 
 def _worst(amplifier: Amplifier, loads: tuple[_Load, ...], fraction: float, angle: Number) -> _Worst:
     found = []
-    for side in _sides_to_judge(amplifier):
+    for side in sides_to_judge(amplifier):
         case = thermal.hotter_case(amplifier, side, fraction, angle)
-        rating = _rating(amplifier, side)
+        rating = rating_of(amplifier, side)
         found += [(_use_of(amplifier, side, load, case, rating), case, side, load) for load in loads]
     point, case, side, load = max(found, key=lambda one: _sortable(one[0].use))
     use = reduce(np.maximum, [one[0].use for one in found])
@@ -113,14 +114,15 @@ def _sortable(use: Number) -> float:
     return np.inf if np.isnan(value) else value
 
 
-def _remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
+def device_remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
+    """Return what keeps every finding of the safe area from being judged: no idle, typical data, no curve."""
     found = [*idle_remarks(amplifier)]
     for side in dict.fromkeys((amplifier.stage.upper, amplifier.stage.lower)):
-        found += _device_remarks(amplifier, str(side))
+        found += _remarks_on(amplifier, str(side))
     return tuple(found)
 
 
-def _device_remarks(amplifier: Amplifier, name: str) -> list[Remark]:
+def _remarks_on(amplifier: Amplifier, name: str) -> list[Remark]:
     side = "upper" if amplifier.stage.upper == name else "lower"
     device, found = operating.device_of(amplifier, side), []
     if amplifier.origin(f"device.{name}.voltage") is Origin.ASSUMED:
@@ -129,7 +131,7 @@ def _device_remarks(amplifier: Amplifier, name: str) -> list[Remark]:
     if not device.safe_area and device.kind != "lateral mosfet":
         because = f"device.{name}.safe_area is not given: second breakdown is not judged"
         found.append(Remark(Verdict.UNVERIFIED, because))
-    problem = safe_area.points_problem(_rating(amplifier, side))
+    problem = safe_area.points_problem(rating_of(amplifier, side))
     if problem is not None:
         found.append(Remark(Verdict.UNVERIFIED, problem))
     return found
@@ -176,7 +178,7 @@ def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
     return Measure(
         worst.use,
         _says(worst, worst.use),
-        remarks=_remarks(amplifier),
+        remarks=device_remarks(amplifier),
         unknown=worst.unknown,
         needs=_needs(amplifier),
         at=_point(worst),
@@ -187,7 +189,7 @@ def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
 
 
 def _usable(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
-    rating = _rating(amplifier, worst.side)
+    rating = rating_of(amplifier, worst.side)
     left = safe_area.derating(
         case_temperature=worst.case, power_at=rating.power_at, junction_limit=rating.junction_limit
     )
@@ -208,7 +210,7 @@ def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
     return Measure(
         worst.use,
         _says(worst, worst.use),
-        remarks=_remarks(amplifier),
+        remarks=device_remarks(amplifier),
         unknown=worst.unknown,
         needs=_needs(amplifier),
         at=_point(worst),
@@ -236,7 +238,7 @@ def _at_sixty(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
         return ()
     magnitude, turned = operating.nominal_load(amplifier, SHOWN_ANGLE)
     load = _Load(magnitude, turned, "60 deg")
-    use = _use_of(amplifier, worst.side, load, worst.case, _rating(amplifier, worst.side))
+    use = _use_of(amplifier, worst.side, load, worst.case, rating_of(amplifier, worst.side))
     return (Also("60 deg", nominal(use.use), RATIO),)
 
 

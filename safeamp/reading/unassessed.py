@@ -25,7 +25,6 @@ WOULD_CHANGE: dict[str, tuple[str, ...]] = {
     "loudspeaker.q_electrical": ("capacitor.cutoff",),
     "loudspeaker.inductance": ("capacitor.cutoff",),
     "loudspeaker.moving_mass": ("capacitor.cutoff",),
-    "protection.vi_limiter": ("protection.short",),
 }
 
 

@@ -5,6 +5,7 @@ from safeamp.physics.safe_area.locus import ZONES, Use
 from safeamp.physics.safe_area.peak import equivalent_resistance, peak_dissipation
 from safeamp.physics.safe_area.rating import Rating, derating, points_problem, usable_power
 from safeamp.physics.safe_area.use import angle_use, envelope_use
+from safeamp.physics.safe_area.vi_limiter import limiter_current, limiter_reach, limiter_use
 
 __all__ = [
     "ZONES",
@@ -15,6 +16,9 @@ __all__ = [
     "derating",
     "envelope_use",
     "equivalent_resistance",
+    "limiter_current",
+    "limiter_reach",
+    "limiter_use",
     "peak_dissipation",
     "points_problem",
     "usable_power",
