@@ -222,6 +222,24 @@ def minimum_load(amplifier: Amplifier, angle: Number = 0.0) -> tuple[Number, Num
     return _seen(amplifier, believed_minimum(amplifier), angle)
 
 
+def behind_capacitor(
+    amplifier: Amplifier, magnitude: Number, angle: Number, most: float
+) -> tuple[Number, Number]:
+    """Return a load of one side with the output capacitor in series, at the note that turns it to an angle.
+
+    The capacitive side of the load counts; `most` is the angle looked for, deg, held between that of the load alone
+    and that at the lowest note.
+    """
+    farads, note = needed(amplifier, "output_capacitor.capacitance", "loudspeaker.lowest_note")
+    esr = amplifier.output_capacitor.esr
+    turn = np.deg2rad(angle)
+    resistance = magnitude * np.cos(turn) + (0.0 if esr is None else esr)
+    own = magnitude * np.sin(turn)
+    lowest = own + 1.0 / (2.0 * np.pi * note * farads)
+    turned = np.clip(np.tan(np.deg2rad(min(most, 89.9))), own / resistance, lowest / resistance)
+    return resistance * np.hypot(1.0, turned), np.rad2deg(np.arctan(turned))
+
+
 def phase_angle(amplifier: Amplifier) -> Number:
     """Return the angle that counts, deg: never below 45 without a curve."""
     (angle,) = needed(amplifier, "loudspeaker.phase_angle")

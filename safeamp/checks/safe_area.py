@@ -9,12 +9,12 @@ import numpy as np
 
 from safeamp.amplifier import Amplifier
 from safeamp.checks import operating, thermal
-from safeamp.checks.loudspeaker import label_ratio
+from safeamp.checks.as_built import as_built
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import needed
 from safeamp.checks.words import idle_remarks, nominal, text
-from safeamp.findings import Also, AsBuilt, Measure, Remark, Step, Verdict
-from safeamp.limits import Limit, Limits
+from safeamp.findings import Also, Measure, Remark, Step, Verdict
+from safeamp.limits import Limits
 from safeamp.physics import safe_area
 from safeamp.physics.safe_area import ZONES, Rating, Use
 from safeamp.quantities import CURRENT, POWER, RATIO, RESISTANCE, TEMPERATURE, VOLTAGE, Number, Origin, show
@@ -23,6 +23,12 @@ from safeamp.quantities import CURRENT, POWER, RATIO, RESISTANCE, TEMPERATURE, V
 MINIMUM_ANGLE = 30.0
 #: Angle shown beside the one that is judged, deg.
 SHOWN_ANGLE = 60.0
+#: Angles at which a load behind the output capacitor is looked at, as far as the lowest note reaches them, deg:
+#: on the way there the use is largest near the first two, and a steep second-breakdown line moves it to the last.
+LOW_NOTE_ANGLES = (48.0, 60.0, 90.0)
+#: From this share of the peak current on an idle current makes an unloaded output worth a look.
+OPEN_LOAD_IDLE = 0.25
+OPEN_LOAD = 1e6
 SIDES = ("upper", "lower")
 METHOD = "DC safe area at case temperature, closed-form envelope of all angles, class-AB law"
 NEXT = "keep the loudspeaker off until the use is cleared: higher load, lower mains or stronger devices"
@@ -174,7 +180,7 @@ def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
     """Use of the safe area into a resistor of the nominal impedance."""
     magnitude, turned = operating.nominal_load(amplifier)
     load = _Load(magnitude, turned, f"a resistor of {text(magnitude, RESISTANCE)}")
-    worst = _worst(amplifier, (load,), thermal.ONE_THIRD, 0.0)
+    worst = _worst(amplifier, (load, *_low_notes(amplifier, load)), thermal.ONE_THIRD, 0.0)
     return Measure(
         worst.use,
         _says(worst, worst.use),
@@ -207,30 +213,43 @@ def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
     """Use of the safe area into the loudspeaker: nominal at its angle, minimum at 30 deg, the worse counts."""
     angle = operating.phase_angle(amplifier)
     worst = _worst(amplifier, _loads(amplifier, angle), thermal.ONE_EIGHTH, angle)
+    open_load = _open_load(amplifier, worst)
     return Measure(
         worst.use,
         _says(worst, worst.use),
-        remarks=device_remarks(amplifier),
+        remarks=(*device_remarks(amplifier), *_open_remarks(open_load)),
         unknown=worst.unknown,
         needs=_needs(amplifier),
         at=_point(worst),
-        also=(*_at_sixty(amplifier, worst), *_usable(amplifier, worst)),
+        also=(*_at_sixty(amplifier, worst), *open_load, *_usable(amplifier, worst)),
         next=NEXT,
         method=METHOD,
-        as_built=_as_built(amplifier, limits["soa.loudspeaker"], limits["loudspeaker.label"]),
+        as_built=as_built(amplifier, limits["soa.loudspeaker"], limits["loudspeaker.label"]),
     )
 
 
 def _loads(amplifier: Amplifier, angle: Number) -> tuple[_Load, ...]:
-    magnitude, turned = operating.nominal_load(amplifier, angle)
+    nominal_ohms, turned = operating.nominal_load(amplifier, angle)
     lowest, lowest_turned = operating.minimum_load(amplifier, MINIMUM_ANGLE)
-    at = f"at up to {nominal(angle):.0f} deg"
+    said = f"{text(nominal_ohms, RESISTANCE)} at up to {nominal(angle):.0f} deg"
+    said_lowest = f"{text(lowest, RESISTANCE)} (minimum) at up to {MINIMUM_ANGLE:.0f} deg"
     return (
-        _Load(magnitude, turned, f"{text(magnitude, RESISTANCE)} {at}"),
-        _Load(
-            lowest, lowest_turned, f"{text(lowest, RESISTANCE)} (minimum) at up to {MINIMUM_ANGLE:.0f} deg"
-        ),
+        _Load(nominal_ohms, turned, said),
+        _Load(lowest, lowest_turned, said_lowest),
+        *_low_notes(amplifier, _Load(nominal_ohms, turned, said)),
+        *_low_notes(amplifier, _Load(lowest, lowest_turned, said_lowest)),
     )
+
+
+def _low_notes(amplifier: Amplifier, load: _Load) -> tuple[_Load, ...]:
+    """Return a load with the output capacitor in series, from its own angle to that at the lowest note."""
+    if not operating.is_capacitor_coupled(amplifier):
+        return ()
+    name = f"{load.name} behind the output capacitor at low notes"
+    seen = [
+        operating.behind_capacitor(amplifier, load.magnitude, load.angle, most) for most in LOW_NOTE_ANGLES
+    ]
+    return tuple(_Load(magnitude, turned, name) for magnitude, turned in seen)
 
 
 def _at_sixty(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
@@ -242,35 +261,23 @@ def _at_sixty(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
     return (Also("60 deg", nominal(use.use), RATIO),)
 
 
-def _as_built(amplifier: Amplifier, limit: Limit, label: Limit) -> AsBuilt:
-    """Return whether the maker's own ratings cover this load, these devices and this mains."""
-    table, mains = amplifier.stage, amplifier.mains
-    most = limit.extra["as_built_mains_over_rated"]
-    load = nominal(operating.believed_nominal(amplifier) / needed(amplifier, "loudspeaker.parallel")[0])
-    conditions = {
-        "stage.rated_load": table.rated_load is not None and nominal(table.rated_load) <= load * (1.0 + 1e-9),
-        "stage.original_devices": table.original_devices is True,
-        "stage.pairs_conducting": _all_conduct(amplifier),
-        "loudspeaker.dc_resistance": _label_is_go(amplifier, label),
-        "mains.rated": _mains_within(mains.actual, mains.rated, most),
-        "loudspeaker.impedance_curve": amplifier.loudspeaker.impedance_curve is None,
-    }
-    failed = tuple(key for key, holds in conditions.items() if not holds)
-    return AsBuilt(not failed, limit.extra["as_built_ceiling"], failed)
+def _open_load(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
+    """Return the use without a load: a large idle current then flows at nearly rail to rail."""
+    if np.ndim(worst.use):
+        return ()
+    peak = operating.clipping_peak(amplifier) / worst.load.magnitude / operating.conducting(amplifier)
+    if not nominal(operating.idle_current(amplifier)) > OPEN_LOAD_IDLE * nominal(peak):
+        return ()
+    rating = rating_of(amplifier, worst.side)
+    use = _use_of(amplifier, worst.side, _Load(OPEN_LOAD, 0.0, "no load"), worst.case, rating)
+    return (Also("driven without a load", nominal(use.use), RATIO),)
 
 
-def _all_conduct(amplifier: Amplifier) -> bool:
-    conducting = operating.conducting(amplifier)
-    return nominal(conducting) >= nominal(needed(amplifier, "stage.pairs")[0])
-
-
-def _label_is_go(amplifier: Amplifier, label: Limit) -> bool:
-    if amplifier.loudspeaker.dc_resistance is None or not isinstance(label.go, tuple):
-        return False
-    return bool(label.go[0] <= nominal(label_ratio(amplifier)) <= label.go[1])
-
-
-def _mains_within(actual: Number | None, rated: Number | None, most: float) -> bool:
-    if actual is None or rated is None:
-        return False
-    return nominal(actual) <= most * nominal(rated) * (1.0 + 1e-9)
+def _open_remarks(open_load: tuple[Also, ...]) -> tuple[Remark, ...]:
+    if not any(one.value > 1.0 for one in open_load):
+        return ()
+    return (
+        Remark(
+            Verdict.CAUTION, "driven without a load, or where its impedance is high, it leaves the safe area"
+        ),
+    )

@@ -1,0 +1,46 @@
+"""Whether the maker's own ratings cover this load, these devices and this mains."""
+
+from __future__ import annotations
+
+from safeamp.amplifier import Amplifier
+from safeamp.checks import operating
+from safeamp.checks.loudspeaker import label_ratio
+from safeamp.checks.trace import needed
+from safeamp.checks.words import nominal
+from safeamp.findings import AsBuilt
+from safeamp.limits import Limit
+from safeamp.quantities import Number
+
+
+def as_built(amplifier: Amplifier, limit: Limit, label: Limit) -> AsBuilt:
+    """Return whether the maker's own ratings cover this load, these devices and this mains."""
+    table, mains = amplifier.stage, amplifier.mains
+    most = limit.extra["as_built_mains_over_rated"]
+    load = nominal(operating.believed_nominal(amplifier) / needed(amplifier, "loudspeaker.parallel")[0])
+    conditions = {
+        "stage.rated_load": table.rated_load is not None and nominal(table.rated_load) <= load * (1.0 + 1e-9),
+        "stage.original_devices": table.original_devices is True,
+        "stage.pairs_conducting": _all_conduct(amplifier),
+        "loudspeaker.dc_resistance": _label_is_go(amplifier, label),
+        "mains.rated": _mains_within(mains.actual, mains.rated, most),
+        "loudspeaker.impedance_curve": amplifier.loudspeaker.impedance_curve is None,
+    }
+    failed = tuple(key for key, holds in conditions.items() if not holds)
+    return AsBuilt(not failed, limit.extra["as_built_ceiling"], failed)
+
+
+def _all_conduct(amplifier: Amplifier) -> bool:
+    conducting = operating.conducting(amplifier)
+    return nominal(conducting) >= nominal(needed(amplifier, "stage.pairs")[0])
+
+
+def _label_is_go(amplifier: Amplifier, label: Limit) -> bool:
+    if amplifier.loudspeaker.dc_resistance is None or not isinstance(label.go, tuple):
+        return False
+    return bool(label.go[0] <= nominal(label_ratio(amplifier)) <= label.go[1])
+
+
+def _mains_within(actual: Number | None, rated: Number | None, most: float) -> bool:
+    if actual is None or rated is None:
+        return False
+    return nominal(actual) <= most * nominal(rated) * (1.0 + 1e-9)
