@@ -96,6 +96,12 @@ def test_what_clears_a_stop_begins_with_how_far_it_is_off(more: dict, text: str)
     assert found.count("stage.rated_load") <= 1
 
 
+def test_a_stop_that_is_too_low_must_rise() -> None:
+    shorted = replace(DEVICES, verdict=Verdict.STOP, nominal=20.0, worst=20.0, next="Find it.")
+    found = section(lines_of(shorted), "What clears the step cold checks")
+    assert found == "- cold.devices (stop): now 20 ohm, must be at least 100 ohm; Find it"
+
+
 def test_a_level_without_end_is_not_shown() -> None:
     text = " ".join(lines_of(replace(OFFSET, bound=Bound(0.05, float("-inf"), "at most", "s", "e"))))
     assert "(go up to 50 mV)" in text
