@@ -182,6 +182,7 @@ def _unsettled(check: Check, measure: Measure, limit: Limit, bench: Bench, trace
         worst=_at(measure.value, 0),
         bound=_bound(measure, limit),
         because=tuple(remark.because for remark in measure.remarks),
+        also=tuple(one for one in measure.also if np.isfinite(one.value)),
         inputs=_inputs(bench.sheet, trace),
         needs=tuple(dict.fromkeys((*trace.missing, *measure.needs))),
         next=measure.next,
