@@ -38,11 +38,9 @@ class Bench:
 
 def find(check: Check, bench: Bench) -> Finding | NotApplicable | None:
     """Return the judged finding of one check."""
-    trace = Trace()
-    measure = _run(check, watched(bench.sheet.amplifier, trace), bench.limits)
+    measure, trace = look(check, bench)
     if measure is None or isinstance(measure, NotApplicable):
         return measure
-    measure = replace(measure, remarks=(*measure.remarks, *_remarks(check, bench, trace)))
     limit = bench.limits[check.id]
     if trace.missing:
         return _unsettled(check, measure, limit, bench, trace)
@@ -50,6 +48,15 @@ def find(check: Check, bench: Bench) -> Finding | NotApplicable | None:
     words = tuple(dict.fromkeys(written_key(e.path) for e in design.entries if corners.is_estimated(e)))
     judgement = judge(over_cases, limit, design.guessed, words)
     return _finding(check, measure, over_cases, design, judgement, bench, trace)
+
+
+def look(check: Check, bench: Bench) -> tuple[Measure | NotApplicable | None, Trace]:
+    """Return what a check yields at the nominal values, with all that holds it back, and what it reads."""
+    trace = Trace()
+    measure = _run(check, watched(bench.sheet.amplifier, trace), bench.limits)
+    if isinstance(measure, Measure):
+        measure = replace(measure, remarks=(*measure.remarks, *_remarks(check, bench, trace)))
+    return measure, trace
 
 
 def _run(check: Check, amplifier: Amplifier, limits: Limits) -> Measure | NotApplicable | None:
@@ -109,10 +116,10 @@ def _over_corners(check: Check, measure: Measure, bench: Bench, trace: Trace) ->
     if len(entries) > corners.COMPLETE:
         return _searched(check, measure, bench, entries)
     design, amplifier = bench.cases(entries)
-    return design, _again(check, measure, amplifier, bench)
+    return design, again(check, measure, amplifier, bench)
 
 
-def _again(check: Check, measure: Measure, amplifier: Amplifier, bench: Bench) -> Measure:
+def again(check: Check, measure: Measure, amplifier: Amplifier, bench: Bench) -> Measure:
     """Return the measure over the cases, with the words and remarks of the nominal one."""
     found = _run(check, amplifier, bench.limits)
     if not isinstance(found, Measure):
@@ -123,9 +130,14 @@ def _again(check: Check, measure: Measure, amplifier: Amplifier, bench: Bench) -
             word=Verdict.UNVERIFIED,
             remarks=(Remark(Verdict.UNVERIFIED, found.says), *measure.remarks),
         )
-    stop = found.without_stop or measure.without_stop
     return replace(
-        measure, value=found.value, go=found.go, stop=found.stop, without_stop=stop, unknown=found.unknown
+        measure,
+        value=found.value,
+        go=found.go,
+        stop=found.stop,
+        without_stop=found.without_stop or measure.without_stop,
+        unknown=found.unknown,
+        everywhere=found.everywhere or measure.everywhere,
     )
 
 
@@ -134,13 +146,13 @@ def _searched(
 ) -> tuple[Design, Measure]:
     """Return the corners found by screening when there are too many inputs for all of them."""
     screen = corners.screening_design(entries)
-    first = _again(check, measure, screen.applied_to(bench.sheet.amplifier), bench)
+    first = again(check, measure, screen.applied_to(bench.sheet.amplifier), bench)
     design = corners.searched_design(screen, _badness_of(first, bench.limits[check.id], len(screen.rows)))
     remark = Remark(
         Verdict.GO,
         f"{len(entries)} toleranced inputs: corners complete over the {corners.COMPLETE} that matter most",
     )
-    second = _again(check, measure, design.applied_to(bench.sheet.amplifier), bench)
+    second = again(check, measure, design.applied_to(bench.sheet.amplifier), bench)
     return design, replace(second, remarks=(*second.remarks, remark))
 
 
