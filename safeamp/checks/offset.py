@@ -6,7 +6,7 @@ from functools import reduce
 
 import numpy as np
 
-from safeamp.amplifier import Amplifier
+from safeamp.amplifier import Amplifier, value_at
 from safeamp.checks import operating
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import needed
@@ -36,11 +36,12 @@ def check_output(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicabl
     """DC at the output: the worst of cold, warm and with signal."""
     if operating.is_capacitor_coupled(amplifier):
         return NotApplicable(COUPLED)
-    cold, warm = needed(amplifier, "readings.offset_cold", "readings.offset_warm")
-    found = {"readings.offset_cold": cold, "readings.offset_warm": warm}
-    if amplifier.readings.offset_with_signal is not None:
-        found["readings.offset_with_signal"] = amplifier.readings.offset_with_signal
-    worst = reduce(np.fmax, [_across(amplifier, path, value) for path, value in found.items()])
+    needed(amplifier, "readings.offset_cold", "readings.offset_warm")
+    paths = ("readings.offset_cold", "readings.offset_warm", "readings.offset_with_signal")
+    found = {path: value_at(amplifier, path) for path in paths}
+    # A reading that was not given is noted as missing above; one that is no number makes the worst no number.
+    given = [_across(amplifier, path, value) for path, value in found.items() if value is not None]
+    worst = reduce(np.maximum, given, np.nan if not given else 0.0)
     return Measure(
         worst,
         _says(worst, limits),
