@@ -129,14 +129,20 @@ def _word(
     beyond = _beyond(value, bounds.stop, bounds.sense)
     unbounded = bool(np.isposinf(value[0])) and bounds.sense != "at least"
     if beyond[0] or unbounded:
-        return _as_built(measure.as_built, value[0])
-    if np.any(np.isnan(value)) or (measure.unknown is not None and np.any(measure.unknown)):
+        verdict, because = _as_built(measure.as_built, value[0])
+    else:
+        verdict, because = _from_corners(measure, value, bounds, beyond, guessed, words)
+    if verdict.clears and (np.any(np.isnan(value)) or _enters_unknown(measure)):
         return Verdict.UNVERIFIED, (_unknown_text(measure),)
-    return _from_corners(measure, value, bounds, beyond, guessed, words)
+    return verdict, because
+
+
+def _enters_unknown(measure: Measure) -> bool:
+    return measure.unknown is not None and bool(np.any(measure.unknown))
 
 
 def _unknown_text(measure: Measure) -> str:
-    if measure.unknown is not None and np.any(measure.unknown):
+    if _enters_unknown(measure):
         return "the load enters a part of the safe area of which the data sheet says nothing"
     return "a corner of the tolerances could not be computed"
 
