@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, complaining, emit, fail
 
 if TYPE_CHECKING:
@@ -35,15 +36,6 @@ app = typer.Typer(
 )
 
 FormatOption = Annotated[Format, typer.Option("--format", help="How the report is printed.")]
-OutputOption = Annotated[
-    Path | None, typer.Option("--output", help="Write into this file instead, whole or not at all.")
-]
-LimitsOption = Annotated[
-    Path | None, typer.Option("--limits", help="Your own limits file; it replaces single entries.")
-]
-DeviceFolderOption = Annotated[
-    Path | None, typer.Option("--device-folder", help="Folder of your device files.")
-]
 
 
 def _version(wanted: bool) -> None:
@@ -65,7 +57,7 @@ def _common(
 
 @app.command()
 def check(
-    sheet: Annotated[Path, typer.Argument(help="The sheet of one channel, a TOML file.")],
+    sheet: SheetArgument,
     format_: FormatOption = Format.TEXT,
     output: OutputOption = None,
     step: Annotated[
