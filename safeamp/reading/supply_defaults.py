@@ -6,15 +6,12 @@ from safeamp.limits import Limits
 from safeamp.quantities import RATIO, VOLTAGE, Origin, show
 from safeamp.reading.draft import Draft
 
-#: Declared voltages of public supplies; 220 to 240 V were brought together as 230 V.
+#: Declared voltages of public supplies; the older 220 and 240 V count as 230 V, which is the nearest to both.
 DECLARED = (100.0, 120.0, 127.0, 230.0)
-HARMONISED = (220.0, 240.0)
 
 
 def declared_voltage(actual: float) -> float:
     """Return the declared voltage of the public supply that lies nearest to a reading, V."""
-    if HARMONISED[0] <= actual <= HARMONISED[1]:
-        return 230.0
     return min(DECLARED, key=lambda declared: abs(declared - actual))
 
 

@@ -145,6 +145,10 @@ def test_imbalance_is_listed_for_parallel_devices_only(tmp_path):
     assert "stage.imbalance" not in [a.key for a in load(tmp_path, base="split_rail").assumptions]
 
 
+def test_conducting_pairs_are_listed_for_parallel_devices_only(tmp_path):
+    assert "stage.pairs_conducting" not in [a.key for a in load(tmp_path, base="split_rail").assumptions]
+
+
 def test_half_the_rail_is_a_level_between_when_the_midpoint_may_lie_on_either_side(tmp_path):
     inside = load(tmp_path, {"readings.midpoint": "31 V ±2 V"}, base=SINGLE)
     assert inside.entries["readings.midpoint"].middle == (32.0,)

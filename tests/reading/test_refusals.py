@@ -83,6 +83,8 @@ NUMBERS = [
     ({"readings.limiter": "60 V lamp"}, "readings.limiter: "),
     ({"loudspeaker.impedance_curve": "curve.csv"}, 'loudspeaker.impedance_curve: "curve.csv" is not a file beside the sheet'),
     ({"loudspeaker.impedance_curve": "a\0b"}, "loudspeaker.impedance_curve: "),
+    ({"loudspeaker.impedance_curve": "x" * 300}, "is not a file beside the sheet"),
+    ({"loudspeaker.q_mechanical": "none"}, 'loudspeaker.q_mechanical: "none" is meaningless here; write a bare number such as 0.8'),
 ]  # fmt: skip
 
 CURVES = [
@@ -96,6 +98,8 @@ CURVES = [
     ({POINTS: [["40 V", "1 A"], ["40 V", "0.7 A"]]}, f"{POINTS}.1: 40 V does not rise above 40 V"),
     ({POINTS: [["40 V", "1 A"], ["100 V", "1.2 A"]]}, f"{POINTS}.1: 1.2 A at 100 V is more than 1 A at 40 V"),
     ({POINTS: [["0 V", "1 A"], ["100 V", "1 A"]]}, f"{POINTS}.0: a point of the safe area has a voltage and a current above zero"),
+    ({POINTS: [["40 V", "1 A"], ["100 V", "0 A"]]}, f"{POINTS}.1: a point of the safe area has a voltage and a current above zero"),
+    ({"device.fitted.pulse": [["1 ms", ["40 V", "5 A"]], ["1 ms", ["40 V", "5 A"]]]}, "device.fitted.pulse: the durations do not rise"),
     ({LIMITER: [["10 V", "1 A"], ["5 V", "1 A"]]}, f"{LIMITER}.1: 5 V does not rise above 10 V"),
     ({"device.fitted.pulse": "10 ms"}, "device.fitted.pulse: this is not a list of curves"),
     ({"device.fitted.pulse": [["10 ms"]]}, "device.fitted.pulse.0: this is not a duration and its points"),
