@@ -34,7 +34,14 @@ USES = {
 }
 #: Ratios that people read as a percentage.
 PERCENTAGES = frozenset(
-    {"power_up.rails", "power_up.output", "bias.imbalance", "bias.balance", "offset.midpoint"}
+    {
+        "power_up.rails",
+        "power_up.output",
+        "bias.imbalance",
+        "bias.balance",
+        "offset.midpoint",
+        "protection.short",
+    }
 )
 #: Findings that rest on a word; a number would say nothing.
 WORDS = {"power_up.draw": "go when dark or dim, stop when bright or rising"}

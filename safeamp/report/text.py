@@ -44,9 +44,9 @@ def render(report: Report, *, width: int = 80, colour: bool = False) -> str:
 
 def what_for(report: Report) -> str:
     """Return what the verdict holds for; the scope alone only when every step was asked for."""
-    text = report.scope
+    text = f"{report.scope} (an invented amplifier)" if report.demo else report.scope
     if report.up_to is not None and report.up_to is not Step.HAND_OVER:
-        text = f"the steps up to {report.up_to.value} and nothing after it ({report.scope})"
+        text = f"the steps up to {report.up_to.value} and nothing after it ({text})"
     return f"{text}; {PAPER}" if report.on_paper and PAPER not in text else text
 
 

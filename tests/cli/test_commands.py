@@ -150,6 +150,12 @@ def test_the_demo_ends_well_and_says_that_it_is_invented() -> None:
     assert json.loads(run("demo", "--format", "json").stdout)["demo"] is True
 
 
+def test_the_demo_is_an_amplifier_in_good_order() -> None:
+    report = json.loads(run("demo", "--format", "json").stdout)
+    assert {finding["id"] for finding in report["findings"] if finding["verdict"] != "go"} == set()
+    assert report["verdict"] == "go"
+
+
 @pytest.mark.parametrize("kind", STARTERS)
 def test_a_starter_can_be_checked_and_clears_nothing(tmp_path: Path, kind: str) -> None:
     sheet = tmp_path / "amp.toml"

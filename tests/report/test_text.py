@@ -146,7 +146,9 @@ def test_on_paper_clears_no_power() -> None:
 
 
 def test_the_demo_says_first_that_it_is_invented() -> None:
-    assert "this amplifier is invented" in lines_of(DEVICES, demo=True)[1]
+    lines = lines_of(DEVICES, demo=True)
+    assert "this amplifier is invented" in lines[1]
+    assert " ".join(lines[-2:]).endswith(f"All steps cleared for: {SCOPE} (an invented amplifier)")
     assert "invented" not in render(report_of(DEVICES))
 
 
