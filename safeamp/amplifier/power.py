@@ -114,8 +114,10 @@ class Fins:
     )
     thickness: Number | None = number(LENGTH, "thickness of a fin", required=True, believable=(2e-4, 0.05))
     count: Number | None = count("number of fins", required=True, believable=(1, 500))
-    plate: Number | None = number(LENGTH, "thickness of the base plate", believable=(5e-4, 0.1))
-    emissivity: Number | None = number(RATIO, "emissivity of the surface, 0 to 1", believable=(0.01, 1.0))
+    plate: Number | None = number(LENGTH, "thickness of the plate; 0 when left out", believable=(5e-4, 0.1))
+    emissivity: Number | None = number(
+        RATIO, "emissivity, 0 to 1; bare metal when left out", believable=(0.01, 1.0)
+    )
 
 
 @dataclass(frozen=True, eq=False, kw_only=True)
@@ -150,6 +152,7 @@ class Heatsink:
     )
     each: bool | None = flag("true: one heatsink for each device")
     fins: Fins = field(default_factory=Fins)
+    fins_share: Number | None = internal()
 
 
 @dataclass(frozen=True, eq=False, kw_only=True)

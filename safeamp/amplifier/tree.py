@@ -28,6 +28,7 @@ TABLES: Mapping[str, type[Any]] = {
 STANDS_FOR = {
     "mains.present": "mains.actual",
     "supply.full_load_share": "supply.full_load",
+    "heatsink.fins_share": "heatsink.fins",
     "loudspeaker.minimum_share": "loudspeaker.minimum_impedance",
     "loudspeaker.power_share": "loudspeaker.power_word",
     "readings.midpoint_share": "readings.midpoint",

@@ -11,7 +11,14 @@ from safeamp.checks.trace import miss, needed
 from safeamp.checks.words import heat_remarks, idle_remarks, nominal, text
 from safeamp.findings import Also, Measure, NotApplicable, Step
 from safeamp.limits import Limits
-from safeamp.quantities import POWER, RATIO, TEMPERATURE, TEMPERATURE_DIFFERENCE, Number
+from safeamp.quantities import (
+    POWER,
+    RATIO,
+    TEMPERATURE,
+    TEMPERATURE_DIFFERENCE,
+    THERMAL_RESISTANCE,
+    Number,
+)
 
 FREE_AIR = "nothing is said of a heatsink and the devices are rated in free air (junction_to_ambient)"
 METHOD = "class-AB law, heat of a sine at one third of clipping power and without signal, thermal chain"
@@ -23,12 +30,20 @@ def _stage_also(
     amplifier: Amplifier, quiet: thermal.Dissipation, loud: thermal.Dissipation
 ) -> tuple[Also, ...]:
     return (
+        *_ruled_also(amplifier, loud),
         Also("heat of the stage without signal", nominal(quiet.stage_power), POWER),
         Also("heat of the stage at one third of clipping power", nominal(loud.stage_power), POWER),
         Also(
             "power at clipping into the nominal impedance", nominal(operating.output_power(amplifier)), POWER
         ),
     )
+
+
+def _ruled_also(amplifier: Amplifier, loud: thermal.Dissipation) -> tuple[Also, ...]:
+    if not thermal.by_ruler(amplifier):
+        return ()
+    resistance = nominal(thermal.sink_to_air(amplifier, loud))
+    return (Also("heatsink to air by ruler", resistance, THERMAL_RESISTANCE),)
 
 
 @finding("heat.heatsink", Step.SOAK, TEMPERATURE)

@@ -51,7 +51,8 @@ def _resistances(amplifier: Amplifier, side: str) -> tuple[Number, Number, Numbe
     device = operating.device_of(amplifier, side)
     if thermal.in_free_air(amplifier, device):
         return device.junction_to_ambient, 0.0, 0.0
-    case_to_sink, sink_to_air = needed(amplifier, "heatsink.case_to_sink", "heatsink.sink_to_air")
+    (case_to_sink,) = needed(amplifier, "heatsink.case_to_sink")
+    sink_to_air = thermal.sink_to_air(amplifier, thermal.no_signal(amplifier))
     each = bool(amplifier.heatsink.each)
     shared = 0.5 if each else needed(amplifier, "heatsink.shared_by")[0]
     sink = feedback.sink_resistance(

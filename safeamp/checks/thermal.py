@@ -9,11 +9,12 @@ import numpy as np
 from safeamp.amplifier import Amplifier, Device
 from safeamp.checks import operating
 from safeamp.checks.trace import miss, needed
-from safeamp.physics import heat, stage
+from safeamp.physics import fins, heat, stage
 from safeamp.quantities import Number
 
 ONE_EIGHTH = 1.0 / 8.0
 ONE_THIRD = 1.0 / 3.0
+FINS = ("width", "height", "depth", "thickness", "count", "plate", "emissivity")
 
 
 @dataclass(frozen=True, eq=False)
@@ -106,16 +107,45 @@ def hottest_power(amplifier: Amplifier, dissipated: Dissipation) -> Number:
 
 def sink_temperature(amplifier: Amplifier, dissipated: Dissipation, air: Number | None = None) -> Number:
     """Return the heatsink temperature, degC, in the air of the sheet or in another."""
-    table = amplifier.heatsink
     given_air = needed(amplifier, "heatsink.air")[0] if air is None else air
-    if table.each:
-        power, shared = hottest_power(amplifier, dissipated), 1.0
-    else:
-        power, shared = dissipated.stage_power, needed(amplifier, "heatsink.shared_by")[0]
-    sink_to_air, other = needed(amplifier, "heatsink.sink_to_air", "heatsink.other_heat")
+    power, shared = _on_heatsink(amplifier, dissipated)
+    (other,) = needed(amplifier, "heatsink.other_heat")
+    if by_ruler(amplifier):
+        return given_air + _ruled_rise(amplifier, shared * power + other, given_air)
+    (resistance,) = needed(amplifier, "heatsink.sink_to_air")
     return heat.sink_temperature(
-        air=given_air, stage_power=power, shared_by=shared, sink_to_air=sink_to_air, other_heat=other
+        air=given_air, stage_power=power, shared_by=shared, sink_to_air=resistance, other_heat=other
     )
+
+
+def _on_heatsink(amplifier: Amplifier, dissipated: Dissipation) -> tuple[Number, Number]:
+    """Return the heat that one piece of heatsink takes, W, and how many times."""
+    if amplifier.heatsink.each:
+        return hottest_power(amplifier, dissipated), 1.0
+    return dissipated.stage_power, needed(amplifier, "heatsink.shared_by")[0]
+
+
+def by_ruler(amplifier: Amplifier) -> bool:
+    """Whether the heatsink is known by its fins alone."""
+    return amplifier.heatsink.sink_to_air is None and amplifier.heatsink.fins.width is not None
+
+
+def _ruled_rise(amplifier: Amplifier, whole: Number, air: Number) -> Number:
+    """Return the rise above air, K, at which fins by ruler shed a heat, as far off as such a sum may be."""
+    paths = [f"heatsink.fins.{name}" for name in FINS]
+    geometry = fins.Geometry(**dict(zip(FINS, needed(amplifier, *paths), strict=True)))
+    (share,) = needed(amplifier, "heatsink.fins_share")
+    return share * fins.sink_rise(geometry=geometry, heat=whole, air=air)
+
+
+def sink_to_air(amplifier: Amplifier, dissipated: Dissipation) -> Number:
+    """Return the thermal resistance of the heatsink, K/W; that of fins by ruler at this heat, without any other."""
+    if not by_ruler(amplifier):
+        return needed(amplifier, "heatsink.sink_to_air")[0]
+    power, shared = _on_heatsink(amplifier, dissipated)
+    whole = np.asarray(shared * power)
+    some = np.where(whole > 0.0, whole, np.nan)
+    return _ruled_rise(amplifier, some, needed(amplifier, "heatsink.air")[0]) / some
 
 
 def temperatures(amplifier: Amplifier, dissipated: Dissipation, side: str) -> Temperatures:

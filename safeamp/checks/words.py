@@ -5,9 +5,13 @@ from __future__ import annotations
 import numpy as np
 
 from safeamp.amplifier import Amplifier
+from safeamp.checks import thermal
 from safeamp.findings import Remark, Verdict
 from safeamp.limits import Limit
 from safeamp.quantities import Kind, Number, Origin, show
+
+#: How far the thermal resistance of fins by ruler may be off, and for what it is computed.
+RULER = "-30/+70 %, for fins that stand upright in free air"
 
 
 def nominal(value: Number) -> float:
@@ -23,6 +27,9 @@ def text(value: Number, kind: Kind) -> str:
 def heat_remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
     """Return what keeps every heat finding at caution: thermal resistances that nobody measured."""
     path = "heatsink.sink_to_air"
+    if thermal.by_ruler(amplifier):
+        because = f"{path} is computed from its fins by ruler, {RULER}: a soak with a thermometer settles it"
+        return (Remark(Verdict.CAUTION, because),)
     if amplifier.origin(path) is not Origin.GUESS:
         return ()
     return (Remark(Verdict.CAUTION, f"{path} is a guess: a soak with a thermometer settles it"),)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from math import isclose
 
 from safeamp.limits import Default, Limits
-from safeamp.quantities import TEMPERATURE_DIFFERENCE, THERMAL_RESISTANCE, Origin, show
+from safeamp.quantities import LENGTH, RATIO, TEMPERATURE_DIFFERENCE, THERMAL_RESISTANCE, Origin, show
 from safeamp.reading.draft import Draft
 
 
@@ -13,6 +13,7 @@ def fill_heat(draft: Draft, limits: Limits) -> None:
     """Widen what was not measured, and take a mounting from the table of interfaces."""
     _air(draft, limits)
     _interface(draft, limits)
+    _fins(draft, limits)
     for path in ("heatsink.sink_to_air", "heatsink.case_to_sink"):
         if path in draft.written and draft.has(path):
             _widen(draft, path, limits)
@@ -25,6 +26,28 @@ def _air(draft: Draft, limits: Limits) -> None:
     rise, air = limits.default(path), draft.values[path]
     draft.widen(path, air + rise.low, air + rise.high)
     draft.assume(path, f"+{show(rise.high, TEMPERATURE_DIFFERENCE)} in the worst case", rise.says)
+
+
+def _fins(draft: Draft, limits: Limits) -> None:
+    """Say how far fins by ruler may be off, and what stands in for a surface and a plate that nobody described."""
+    fins, given = "heatsink.fins", "heatsink.sink_to_air"
+    if fins not in draft.written:
+        return
+    if given in draft.written:
+        draft.remarks.append(f"{given} is given, so {fins} is not used")
+        return
+    spread, surface = limits.default(given), limits.default(f"{fins}.emissivity")
+    draft.fill(f"{fins}_share", spread.nominal, RATIO, spread=(spread.low, spread.high), text="by ruler")
+    why = "true over computed thermal resistance; fins stand upright, free above and below, without a fan"
+    draft.assume(fins, _text(spread), why)
+    if f"{fins}.emissivity" not in draft.written:
+        draft.fill(f"{fins}.emissivity", surface.nominal, RATIO, text="bare metal")
+        draft.assume(f"{fins}.emissivity", f"{surface.nominal:g}", surface.says)
+    if f"{fins}.plate" not in draft.written:
+        draft.fill(f"{fins}.plate", 0.0, LENGTH, text="not counted")
+        draft.assume(
+            f"{fins}.plate", "not counted", "its edges radiate a little; leaving them out is cautious"
+        )
 
 
 def _widen(draft: Draft, path: str, limits: Limits) -> None:

@@ -4,7 +4,17 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
-from safeamp.quantities import CAPACITANCE, CURRENT, RESISTANCE, TEMPERATURE, VOLTAGE, Kind, Origin, show
+from safeamp.quantities import (
+    CAPACITANCE,
+    CURRENT,
+    LENGTH,
+    RESISTANCE,
+    TEMPERATURE,
+    VOLTAGE,
+    Kind,
+    Origin,
+    show,
+)
 from safeamp.reading.device_questions import ask_devices
 from safeamp.reading.draft import Draft
 from safeamp.reading.reading_questions import ask_readings
@@ -148,6 +158,14 @@ def _air(draft: Draft) -> None:
         )
 
 
+def _fins(draft: Draft) -> None:
+    fins = "heatsink.fins"
+    width, count, thick = (draft.number(f"{fins}.{name}") for name in ("width", "count", "thickness"))
+    if width is not None and count is not None and thick is not None and count * thick >= width:
+        text = f"{count:g} fins of {show(thick, LENGTH)} fill a width of {show(width, LENGTH)}"
+        draft.complain(f"{fins}.width", f"{text}; measure the width across the fins, and one fin alone")
+
+
 def _impedance(draft: Draft) -> None:
     write = "read the label again"
     _below(draft, "loudspeaker.minimum_impedance", "loudspeaker.nominal_impedance", RESISTANCE, write)
@@ -163,5 +181,6 @@ QUESTIONS: tuple[Callable[[Draft], None], ...] = (
     _idle,
     _capacitor,
     _air,
+    _fins,
     _impedance,
 )

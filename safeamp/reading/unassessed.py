@@ -4,18 +4,8 @@ from __future__ import annotations
 
 from safeamp.reading.draft import Draft
 
-_HEAT = (
-    "heat.heatsink",
-    "heat.junction",
-    "heat.reading",
-    "soa.resistive_load",
-    "soa.loudspeaker",
-    "touch.temperature",
-)
-
 #: Key of the sheet (a device's without its name) -> ids of the findings that it would change.
 WOULD_CHANGE: dict[str, tuple[str, ...]] = {
-    "heatsink.fins": _HEAT,
     "device.pulse": ("soa.resistive_load", "soa.loudspeaker"),
     "device.transient": ("heat.junction",),
     "loudspeaker.impedance_curve": ("soa.loudspeaker",),
@@ -33,8 +23,7 @@ def unassessed(draft: Draft) -> dict[str, tuple[str, ...]]:
     found = {}
     for key, ids in WOULD_CHANGE.items():
         for path in _written(draft, key):
-            if not (key == "heatsink.fins" and draft.has("heatsink.sink_to_air")):
-                found[path] = tuple(id for id in ids if _applies(draft, id))
+            found[path] = tuple(id for id in ids if _applies(draft, id))
     return found
 
 

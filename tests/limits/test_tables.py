@@ -107,6 +107,7 @@ DEFAULTS = {
     "heatsink.air": (0, 0, 10),
     "heatsink.sink_to_air": (1, 0.7, 1.7),
     "heatsink.sink_to_air.data_sheet": (1, 0.9, 1.3),
+    "heatsink.fins.emissivity": (0.1, 0.1, 0.1),
     "heatsink.insulator": (1, 0.8, 2),
     "heatsink.other_heat": (0, 0, 0),
     "loudspeaker.minimum_impedance": (0.8, 0.8, 0.8),

@@ -5,9 +5,7 @@ import pytest
 from safeamp.reading.unassessed import WOULD_CHANGE
 from tests.reading.desk import GONE, load
 
-FINS = {"width": "200 mm", "height": "75 mm", "depth": "30 mm", "thickness": "2 mm", "count": 12}
 VALUES = {
-    "heatsink.fins": FINS,
     "device.pulse": [["10 ms", ["40 V", "5 A"]]],
     "device.transient": [["0.3 K/W", "2 ms"]],
     "device.temperature_coefficient": "-2.1 mV/K",
@@ -24,13 +22,13 @@ VALUES = {
     "stage.idle_at": "warm",
     "stage.bias_sensor": "heatsink",
 }
-BARE = {"stage.bias_sensor": GONE, "heatsink.sink_to_air": GONE}
+BARE = {"stage.bias_sensor": GONE}
 
 
 @pytest.mark.parametrize("key", WOULD_CHANGE)
 def test_each_key_alone(tmp_path, key):
     path = key.replace("device.", "device.fitted.")
-    base = {**BARE, "heatsink.shared_by": 1}
+    base = BARE
     assert load(tmp_path, base, base="leaky_capacitor").unassessed == {}
     sheet = load(tmp_path, {**base, path: VALUES[key]}, base="leaky_capacitor")
     assert sheet.unassessed == {path: WOULD_CHANGE[key]}
@@ -38,10 +36,6 @@ def test_each_key_alone(tmp_path, key):
 
 def test_findings_of_the_output_capacitor_need_one(tmp_path):
     assert load(tmp_path, {"loudspeaker.resonance": "40 Hz"}).unassessed["loudspeaker.resonance"] == ()
-
-
-def test_fins_are_not_needed_beside_a_thermal_resistance(tmp_path):
-    assert "heatsink.fins" not in load(tmp_path, {"heatsink.fins": FINS}).unassessed
 
 
 def test_data_of_a_driver_or_of_a_generic_device_are_not_keys_of_the_sheet(tmp_path):
