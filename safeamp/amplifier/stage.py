@@ -201,7 +201,10 @@ class Device:
         sign=Sign.MAGNITUDE,
     )
     pulse: tuple[object, ...] | None = number(
-        (TIME, VOLTAGE, CURRENT), "further curves by duration", shape="curves", sign=Sign.MAGNITUDE
+        (TIME, VOLTAGE, CURRENT),
+        'further curves, each a duration and its points: [["10 ms", ["40 V", "5 A"], ["100 V", "1 A"]], ...]',
+        shape="curves",
+        sign=Sign.MAGNITUDE,
     )
     transconductance_parameter: Number | None = number(
         TRANSCONDUCTANCE_PARAMETER,
