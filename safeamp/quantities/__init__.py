@@ -31,6 +31,7 @@ from safeamp.quantities.kinds import (
 from safeamp.quantities.nouns import Kind, Number, Origin, QuantityError, Reading, Sign
 from safeamp.quantities.output import show, show_reading
 from safeamp.quantities.reading import convert, read, read_any
+from safeamp.quantities.rewriting import plain_text, rewrite
 from safeamp.quantities.units import quantity, registry
 
 __all__ = [
@@ -64,10 +65,12 @@ __all__ = [
     "Reading",
     "Sign",
     "convert",
+    "plain_text",
     "quantity",
     "read",
     "read_any",
     "registry",
+    "rewrite",
     "show",
     "show_reading",
 ]
