@@ -1,5 +1,5 @@
 """Files to nouns: sheets, limits, devices; every complaint at once."""
 
-from safeamp.reading.sheets import load_sheet, sheet_from
+from safeamp.reading.sheets import Source, load_sheet, open_mapping, open_sheet, sheet_from
 
-__all__ = ["load_sheet", "sheet_from"]
+__all__ = ["Source", "load_sheet", "open_mapping", "open_sheet", "sheet_from"]

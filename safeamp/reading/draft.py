@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
 from dataclasses import replace as changed
 from typing import Any, Protocol
@@ -54,6 +54,8 @@ class Draft:
     assumptions: list[Assumption] = field(default_factory=list)
     remarks: list[str] = field(default_factory=list)
     complaints: list[Complaint] = field(default_factory=list)
+    #: Key path -> what is read in place of what the file says there.
+    instead: Mapping[str, Any] = field(default_factory=dict)
 
     def complain(self, path: str, trouble: str | QuantityError) -> None:
         """Add a complaint at a key path, with the file and line where it stands."""
@@ -75,6 +77,11 @@ class Draft:
         outer, _, last = path.rpartition(".")
         file, line = self.seat(outer) if outer else (self.places.path, None)
         return file, line if last.isdigit() else None
+
+    def overlaid(self, path: str, data: Mapping[str, Any]) -> dict[str, Any]:
+        """Return a table as the file has it, with what is read in its place."""
+        own = {key.removeprefix(f"{path}."): value for key, value in self.instead.items() if _in(key, path)}
+        return {**data, **own}
 
     def put(self, path: str, value: Any, origin: Origin = Origin.STATED) -> None:
         """Give a key path its value."""
@@ -148,6 +155,10 @@ class Draft:
         self.absent = {path for path in self.absent if not path.startswith(under)}
         self.dropped = [path for path in self.dropped if not path.startswith(under)]
         self.assumptions = [assumed for assumed in self.assumptions if not assumed.key.startswith(under)]
+
+
+def _in(key: str, path: str) -> bool:
+    return key.rpartition(".")[0] == path
 
 
 def weakest(origins: Iterable[Origin]) -> Origin:

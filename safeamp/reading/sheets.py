@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import fields
+from dataclasses import dataclass, fields
 from pathlib import Path
 from typing import Any
 
@@ -12,7 +12,7 @@ from safeamp.complaints import ReadingError
 from safeamp.limits import Limits
 from safeamp.reading.defaults import fill_defaults
 from safeamp.reading.document import read_document
-from safeamp.reading.draft import Draft, in_order
+from safeamp.reading.draft import Draft, Places, in_order
 from safeamp.reading.limits import load_limits
 from safeamp.reading.parts import read_devices, set_aside_unused
 from safeamp.reading.questions import ask
@@ -40,10 +40,18 @@ def load_sheet(
     ReadingError
         With every complaint, in the order of the lines.
     """
+    return open_sheet(path, device_folder=device_folder, limits=limits).sheet()
+
+
+def open_sheet(
+    path: str | Path, *, device_folder: str | Path | None = None, limits: Limits | None = None
+) -> Source:
+    """Open one sheet that is read several times, with another value at some key; as `load_sheet`."""
     document = read_document(Path(path))
-    draft = Draft(document, folder=str(Path(path).parent))
-    amplifier = _read(draft, document.data, device_folder, limits)
-    return _sheet(draft, amplifier, Path(path).name, document.digest)
+    folder = str(Path(path).parent)
+    return Source(
+        document.data, document, device_folder, limits, folder, Path(path).name, digest=document.digest
+    )
 
 
 def sheet_from(
@@ -72,8 +80,57 @@ def sheet_from(
     ReadingError
         With every complaint.
     """
-    draft = Draft(_NoLines(source), allow_si=True, folder=str(folder))
-    return _sheet(draft, _read(draft, mapping, device_folder, limits), source, "")
+    return open_mapping(
+        mapping, device_folder=device_folder, limits=limits, folder=folder, source=source
+    ).sheet()
+
+
+def open_mapping(
+    mapping: Mapping[str, Any],
+    *,
+    device_folder: str | Path | None = None,
+    limits: Limits | None = None,
+    folder: str | Path = ".",
+    source: str = "python",
+) -> Source:
+    """Open nested mappings that are read several times, with another value at some key; as `sheet_from`."""
+    return Source(mapping, _NoLines(source), device_folder, limits, str(folder), source, allow_si=True)
+
+
+@dataclass(frozen=True)
+class Source:
+    """A sheet as written, to be read any number of times."""
+
+    data: Mapping[str, Any]
+    places: Places
+    device_folder: str | Path | None
+    limits: Limits | None
+    folder: str
+    name: str
+    allow_si: bool = False
+    digest: str = ""
+
+    def sheet(self, instead: Mapping[str, Any] | None = None) -> Sheet:
+        """Read the sheet.
+
+        Parameters
+        ----------
+        instead : mapping, optional
+            Key path -> what is read in place of what is written there, or as if it were written there.
+
+        Raises
+        ------
+        ReadingError
+            With every complaint.
+        """
+        changes = dict(instead or {})
+        draft = Draft(self.places, allow_si=self.allow_si, folder=self.folder, instead=changes)
+        data = {**{table: {} for table in self._new_tables(changes)}, **self.data}
+        return _sheet(draft, _read(draft, data, self.device_folder, self.limits), self.name, self.digest)
+
+    def _new_tables(self, changes: Mapping[str, Any]) -> list[str]:
+        tables = dict.fromkeys(path.split(".")[0] for path in changes)
+        return [table for table in tables if table not in self.data and table != "device"]
 
 
 class _NoLines:

@@ -44,7 +44,7 @@ def walk_table(draft: Draft, path: str, noun: type[Any], data: Mapping[str, Any]
     """Read the keys of one table, and of the tables inside it, that the noun knows."""
     keys, inner = keys_of(noun), tables_of(noun)
     draft.written.add(path)
-    for name, value in data.items():
+    for name, value in draft.overlaid(path, data).items():
         place = f"{path}.{name}"
         if name in keys:
             read_key(draft, place, keys[name], value)

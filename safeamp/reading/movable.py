@@ -1,0 +1,152 @@
+"""One number of a sheet that may be written otherwise: which it is, how it is written, what the sheet then is."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass, replace
+from typing import Any
+
+from safeamp.amplifier import TABLES, Entry, Key, Sheet, keys_of
+from safeamp.limits import nearest, plain
+from safeamp.quantities import CURRENT, RATIO, Kind, QuantityError, Sign, plain_text, rewrite
+from safeamp.reading.sheets import Source
+from safeamp.reading.walk import tables_of
+
+#: Plus, and the two characters written as minus.
+SIGNS = ("+", "-", "\u2212")
+
+
+@dataclass(frozen=True)
+class Movable:
+    """A key of a sheet whose number can be moved; `entries` hold it as written, several for a list."""
+
+    source: Source
+    path: str
+    key: Key
+    kind: Kind
+    entries: tuple[Entry, ...] = ()
+
+    @property
+    def now(self) -> float | None:
+        """The number that the sheet has, the largest of a list; None where it has none."""
+        return max((entry.nominal for entry in self.entries), key=abs, default=None)
+
+    @property
+    def whole(self) -> bool:
+        """Whether only whole numbers count."""
+        return self.key.whole
+
+    @property
+    def span(self) -> tuple[float, float]:
+        """The lowest and the highest number that is believed of this key."""
+        low, high = self.key.believable or self.kind.believable
+        return (-high, high) if low >= 0 and self._either_sign else (low, high)
+
+    @property
+    def _either_sign(self) -> bool:
+        # A reading without a sign counts as either: it is moved as a magnitude.
+        return self.key.sign is Sign.ANY and all(entry.text[:1] in SIGNS for entry in self.entries)
+
+    def written(self, value: float) -> Any:
+        """Return what stands in the file for a value: its tolerance in proportion, its origin as it was.
+
+        The items of a list keep their proportions to the largest, which becomes `value`.
+        """
+        if len(self.entries) < 2:
+            return self._one(self.entries[0] if self.entries else None, value)
+        largest = self.now or 0.0
+        return [
+            self._one(item, item.nominal * (value / largest) if largest else value) for item in self.entries
+        ]
+
+    def _one(self, entry: Entry | None, value: float) -> Any:
+        if self.key.whole:
+            return int(value)
+        if self.kind == RATIO:
+            return float(value)
+        if entry is not None:
+            minus = self.key.sign is Sign.MAGNITUDE and entry.text.lstrip()[:1] in SIGNS[1:]
+            try:
+                return rewrite(entry.text, self.kind, -value if minus else value)
+            except QuantityError:
+                # What a default says of itself, such as "half the rail", is not what a user would write.
+                pass
+        return plain_text(self.kind, value)
+
+    def at(self, value: float) -> Sheet:
+        """Return the sheet with another value at this key.
+
+        Raises
+        ------
+        ReadingError
+            If the sheet cannot have that value.
+        """
+        return self.source.sheet({self.path: self.written(value)})
+
+
+def movable(source: Source, typed: str) -> Movable:
+    """Return the number that a key of a sheet names.
+
+    Parameters
+    ----------
+    source : Source
+        The sheet.
+    typed : str
+        Key path, ``supply.no_load`` or ``device.NAME.power``.
+
+    Raises
+    ------
+    KeyError
+        If there is no such key; its text names the nearest one.
+    ValueError
+        If the key holds no single number.
+    ReadingError
+        If the sheet cannot be read.
+    """
+    sheet = source.sheet()
+    known = dict(_keys(sheet))
+    path = typed.strip()
+    if path not in known:
+        same = {plain(name): name for name in known}
+        path = same.get(plain(path), path)
+    if path not in known:
+        raise KeyError(f"{typed} is not a key of this sheet{nearest(typed, known)}")
+    key = known[path]
+    if not key.kinds or key.shape not in ("one", "list"):
+        what = "holds a word" if not key.kinds else "holds a curve"
+        raise ValueError(f"{path} {what}, not a number that can be moved")
+    return _movable(source, sheet, path, key)
+
+
+def movable_keys(sheet: Sheet) -> tuple[str, ...]:
+    """Return every key of a sheet that holds a number, written or not."""
+    return tuple(path for path, key in _keys(sheet) if key.kinds and key.shape in ("one", "list"))
+
+
+def _movable(source: Source, sheet: Sheet, path: str, key: Key) -> Movable:
+    entries = tuple(
+        replace(entry, text=entry.text.strip())
+        for place, entry in sheet.entries.items()
+        if _key_of(place) == path
+    )
+    kind = entries[0].kind if entries else key.kinds[0]
+    if not entries and len(key.kinds) > 1 and sheet.amplifier.stage.emitter_resistor == 0:
+        kind = CURRENT
+    return Movable(source, path, key, kind, entries)
+
+
+def _key_of(place: str) -> str:
+    """Return the key path of an entry, an item of a list without its place."""
+    head, _, tail = place.rpartition(".")
+    return head if tail.isdigit() else place
+
+
+def _keys(sheet: Sheet) -> Iterator[tuple[str, Key]]:
+    for table, noun in TABLES.items():
+        places = [f"device.{name}" for name in sheet.amplifier.device] if table == "device" else [table]
+        for place in places:
+            for name, key in keys_of(noun).items():
+                yield f"{place}.{name}", key
+            for inner, below in tables_of(noun).items():
+                for name, key in keys_of(below).items():
+                    yield f"{place}.{inner}.{name}", key
