@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+import sys
 from decimal import Decimal
 from functools import cache
+from importlib import import_module
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
@@ -23,10 +25,27 @@ def registry() -> pint.UnitRegistry[Any]:
     >>> (ureg.Quantity(2.0, "volt") / ureg.Quantity(4.0, "ohm")).to("ampere").magnitude
     0.5
     """
-    import pint
-
     # No cache folder: a cache that outlives its environment breaks the next start.
-    return pint.UnitRegistry(str(Path(__file__).with_name("units.txt")), cache_folder=None)
+    made: pint.UnitRegistry[Any] = _pint().UnitRegistry(
+        str(Path(__file__).with_name("units.txt")), cache_folder=None
+    )
+    return made
+
+
+def _pint() -> Any:
+    """Import pint without scipy, which it asks for only to choose preferred units: no start here needs that.
+
+    A module that is None in `sys.modules` counts as not installed while pint looks for it; afterwards scipy can be
+    imported as ever.
+    """
+    hidden = "scipy" not in sys.modules and "pint" not in sys.modules
+    if hidden:
+        sys.modules["scipy"] = None  # type: ignore[assignment]
+    try:
+        return import_module("pint")
+    finally:
+        if hidden:
+            del sys.modules["scipy"]
 
 
 @cache
