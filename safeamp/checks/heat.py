@@ -8,7 +8,7 @@ from safeamp.amplifier import Amplifier
 from safeamp.checks import operating, thermal
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
-from safeamp.checks.words import heat_remarks, idle_remarks, nominal, text
+from safeamp.checks.words import heat_remarks, idle_remarks, nominal, sharing_remarks, text
 from safeamp.findings import Also, Measure, NotApplicable, Step
 from safeamp.limits import Limits
 from safeamp.quantities import (
@@ -80,7 +80,11 @@ def check_junction(amplifier: Amplifier, limits: Limits) -> Measure:
         f"junction {text(value, TEMPERATURE)}, allowed {text(stop, TEMPERATURE)}",
         go=start + share * (np.asarray(stop) - start),
         stop=stop,
-        remarks=(*heat_remarks(amplifier), *idle_remarks(amplifier)),
+        remarks=(
+            *heat_remarks(amplifier),
+            *idle_remarks(amplifier),
+            *sharing_remarks(amplifier, limits),
+        ),
         also=(Also("case", nominal(np.maximum(case, other_case)), TEMPERATURE),),
         next="read the heatsink beside the hottest device; case and junction are above it",
         method=METHOD,

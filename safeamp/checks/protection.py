@@ -39,7 +39,7 @@ def check_short(amplifier: Amplifier, limits: Limits) -> Measure:
         use,
         f"the V-I limiter lets through {nominal(use):.0%} of what the safe area allows, at "
         f"{text(worst.voltage, VOLTAGE)} and {text(worst.current, CURRENT)}",
-        remarks=safe_area.device_remarks(amplifier),
+        remarks=safe_area.device_remarks(amplifier, limits),
         unknown=reduce(np.logical_or, [one.enters_unknown for one in found]),
         everywhere=True,
         also=_reach(amplifier),

@@ -12,7 +12,7 @@ from safeamp.checks import operating, thermal
 from safeamp.checks.as_built import as_built
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import needed
-from safeamp.checks.words import idle_remarks, nominal, text
+from safeamp.checks.words import idle_remarks, nominal, sharing_remarks, text
 from safeamp.findings import Also, Measure, Remark, Step, Verdict
 from safeamp.limits import Limits
 from safeamp.physics import safe_area
@@ -120,9 +120,9 @@ def _sortable(use: Number) -> float:
     return np.inf if np.isnan(value) else value
 
 
-def device_remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
-    """Return what keeps every finding of the safe area from being judged: no idle, typical data, no curve."""
-    found = [*idle_remarks(amplifier)]
+def device_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
+    """Return what keeps every finding of the safe area from being judged: idle, sharing, typical data, no curve."""
+    found = [*idle_remarks(amplifier), *sharing_remarks(amplifier, limits)]
     for side in dict.fromkeys((amplifier.stage.upper, amplifier.stage.lower)):
         found += _remarks_on(amplifier, str(side))
     return tuple(found)
@@ -184,7 +184,7 @@ def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
     return Measure(
         worst.use,
         _says(worst, worst.use),
-        remarks=device_remarks(amplifier),
+        remarks=device_remarks(amplifier, limits),
         unknown=worst.unknown,
         needs=_needs(amplifier),
         at=_point(worst),
@@ -217,7 +217,7 @@ def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
     return Measure(
         worst.use,
         _says(worst, worst.use),
-        remarks=(*device_remarks(amplifier), *_open_remarks(open_load)),
+        remarks=(*device_remarks(amplifier, limits), *_open_remarks(open_load)),
         unknown=worst.unknown,
         needs=_needs(amplifier),
         at=_point(worst),

@@ -5,9 +5,9 @@ from __future__ import annotations
 import numpy as np
 
 from safeamp.amplifier import Amplifier
-from safeamp.checks import thermal
+from safeamp.checks import operating, thermal
 from safeamp.findings import Remark, Verdict
-from safeamp.limits import Limit
+from safeamp.limits import Limit, Limits
 from safeamp.quantities import Kind, Number, Origin, show
 
 #: How far the thermal resistance of fins by ruler may be off, and for what it is computed.
@@ -41,6 +41,25 @@ def idle_remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
     if amplifier.stage.idle is None and not readings.idle_upper and not readings.idle_lower:
         return (Remark(Verdict.UNVERIFIED, "without the idle current class A cannot be told from class B"),)
     return ()
+
+
+def sharing_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
+    """Return what keeps a finding of each device from being judged: more devices counted than carry current."""
+    readable = limits["bias.imbalance"].extra["small_reading_below"]
+    counted, found = nominal(operating.conducting(amplifier)), []
+    for path in ("readings.idle_upper", "readings.idle_lower"):
+        side = getattr(amplifier.readings, path.partition(".")[2])
+        if not isinstance(side, tuple) or max(nominal(one) for one in side) < readable:
+            continue
+        carry = nominal(operating.carrying(side))
+        if carry < counted:
+            because = f"by {path} {carry:.0f} of {counted:.0f} devices carry current"
+            found.append(
+                Remark(
+                    Verdict.UNVERIFIED, f"{because}: write stage.pairs_conducting = {carry:.0f}, or mend it"
+                )
+            )
+    return tuple(found)
 
 
 def level(limit: Limit, name: str) -> float:
