@@ -31,7 +31,10 @@ OPEN_LOAD_IDLE = 0.25
 OPEN_LOAD = 1e6
 SIDES = ("upper", "lower")
 METHOD = "DC safe area at case temperature, closed-form envelope of all angles, class-AB law"
-NEXT = "keep the loudspeaker off until the use is cleared: higher load, lower mains or stronger devices"
+NEXT = (
+    "a load of higher impedance, lower mains, a cooler heatsink or stronger devices clear it; "
+    "no loudspeaker while it is unverified or stop"
+)
 
 
 @dataclass(frozen=True, eq=False)
