@@ -127,14 +127,51 @@ def _word(
     if np.isnan(value[0]):
         return Verdict.UNVERIFIED, ("the value could not be computed",)
     beyond = _beyond(value, bounds.stop, bounds.sense)
-    unbounded = bool(np.isposinf(value[0])) and bounds.sense != "at least"
-    if beyond[0] or unbounded:
+    if _stopped(value, bounds)[0]:
         verdict, because = _as_built(measure.as_built, value[0])
     else:
         verdict, because = _from_corners(measure, value, bounds, beyond, guessed, words)
     if verdict.clears and (np.any(np.isnan(value)) or _enters_unknown(measure)):
         return Verdict.UNVERIFIED, (_unknown_text(measure),)
     return verdict, because
+
+
+def each_word(measure: Measure, limit: Limit, count: int) -> npt.NDArray[np.int64]:
+    """Return the word of each case as if it were the only one: by its own value, nothing moved.
+
+    Parameters
+    ----------
+    measure : Measure
+        Values over the cases.
+    limit : Limit
+        The limit of its id.
+    count : int
+        Number of cases.
+
+    Returns
+    -------
+    numpy.ndarray
+        Shape (count,): words as integers of `Verdict`, remarks included.
+    """
+    value, bounds = _spread(measure.value, count), bounds_of(measure, limit, count)
+    words = np.where(_outside_go(value, bounds), int(Verdict.CAUTION), int(Verdict.GO))
+    words = np.where(_stopped(value, bounds), _without_excuse(measure.as_built, value), words)
+    unknown = np.isnan(value) if measure.unknown is None else np.isnan(value) | (measure.unknown != 0)
+    words = np.where((words <= Verdict.CAUTION) & unknown, int(Verdict.UNVERIFIED), words)
+    if measure.word is not None:
+        words = np.full(count, int(measure.word))
+    return np.maximum(words, max((int(one.at_best) for one in measure.remarks), default=0))
+
+
+def _stopped(value: Cases, bounds: Bounds) -> Marks:
+    unbounded: Marks = np.isposinf(value) & (bounds.sense != "at least")
+    return unbounded | _beyond(value, bounds.stop, bounds.sense)
+
+
+def _without_excuse(as_built: AsBuilt | None, value: Cases) -> npt.NDArray[np.int64]:
+    """Return the words of cases beyond stop: caution where the maker's own ratings cover them."""
+    ceiling = as_built.ceiling if as_built is not None and as_built.holds else np.nan
+    return np.where(value <= ceiling * (1.0 + CLOSE), int(Verdict.CAUTION), int(Verdict.STOP))
 
 
 def _enters_unknown(measure: Measure) -> bool:

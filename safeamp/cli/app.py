@@ -11,6 +11,7 @@ import typer
 
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, complaining, emit, fail
+from safeamp.cli.tolerance import tolerance
 
 if TYPE_CHECKING:
     from safeamp.answers import Report
@@ -184,3 +185,6 @@ def _emit_report(
         on_terminal = output is None
         text = render(report, width=columns() if on_terminal else 80, colour=on_terminal and colourful())
     emit(text, output, never=never)
+
+
+app.command("tolerance")(tolerance)

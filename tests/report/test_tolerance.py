@@ -1,0 +1,83 @@
+"""Percentages that never read certain where they are not, and what a line says."""
+
+import pytest
+
+from safeamp.answers import Chance, FindingChances
+from safeamp.findings import Step, Verdict
+from safeamp.quantities import PERCENT, RATIO, TEMPERATURE
+from safeamp.report.tolerance import (
+    chance_text,
+    key_text,
+    percent,
+    render_tolerance,
+    shown_kind,
+    tolerance_mapping,
+)
+from safeamp.studies.tolerance import tolerance
+from tests.scenarios.sheets import limits, sheet
+
+
+@pytest.mark.parametrize(
+    ("share", "text"),
+    [
+        (0.0, "0 %"),
+        (1.0, "100 %"),
+        (0.331, "33.1 %"),
+        (0.00002, "0.002 %"),
+        (0.99998, "99.998 %"),
+        (0.9999631, "99.9963 %"),
+        (0.05, "5.0 %"),
+        (1e-7, "0.00001 %"),
+    ],
+)
+def test_percent(share, text):
+    assert percent(share) == text
+
+
+@pytest.mark.parametrize(
+    ("chance", "text"),
+    [
+        (Chance(1.0, 1.0, 1.0), "100 %"),
+        (Chance(1.0, 0.9998, 1.0), "100 % (at least 99.98 %)"),
+        (Chance(0.0, 0.0, 0.0002), "0 % (at most 0.02 %)"),
+        (Chance(0.5, 0.4, 0.6), "50.0 % (40.0 % to 60.0 %)"),
+    ],
+)
+def test_chance(chance, text):
+    assert chance_text(chance) == text
+
+
+@pytest.mark.parametrize(
+    ("path", "text"),
+    [
+        ("supply.no_load.0", "supply.no_load"),
+        ("supply.no_load.1", "supply.no_load (2)"),
+        ("mains.present", "mains"),
+        ("supply.full_load_share", "supply.full_load"),
+    ],
+)
+def test_key(path, text):
+    assert key_text(path) == text
+
+
+def test_a_use_is_shown_as_a_percentage():
+    words = {word: Chance(0.25, 0.2, 0.3) for word in Verdict}
+    common = {"step": Step.SOAK, "words": words, "sampled": True}
+    assert shown_kind(FindingChances(id="soa.loudspeaker", kind=RATIO, **common)) == PERCENT
+    assert shown_kind(FindingChances(id="heat.junction", kind=TEMPERATURE, **common)) == TEMPERATURE
+
+
+def test_a_value_without_bound_is_said():
+    # a hot heatsink: in some samples nothing of the safe area is left
+    changes = {"heatsink.sink_to_air": "3.6 K/W ±15 %, measured"}
+    answer = tolerance(sheet("split_rail", changes), limits(), samples=600)
+    use = next(one for one in answer.findings if one.id == "soa.resistive_load")
+    assert use.quantiles[0.95] == float("inf")
+    assert "95 % at or below unbounded" in " ".join(render_tolerance(answer).split())
+    (mapped,) = [one for one in tolerance_mapping(answer)["findings"] if one["id"] == use.id]
+    assert mapped["quantiles"][-1] == {"share": 0.95, "value": None}
+
+
+def test_where_no_reading_decides_it_says_so():
+    text = render_tolerance(tolerance(sheet("healthy"), limits(), samples=200))
+    assert "No reading of what varies here changes whether a step is cleared." in text
