@@ -169,6 +169,8 @@ def _point(worst: _Worst) -> dict[str, float | str]:
 def _says(worst: _Worst, use: Number) -> str:
     point = _point(worst)
     value = nominal(use)
+    if np.isnan(value):
+        return f"what the {worst.side} device uses of its safe area into {worst.load.name} cannot be computed"
     amount = (
         f"uses {value:.0%} of the safe area" if np.isfinite(value) else "current flows where none is allowed"
     )
