@@ -191,7 +191,7 @@ def _unsettled(check: Check, measure: Measure, limit: Limit, bench: Bench, trace
         kind=measure.kind or check.kind,
         says=measure.says,
         nominal=_at(measure.value, 0),
-        worst=_at(measure.value, 0),
+        worst=None,  # the corners of what is not complete are not computed
         bound=_bound(measure, limit),
         because=tuple(remark.because for remark in measure.remarks),
         also=tuple(one for one in measure.also if np.isfinite(one.value)),
