@@ -16,8 +16,6 @@ Marks = npt.NDArray[np.bool_]
 
 #: A value this close to a level, relative to it, counts as at the level: rounding is not a finding.
 CLOSE = 1e-9
-#: Added to how bad a case is that can never be go: more than any value of a finding.
-NEVER_GO = 1e15
 
 
 @dataclass(frozen=True, eq=False)
@@ -78,8 +76,20 @@ def badness(value: Cases, bounds: Bounds) -> Cases:
     bad = reference - value if bounds.sense == "at least" else value - reference
     if bounds.sense == "between":
         bad = np.maximum(bad, np.where(np.isfinite(bounds.low), bounds.low - value, -np.inf))
-    bad = np.where(_never(bounds.go, bounds.sense), bad + NEVER_GO, bad)
-    return np.where(np.isnan(bad) | _never(bounds.stop, bounds.sense), np.inf, bad)
+    bad = bad + _tier(bounds) * _span(bad)
+    return np.where(np.isnan(bad), np.inf, bad)
+
+
+def _tier(bounds: Bounds) -> Cases:
+    """Return 2 where every value is a stop, 1 where no value can be go, else 0."""
+    never_go, stop = _never(bounds.go, bounds.sense), _never(bounds.stop, bounds.sense)
+    return np.where(stop, 2.0, np.where(never_go, 1.0, 0.0))
+
+
+def _span(bad: Cases) -> float:
+    """Return more than the distance between any two cases, and no more than that: rounding must not hide the worse."""
+    finite = np.abs(bad[np.isfinite(bad)])
+    return 2.0 * float(np.max(finite, initial=0.0)) + 1.0
 
 
 def _never(level: Cases, sense: Sense) -> Marks:

@@ -288,6 +288,28 @@ def test_the_worst_case_is_the_one_shown(values, bounds, worst):
     assert word(values, bounds).worst == worst
 
 
+@pytest.mark.parametrize(
+    ("sense", "values", "go", "stop", "worst"),
+    [
+        (
+            "at most",
+            [0.9, 0.1, 0.2],
+            0.8,
+            [1.0, -INF, -INF],
+            2,
+        ),  # a stop whatever the value, the larger of the two
+        ("at most", [0.9, 0.1, 0.2], [0.8, -INF, -INF], None, 2),  # never go, likewise
+        ("at most", [0.3, 0.2, 0.1], [0.8, -INF, 0.8], [1.0, 1.0, -INF], 2),  # a stop is worse than never go
+        ("at least", [50e6, 20e6, 40e6], [2e6, INF, INF], [1e6, INF, INF], 1),
+        ("at most", [0.28, 0.35, 0.31], [-INF] * 3, [-INF] * 3, 1),
+    ],
+)
+def test_levels_that_no_value_keeps_come_first(sense, values, go, stop, worst):
+    measure = Measure(np.array(values), "", go=np.array(go), stop=None if stop is None else np.array(stop))
+    bounds = bounds_of(measure, limit(sense, None, None), 3)
+    assert int(np.argmax(badness(measure.value, bounds))) == worst
+
+
 def test_nominal_bound_is_finite_or_nothing():
     assert nominal_bound(np.array([0.8, 0.9])) == 0.8
     assert nominal_bound(0.8) == 0.8
