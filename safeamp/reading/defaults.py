@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
 from typing import Any
 
 from safeamp.amplifier import TABLES, Key, keys_of
@@ -10,6 +9,7 @@ from safeamp.limits import Limits
 from safeamp.quantities import PERCENT, RATIO, VOLTAGE, Origin, read, show
 from safeamp.reading.draft import Draft
 from safeamp.reading.heat_defaults import fill_heat
+from safeamp.reading.midpoint import fill_midpoint
 from safeamp.reading.parts import written_devices
 from safeamp.reading.supply_defaults import fill_supply
 
@@ -20,7 +20,7 @@ POWER_WORDS = {"rated noise": 1.0, "programme": 0.5, "peak": 0.25}
 def fill_defaults(draft: Draft, limits: Limits) -> None:
     """Fill in every default that applies to this amplifier."""
     fill_plain(draft)
-    for fill in (fill_supply, _stage, _swing, _capacitor, _midpoint, _loudspeaker, fill_heat):
+    for fill in (fill_supply, _stage, _swing, _capacitor, fill_midpoint, _loudspeaker, fill_heat):
         fill(draft, limits)
 
 
@@ -99,18 +99,6 @@ def spread_text(low: float, high: float) -> str:
     """Return two factors as a tolerance, such as ``±20 %`` or ``-30/+70 %``."""
     below, above = round(100 * (1 - low), 6), round(100 * (high - 1), 6)
     return f"±{above:g} %" if below == above else f"-{below:g}/+{above:g} %"
-
-
-def _midpoint(draft: Draft, _: Limits) -> None:
-    if draft.word("stage.coupling") != "capacitor":
-        return
-    if "readings.midpoint" not in draft.written:
-        draft.fill("readings.midpoint_share", 0.5, RATIO, spread=(0.45, 0.55), text="half the rail")
-        draft.assume("readings.midpoint", "half the rail (45 to 55 %)", "the midpoint was not read")
-        return
-    rails, entry = draft.numbers("supply.no_load"), draft.entries.get("readings.midpoint")
-    if rails and entry and entry.low < rails[0] / 2 < entry.high:
-        draft.entries[entry.path] = replace(entry, middle=(rails[0] / 2,))
 
 
 def _loudspeaker(draft: Draft, limits: Limits) -> None:

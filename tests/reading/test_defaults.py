@@ -149,9 +149,13 @@ def test_conducting_pairs_are_listed_for_parallel_devices_only(tmp_path):
     assert "stage.pairs_conducting" not in [a.key for a in load(tmp_path, base="split_rail").assumptions]
 
 
-def test_half_the_rail_is_a_level_between_when_the_midpoint_may_lie_on_either_side(tmp_path):
+def test_where_both_sides_clip_alike_is_a_level_when_the_midpoint_may_lie_on_either_side(tmp_path):
+    # 58 V loaded, 3 V lost upward and 2 V downward: alike at (58 − 3 + 2)/2 of 58, that is 31.45 of 64 V without load
     inside = load(tmp_path, {"readings.midpoint": "31 V ±2 V"}, base=SINGLE)
-    assert inside.entries["readings.midpoint"].middle == (32.0,)
+    assert inside.entries["readings.midpoint"].middle == pytest.approx((64.0 * (58 - 3 + 2) / 2 / 58,))
+    lossless = {"readings.midpoint": "31 V ±2 V", "stage.swing_loss_up": GONE, "stage.swing_loss_down": GONE}
+    alike = load(tmp_path, lossless, base=SINGLE)
+    assert alike.entries["readings.midpoint"].middle == (32.0,)
     assert (
         load(tmp_path, {"readings.midpoint": "30.4 V"}, base=SINGLE).entries["readings.midpoint"].middle == ()
     )
