@@ -43,6 +43,11 @@ def test_the_demo_alone_may_use_examples():
     assert report("healthy", change).verdict is UNVERIFIED
     demo = report("healthy", change, demo=True)
     assert demo.verdict is GO
+
+
+def test_the_demo_could_answer_whatever_it_says():
+    demo = report("split_rail", demo=True)
+    assert demo.verdict is CAUTION
     assert demo.exit_status == 0
 
 
