@@ -123,6 +123,8 @@ def leakage_current(*, drop: ArrayLike, resistor: ArrayLike, largest_resistor: A
         V, either sign.
     resistor : array_like
         ohm, > 0 and at most `largest_resistor`: a larger one shows tens of volts for microamperes.
+    largest_resistor : array_like, optional
+        ohm.
 
     Raises
     ------

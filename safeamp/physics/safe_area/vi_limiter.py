@@ -162,7 +162,8 @@ def limiter_reach(
     ----------
     points : sequence of pairs
         V and A of the limiter.
-    half_supply, peak, load_magnitude, phase_angle, conducting, emitter_resistor, idle_current, law
+    half_supply, peak, load_magnitude, phase_angle, conducting, emitter_resistor, idle_current, law, \
+transconductance_parameter, thermal_voltage
         As for `envelope_use`.
 
     Returns

@@ -99,6 +99,10 @@ def mean_rail_current(
     -------
     numpy.ndarray
         A, broadcast shape of the inputs.
+
+    References
+    ----------
+    Derived, as `mean_currents`.
     """
     currents = mean_currents(
         peak_current=peak_current,

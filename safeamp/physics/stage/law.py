@@ -122,6 +122,10 @@ def device_currents(
     -------
     tuple of numpy.ndarray
         A, larger and smaller; their difference is the magnitude of the load current.
+
+    References
+    ----------
+    Derived, as `carrying_current`.
     """
     non_negative(idle_current=idle_current, emitter_resistor=emitter_resistor)
     magnitude, idle = np.abs(array(load_current)), array(idle_current)
