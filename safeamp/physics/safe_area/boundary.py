@@ -52,6 +52,17 @@ class Boundary:
         known = np.where(voltage <= self.rating.voltage, allowed, 0.0)
         return np.where(np.isnan(voltage + self.rating.voltage), np.nan, known)
 
+    def share(self, voltage: Array, current: Array) -> Array:
+        """Return the current over the allowed current; none uses nothing, even where none is allowed."""
+        return over(current, self.allowed(voltage))
+
+
+def over(current: Array, allowed: Array) -> Array:
+    """Return current over allowed current: infinite where current flows and none is allowed."""
+    with np.errstate(divide="ignore", invalid="ignore"):
+        ratio = current / allowed
+    return np.where((current == 0) & (allowed == 0), 0.0, ratio)
+
 
 def _lines(rating: Rating) -> tuple[tuple[Array, Array, Array], ...]:
     """Return the lines between the points, the first one from zero volts on where it is continued."""

@@ -42,12 +42,8 @@ def _counted(current: Array, boundary: Boundary) -> Array:
 
 
 def _ratio(voltage: Array, current: Array, boundary: Boundary) -> Array:
-    """Return the use; no current where none is allowed uses nothing."""
-    allowed = boundary.allowed(voltage)
-    counted = _counted(current, boundary)
-    with np.errstate(divide="ignore", invalid="ignore"):
-        ratio = counted / allowed
-    return np.where((counted == 0) & (allowed == 0), 0.0, ratio)
+    """Return the use, leakage left out."""
+    return boundary.share(voltage, _counted(current, boundary))
 
 
 def _reach(voltage: Array, current: Array, boundary: Boundary) -> Array:
