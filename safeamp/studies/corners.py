@@ -83,7 +83,15 @@ def factorial(entries: Sequence[Entry], levels: Iterable[tuple[float, ...]]) -> 
 
 def _pinned(entries: Sequence[Entry]) -> Rows:
     """Return the corners with guesses and assumptions at their nominal values."""
-    return factorial(entries, [(entry.nominal,) if is_estimated(entry) else ends(entry) for entry in entries])
+    return factorial(entries, _held(entries, [ends(entry) for entry in entries]))
+
+
+def _held(entries: Sequence[Entry], levels: Sequence[tuple[float, ...]]) -> list[tuple[float, ...]]:
+    """Return the levels with guesses and assumptions held at their nominal values."""
+    return [
+        (entry.nominal,) if is_estimated(entry) else level
+        for entry, level in zip(entries, levels, strict=True)
+    ]
 
 
 def _assemble(entries: Sequence[Entry], corners: Sequence[Rows], *, complete: bool) -> Design:
@@ -127,11 +135,10 @@ def searched_design(screen: Design, badness: npt.NDArray[np.float64]) -> Design:
     worse, effect = _worse_ends(screen, badness)
     free = set(np.argsort(-effect, kind="stable")[:COMPLETE].tolist())
     levels = [ends(entry) if place in free else (worse[place],) for place, entry in enumerate(entries)]
-    pinned = [
-        (entry.nominal,) if is_estimated(entry) else level
-        for entry, level in zip(entries, levels, strict=True)
-    ]
-    return _assemble(entries, [factorial(entries, pinned), factorial(entries, levels)], complete=False)
+    found = [factorial(entries, levels)]
+    if any(is_estimated(entry) for entry in entries):
+        found.insert(0, factorial(entries, _held(entries, levels)))
+    return _assemble(entries, found, complete=False)
 
 
 def _worse_ends(
