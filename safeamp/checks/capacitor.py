@@ -161,7 +161,9 @@ def check_leakage(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicab
     )
     farads, rated = needed(amplifier, "output_capacitor.capacitance", "output_capacitor.rated_voltage")
     current = capacitor.leakage_current(drop=drop, resistor=resistor)
-    allowed = capacitor.leakage_limit(capacitance=farads, rated_voltage=rated)
+    allowed = capacitor.leakage_limit(
+        capacitance=farads, rated_voltage=rated, rate=limits["capacitor.leakage"].extra["leakage_per_charge"]
+    )
     trend = amplifier.readings.capacitor_leakage_trend
     return Measure(
         current / allowed,
