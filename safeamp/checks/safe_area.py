@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import reduce
+from typing import Any
 
 import numpy as np
 
@@ -38,7 +39,7 @@ NEXT = (
 
 
 @dataclass(frozen=True, eq=False)
-class _Load:
+class Load:
     """A load of one side: magnitude (ohm), largest angle (deg), and how it is called."""
 
     magnitude: Number
@@ -60,22 +61,30 @@ def rating_of(amplifier: Amplifier, side: str) -> Rating:
     )
 
 
-def _use_of(amplifier: Amplifier, side: str, load: _Load, case: Number, rating: Rating) -> Use:
+def _drive(amplifier: Amplifier, side: str, load: Load) -> dict[str, Any]:
+    """Return what drives the devices of a side into a load, and what they are."""
     table = operating.sides(amplifier)[SIDES.index(side)]
-    return safe_area.envelope_use(
-        half_supply=table.burst,
-        peak=operating.peak_into(amplifier, table.burst, table.loss, load.magnitude),
-        load_magnitude=load.magnitude,
-        phase_angle=load.angle,
-        conducting=operating.conducting(amplifier),
-        emitter_resistor=needed(amplifier, "stage.emitter_resistor")[0],
-        idle_current=operating.idle_current(amplifier),
-        law=operating.law_of(table.device),
-        imbalance=_imbalance(amplifier),
-        case_temperature=case,
-        rating=rating,
-        transconductance_parameter=table.device.transconductance_parameter,
-    )
+    return {
+        "half_supply": table.burst,
+        "peak": operating.peak_into(amplifier, table.burst, table.loss, load.magnitude),
+        "load_magnitude": load.magnitude,
+        "phase_angle": load.angle,
+        "conducting": operating.conducting(amplifier),
+        "emitter_resistor": needed(amplifier, "stage.emitter_resistor")[0],
+        "idle_current": operating.idle_current(amplifier),
+        "law": operating.law_of(table.device),
+        "imbalance": _imbalance(amplifier),
+        "transconductance_parameter": table.device.transconductance_parameter,
+    }
+
+
+def _use_of(amplifier: Amplifier, side: str, load: Load, case: Number, rating: Rating) -> Use:
+    return safe_area.envelope_use(**_drive(amplifier, side, load), case_temperature=case, rating=rating)
+
+
+def path_of(amplifier: Amplifier, side: str, load: Load, output_angle: Number) -> tuple[Number, Number]:
+    """Return the voltages and currents through which a load takes the worst device of a side, one case."""
+    return safe_area.envelope_path(output_angle=output_angle, **_drive(amplifier, side, load))
 
 
 def _imbalance(amplifier: Amplifier) -> Number | None:
@@ -95,7 +104,7 @@ def sides_to_judge(amplifier: Amplifier) -> tuple[str, ...]:
 
 
 @dataclass(frozen=True, eq=False)
-class _Worst:
+class Worst:
     """The worst use over sides and loads, with the structure of the nominal worst point."""
 
     use: Number
@@ -103,10 +112,10 @@ class _Worst:
     point: Use
     case: Number
     side: str
-    load: _Load
+    load: Load
 
 
-def _worst(amplifier: Amplifier, loads: tuple[_Load, ...], fraction: float, angle: Number) -> _Worst:
+def _worst(amplifier: Amplifier, loads: tuple[Load, ...], fraction: float, angle: Number) -> Worst:
     found = []
     for side in sides_to_judge(amplifier):
         case = thermal.hotter_case(amplifier, side, fraction, angle)
@@ -115,7 +124,7 @@ def _worst(amplifier: Amplifier, loads: tuple[_Load, ...], fraction: float, angl
     point, case, side, load = max(found, key=lambda one: _sortable(one[0].use))
     use = reduce(np.maximum, [one[0].use for one in found])
     unknown = reduce(np.logical_or, [one[0].enters_unknown for one in found])
-    return _Worst(use, unknown, point, case, side, load)
+    return Worst(use, unknown, point, case, side, load)
 
 
 def _sortable(use: Number) -> float:
@@ -157,7 +166,7 @@ def _needs(amplifier: Amplifier) -> tuple[str, ...]:
     )
 
 
-def _point(worst: _Worst) -> dict[str, float | str]:
+def _point(worst: Worst) -> dict[str, float | str]:
     zone = int(nominal(worst.point.zone))
     return {
         "voltage": nominal(worst.point.voltage),
@@ -166,7 +175,7 @@ def _point(worst: _Worst) -> dict[str, float | str]:
     }
 
 
-def _says(worst: _Worst, use: Number) -> str:
+def _says(worst: Worst, use: Number) -> str:
     point = _point(worst)
     value = nominal(use)
     if np.isnan(value):
@@ -180,12 +189,22 @@ def _says(worst: _Worst, use: Number) -> str:
     )
 
 
+def resistors(amplifier: Amplifier) -> tuple[Load, ...]:
+    """Return the loads that count for a resistor of the nominal impedance."""
+    magnitude, turned = operating.nominal_load(amplifier)
+    load = Load(magnitude, turned, f"a resistor of {text(magnitude, RESISTANCE)}")
+    return (load, *_low_notes(amplifier, load))
+
+
+def worst_into_resistor(amplifier: Amplifier) -> Worst:
+    """Return the worst use into a resistor of the nominal impedance."""
+    return _worst(amplifier, resistors(amplifier), thermal.ONE_THIRD, 0.0)
+
+
 @finding("soa.resistive_load", Step.LOAD_TEST, RATIO)
 def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
     """Use of the safe area into a resistor of the nominal impedance."""
-    magnitude, turned = operating.nominal_load(amplifier)
-    load = _Load(magnitude, turned, f"a resistor of {text(magnitude, RESISTANCE)}")
-    worst = _worst(amplifier, (load, *_low_notes(amplifier, load)), thermal.ONE_THIRD, 0.0)
+    worst = worst_into_resistor(amplifier)
     return Measure(
         worst.use,
         _says(worst, worst.use),
@@ -199,7 +218,7 @@ def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
     )
 
 
-def _usable(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
+def _usable(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
     rating = rating_of(amplifier, worst.side)
     left = safe_area.derating(
         case_temperature=worst.case, power_at=rating.power_at, junction_limit=rating.junction_limit
@@ -213,11 +232,16 @@ def _usable(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
     return (Also("power allowed at this case temperature", nominal(left * power), POWER),)
 
 
+def worst_into_loudspeaker(amplifier: Amplifier) -> Worst:
+    """Return the worst use into the loudspeaker."""
+    angle = operating.phase_angle(amplifier)
+    return _worst(amplifier, loads(amplifier, angle), thermal.ONE_EIGHTH, angle)
+
+
 @finding("soa.loudspeaker", Step.LOUDSPEAKER, RATIO)
 def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
     """Use of the safe area into the loudspeaker: nominal at its angle, minimum at 30 deg, the worse counts."""
-    angle = operating.phase_angle(amplifier)
-    worst = _worst(amplifier, _loads(amplifier, angle), thermal.ONE_EIGHTH, angle)
+    worst = worst_into_loudspeaker(amplifier)
     open_load = _open_load(amplifier, worst)
     return Measure(
         worst.use,
@@ -233,20 +257,21 @@ def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
     )
 
 
-def _loads(amplifier: Amplifier, angle: Number) -> tuple[_Load, ...]:
+def loads(amplifier: Amplifier, angle: Number) -> tuple[Load, ...]:
+    """Return the loads that count for the loudspeaker."""
     nominal_ohms, turned = operating.nominal_load(amplifier, angle)
     lowest, lowest_turned = operating.minimum_load(amplifier, MINIMUM_ANGLE)
     said = f"{text(nominal_ohms, RESISTANCE)} at up to {nominal(angle):.0f} deg"
     said_lowest = f"{text(lowest, RESISTANCE)} (minimum) at up to {MINIMUM_ANGLE:.0f} deg"
     return (
-        _Load(nominal_ohms, turned, said),
-        _Load(lowest, lowest_turned, said_lowest),
-        *_low_notes(amplifier, _Load(nominal_ohms, turned, said)),
-        *_low_notes(amplifier, _Load(lowest, lowest_turned, said_lowest)),
+        Load(nominal_ohms, turned, said),
+        Load(lowest, lowest_turned, said_lowest),
+        *_low_notes(amplifier, Load(nominal_ohms, turned, said)),
+        *_low_notes(amplifier, Load(lowest, lowest_turned, said_lowest)),
     )
 
 
-def _low_notes(amplifier: Amplifier, load: _Load) -> tuple[_Load, ...]:
+def _low_notes(amplifier: Amplifier, load: Load) -> tuple[Load, ...]:
     """Return a load with the output capacitor in series, from its own angle to that at the lowest note."""
     if not operating.is_capacitor_coupled(amplifier):
         return ()
@@ -254,19 +279,19 @@ def _low_notes(amplifier: Amplifier, load: _Load) -> tuple[_Load, ...]:
     seen = [
         operating.behind_capacitor(amplifier, load.magnitude, load.angle, most) for most in LOW_NOTE_ANGLES
     ]
-    return tuple(_Load(magnitude, turned, name) for magnitude, turned in seen)
+    return tuple(Load(magnitude, turned, name) for magnitude, turned in seen)
 
 
-def _at_sixty(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
+def _at_sixty(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
     if np.ndim(worst.use):  # only the nominal figure is shown: over the corners it would be work for nothing
         return ()
     magnitude, turned = operating.nominal_load(amplifier, SHOWN_ANGLE)
-    load = _Load(magnitude, turned, "60 deg")
+    load = Load(magnitude, turned, "60 deg")
     use = _use_of(amplifier, worst.side, load, worst.case, rating_of(amplifier, worst.side))
     return (Also("60 deg", nominal(use.use), RATIO),)
 
 
-def _open_load(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
+def _open_load(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
     """Return the use without a load: a large idle current then flows at nearly rail to rail."""
     if np.ndim(worst.use):
         return ()
@@ -274,7 +299,7 @@ def _open_load(amplifier: Amplifier, worst: _Worst) -> tuple[Also, ...]:
     if not nominal(operating.idle_current(amplifier)) > OPEN_LOAD_IDLE * nominal(peak):
         return ()
     rating = rating_of(amplifier, worst.side)
-    use = _use_of(amplifier, worst.side, _Load(OPEN_LOAD, 0.0, "no load"), worst.case, rating)
+    use = _use_of(amplifier, worst.side, Load(OPEN_LOAD, 0.0, "no load"), worst.case, rating)
     return (Also("driven without a load", nominal(use.use), RATIO),)
 
 

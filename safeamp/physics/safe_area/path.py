@@ -1,0 +1,69 @@
+"""Where a load takes a device in the plane of voltage and current: for drawing, not for judging."""
+
+import numpy as np
+from numpy.typing import ArrayLike
+
+from safeamp.physics._checks import Array, array, within
+from safeamp.physics.safe_area.use import _device, _refuse_impossible
+from safeamp.physics.stage import THERMAL_VOLTAGE, Law
+
+
+def envelope_path(
+    *,
+    output_angle: ArrayLike,
+    half_supply: float,
+    peak: float,
+    load_magnitude: float,
+    phase_angle: float,
+    conducting: float,
+    emitter_resistor: float,
+    idle_current: float,
+    law: Law,
+    imbalance: float | None,
+    transconductance_parameter: float | None = None,
+    thermal_voltage: float = THERMAL_VOLTAGE,
+) -> tuple[Array, Array]:
+    """Return voltage (V) and current (A) of the worst device along the envelope of all angles of a load.
+
+    The path that `envelope_use` searches, at the angles given; zero `phase_angle` is a resistor.
+
+    Parameters
+    ----------
+    output_angle : array_like
+        deg, -90 (output at its lowest) to 90 (at its peak on this side).
+    half_supply, peak, load_magnitude, phase_angle, conducting, emitter_resistor, idle_current, law, imbalance,
+    transconductance_parameter, thermal_voltage
+        As in `envelope_use`, one case.
+
+    Returns
+    -------
+    tuple of numpy.ndarray
+        Both of the shape of `output_angle`.
+
+    Raises
+    ------
+    ValueError
+        If a value is outside its range.
+
+    References
+    ----------
+    Envelope of the ellipses of all angles; derived.
+    """
+    _refuse_impossible(half_supply, peak, load_magnitude, phase_angle)
+    within(-90.0, 90.0, output_angle=output_angle)
+    device = _device(
+        half_supply=half_supply,
+        peak=peak,
+        load_magnitude=load_magnitude,
+        conducting=conducting,
+        emitter_resistor=emitter_resistor,
+        idle_current=idle_current,
+        law=law,
+        imbalance=imbalance,
+        transconductance_parameter=transconductance_parameter,
+        thermal_voltage=thermal_voltage,
+    )
+    angle = array(output_angle)
+    turned = np.minimum(90.0, angle + np.abs(phase_angle))
+    voltage, current = device(np.sin(np.deg2rad(angle)), np.sin(np.deg2rad(turned)))
+    return voltage + 0.0 * current, current + 0.0 * voltage
