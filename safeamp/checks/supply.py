@@ -132,7 +132,7 @@ def check_reservoir(amplifier: Amplifier, limits: Limits) -> Measure:
         f"{text(rail, VOLTAGE)} at the highest mains on a reservoir of {text(rated, VOLTAGE)}",
         stop=_reservoir_stop(amplifier, limits),
         also=_ripple(amplifier),
-        next="read the rated voltage printed on each reservoir capacitor",
+        next="read the rated voltage printed on each reservoir; fit one that stands the rail at the highest mains",
         method="no-load rail scaled to the highest mains, over the rated voltage",
     )
 
