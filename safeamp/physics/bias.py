@@ -19,6 +19,7 @@ from safeamp.physics.stage.law import THERMAL_VOLTAGE
 __all__ = [
     "THERMAL_VOLTAGE",
     "Sensor",
+    "control_difference",
     "current_imbalance",
     "current_slope_bipolar",
     "current_slope_mosfet",
@@ -109,3 +110,45 @@ def current_imbalance(
     resistor, mean = array(emitter_resistor), array(current)
     shared = array(spread) / (resistor * mean + array(thermal_voltage))
     return np.where(resistor == 0, 1.0 + 0 * shared, shared)
+
+
+def control_difference(
+    *,
+    current: ArrayLike,
+    mean: ArrayLike,
+    emitter_resistor: ArrayLike,
+    junctions: ArrayLike = 1.0,
+    thermal_voltage: ArrayLike = THERMAL_VOLTAGE,
+) -> Array:
+    """Return by how many volts less than the mean device one needs at its base to carry its current.
+
+    Parameters
+    ----------
+    current, mean : array_like
+        A of the odd device and of the mean device beside it, > 0.
+    emitter_resistor : array_like
+        ohm of each device, >= 0.
+    junctions : array_like
+        Junctions in series, > 0: 1, of a Darlington 2.
+    thermal_voltage : array_like
+        kT/q, V, > 0.
+
+    Returns
+    -------
+    numpy.ndarray
+        V; positive where the odd device carries more.
+
+    Raises
+    ------
+    ValueError
+        If a value is outside its range.
+
+    References
+    ----------
+    Derived: both bases at one voltage, exponential law: n*Vt*ln(I1/I2) + Re*(I1 - I2).
+    """
+    positive(current=current, mean=mean, junctions=junctions, thermal_voltage=thermal_voltage)
+    non_negative(emitter_resistor=emitter_resistor)
+    one, other = array(current), array(mean)
+    junction = array(junctions) * array(thermal_voltage) * np.log(one / other)
+    return junction + array(emitter_resistor) * (one - other)

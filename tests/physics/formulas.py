@@ -119,6 +119,10 @@ FORMULAS = (
         "current": (0.5, N, "A"), "emitter_resistor": (0.22, N, "ohm"), "spread": (0.05, N, "V"),
         "thermal_voltage": (0.0257, P, "V"),
     }),
+    Formula(bias, "control_difference", "V", {
+        "current": (0.12, P, "A"), "mean": (0.1, P, "A"), "emitter_resistor": (0.22, N, "ohm"),
+        "junctions": (2.0, P, ""), "thermal_voltage": (0.0257, P, "V"),
+    }),
     Formula(feedback, "sink_resistance", "K/W", {
         "sink_to_air": (1.5, N, "K/W"), "conducting": (1.0, P, ""), "shared_by": (1.0, P, ""),
     }),
@@ -216,6 +220,14 @@ FORMULAS = (
     Formula(limiter, "sense_resistor", "ohm", {"limit_current": (3.0, P, "A"), "threshold": (0.65, P, "V")}),
     Formula(limiter, "shorted_current", "A", {
         "limit_current": (3.0, P, "A"), "half_supply": (23.0, P, "V"), "slope_voltage": (60.0, P, "V"),
+    }),
+    Formula(limiter, "sensed_limit", "A", {
+        "voltage": (20.0, N, "V"), "emitter_resistor": (0.22, P, "ohm"), "to_emitter": (330.0, P, "ohm"),
+        "to_output": (1000.0, P, "ohm"), "to_rail": (22e3, P, "ohm"), "threshold": (0.65, P, "V"),
+    }),
+    Formula(limiter, "closing_voltage", "V", {
+        "to_emitter": (330.0, P, "ohm"), "to_output": (1000.0, P, "ohm"), "to_rail": (22e3, P, "ohm"),
+        "threshold": (0.65, P, "V"),
     }),
     Formula(limiter, "shorted_power", "W", {"shorted_current": (1.8, P, "A"), "half_supply": (23.0, P, "V")}),
     Formula(loudspeaker, "rated_noise_power", "W", {"power": (100.0, N, "W")}, {"word": "programme"}),
