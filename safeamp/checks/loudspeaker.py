@@ -76,22 +76,23 @@ def check_power(amplifier: Amplifier, limits: Limits) -> Measure:
 
 
 @dataclass(frozen=True, eq=False)
-class _Fault:
+class Fault:
     """A direct voltage on the coil, V, and how it gets there."""
 
     volts: Number
     how: str
 
 
-def _fault(amplifier: Amplifier) -> _Fault:
+def fault_of(amplifier: Amplifier) -> Fault:
+    """Return the direct voltage that one shorted device of each side puts on the coil."""
     rail = operating.no_load_rail(amplifier)
     if amplifier.stage.bridged:
         total = rail if operating.is_single(amplifier) else 2.0 * rail
-        return _Fault(total, "one device of each side shorted")
-    return _Fault(rail, "one device shorted")
+        return Fault(total, "one device of each side shorted")
+    return Fault(rail, "one device shorted")
 
 
-def _capacitor_holds(amplifier: Amplifier) -> Number:
+def capacitor_holds(amplifier: Amplifier) -> Number:
     """Return where the output capacitor stands the whole rail at the highest mains."""
     (rated,) = needed(amplifier, "output_capacitor.rated_voltage")
     rail = operating.rails_as_read(amplifier)[0] * operating.highest_factor(amplifier)
@@ -103,18 +104,18 @@ def _capacitor_holds(amplifier: Amplifier) -> Number:
 def check_dc_fault(amplifier: Amplifier, limits: Limits) -> Measure:
     """Power in the coil with one device shorted, and what stops it in what time."""
     (coil,) = needed(amplifier, "loudspeaker.dc_resistance")
-    fault = _fault(amplifier)
+    fault = fault_of(amplifier)
     current = loudspeaker.dc_fault_current(voltage=fault.volts, dc_resistance=coil)
     power = loudspeaker.dc_fault_power(voltage=fault.volts, dc_resistance=coil)
     also = (Also("current in the coil", nominal(current), CURRENT), *_step_also(amplifier))
     if operating.is_capacitor_coupled(amplifier):
-        holds = _capacitor_holds(amplifier)
+        holds = capacitor_holds(amplifier)
         if np.all(np.asarray(holds)):
             return _blocked(fault, power, also)
     return _stopped_in_time(amplifier, fault, power, also, limits)
 
 
-def _blocked(fault: _Fault, power: Number, also: tuple[Also, ...]) -> Measure:
+def _blocked(fault: Fault, power: Number, also: tuple[Also, ...]) -> Measure:
     return Measure(
         power,
         f"{fault.how}: the output capacitor blocks the whole rail; without it {text(power, POWER)} in the coil",
@@ -146,10 +147,10 @@ def _step_also(amplifier: Amplifier) -> tuple[Also, ...]:
 
 
 def _stopped_in_time(
-    amplifier: Amplifier, fault: _Fault, power: Number, also: tuple[Also, ...], limits: Limits
+    amplifier: Amplifier, fault: Fault, power: Number, also: tuple[Also, ...], limits: Limits
 ) -> Measure:
-    burns_after = _time_to_limit(amplifier, fault)
-    relay, fuse = _relay_time(amplifier), _fuse_time(amplifier, fault, limits)
+    burns_after = time_to_limit(amplifier, fault)
+    relay, fuse = relay_time(amplifier), fuse_time(amplifier, fault, limits)
     acts_after = np.fmin(relay, fuse)
     if np.all(np.isnan(acts_after)):
         acts_after = np.where(_nothing_fitted(amplifier), np.inf, acts_after)
@@ -182,28 +183,33 @@ def _nothing_fitted(amplifier: Amplifier) -> bool:
     return all(path in amplifier.absent for path in fitted)
 
 
-def _time_to_limit(amplifier: Amplifier, fault: _Fault) -> Number:
-    """Return the time to the coil limit, s, from where one eighth of clipping power has warmed the coil."""
+def heating(amplifier: Amplifier, fault: Fault) -> dict[str, Number]:
+    """Return what heats the coil of one loudspeaker, from where one eighth of clipping power has warmed it."""
     coil, to_magnet, fast, to_air, slow, limit = needed(amplifier, "loudspeaker.dc_resistance", *THERMAL)
     each = operating.output_power(amplifier) / needed(amplifier, "loudspeaker.parallel")[0]
     start = ROOM + each / 8.0 * (to_magnet + to_air)
-    values = np.broadcast_arrays(fault.volts, coil, to_magnet, fast, to_air, slow, start, limit)
-    if any(np.any(np.isnan(value)) for value in values):
+    return {
+        "voltage": fault.volts,
+        "dc_resistance": coil,
+        "coil_to_magnet": to_magnet,
+        "coil_time_constant": fast,
+        "magnet_to_air": to_air,
+        "magnet_time_constant": slow,
+        "start": np.minimum(start, limit),
+        "air": ROOM,
+    }
+
+
+def time_to_limit(amplifier: Amplifier, fault: Fault) -> Number:
+    """Return the time to the coil limit, s, from where one eighth of clipping power has warmed the coil."""
+    heated, (limit,) = heating(amplifier, fault), needed(amplifier, "loudspeaker.coil_limit")
+    if any(np.any(np.isnan(value)) for value in (*heated.values(), limit)):
         return np.nan
-    return time_to_temperature(
-        voltage=fault.volts,
-        dc_resistance=coil,
-        coil_to_magnet=to_magnet,
-        coil_time_constant=fast,
-        magnet_to_air=to_air,
-        magnet_time_constant=slow,
-        start=np.minimum(start, limit),
-        air=ROOM,
-        limit=limit,
-    )
+    return time_to_temperature(**heated, limit=limit)
 
 
-def _relay_time(amplifier: Amplifier) -> Number:
+def relay_time(amplifier: Amplifier) -> Number:
+    """Return the time after which the relay has acted, s; inf without one, nan where nothing is said of it."""
     if "protection.trip_delay" in amplifier.absent:
         return np.inf
     if amplifier.protection.trip_delay is None and amplifier.protection.loudspeaker_fuse is None:
@@ -211,7 +217,7 @@ def _relay_time(amplifier: Amplifier) -> Number:
     return np.nan if amplifier.protection.trip_delay is None else amplifier.protection.trip_delay
 
 
-def _fuse_time(amplifier: Amplifier, fault: _Fault, limits: Limits) -> Number:
+def fuse_time(amplifier: Amplifier, fault: Fault, limits: Limits) -> Number:
     """Return the slowest acting time of the loudspeaker fuse with the coil as hot as its limit, s."""
     fitted = amplifier.protection.loudspeaker_fuse
     if fitted is None:
@@ -234,7 +240,7 @@ def _gates(fuse: Fuse, limits: Limits) -> Gates:
     )
 
 
-def _fault_text(fault: _Fault, power: Number, acts: Number, burns: Number, relay: Number) -> str:
+def _fault_text(fault: Fault, power: Number, acts: Number, burns: Number, relay: Number) -> str:
     said = f"{fault.how}: {text(power, POWER)} in the coil from {text(fault.volts, VOLTAGE)}"
     acting, burning = nominal(acts), nominal(burns)
     if np.isinf(acting):
@@ -260,7 +266,7 @@ def _trip_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
 
 
 def _contact_remarks(
-    fault: _Fault, relay: Number, fuse: Number, burns_after: Number, limits: Limits
+    fault: Fault, relay: Number, fuse: Number, burns_after: Number, limits: Limits
 ) -> tuple[Remark, ...]:
     above = limits["loudspeaker.dc_fault"].extra["contacts_caution_above"]
     leans_on_relay = np.isfinite(nominal(relay)) and not nominal(fuse) < nominal(burns_after)
