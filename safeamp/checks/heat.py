@@ -71,7 +71,8 @@ def check_junction(amplifier: Amplifier, limits: Limits) -> Measure:
     quiet, loud = thermal.no_signal(amplifier), thermal.at_level(amplifier, thermal.ONE_THIRD)
     found = [_junction(amplifier, quiet, loud, side) for side in ("upper", "lower")]
     (hot, limit, case), (other, other_limit, other_case) = found
-    worse = np.asarray(hot) - limit >= np.asarray(other) - other_limit
+    margin, other_margin = np.asarray(hot) - limit, np.asarray(other) - other_limit
+    worse = np.isnan(margin) | (margin >= other_margin)  # of two sides the unknown one is shown
     value, stop = np.where(worse, hot, other), np.where(worse, limit, other_limit)
     start: float = extra["span_from"]
     share: float = extra["go_share_of_span"]

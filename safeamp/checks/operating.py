@@ -202,7 +202,8 @@ def believed_nominal(amplifier: Amplifier) -> Number:
     coil = amplifier.loudspeaker.dc_resistance
     if coil is None:
         return nominal
-    return np.where(coil / nominal < LABEL_FLOOR, coil / COIL_SHARE, nominal)
+    believed: Number = np.where(coil / nominal < LABEL_FLOOR, coil / COIL_SHARE, nominal)
+    return np.where(np.isnan(coil), np.nan, believed)  # a coil that is no number leaves nothing to believe
 
 
 def believed_minimum(amplifier: Amplifier) -> Number:
@@ -213,7 +214,10 @@ def believed_minimum(amplifier: Amplifier) -> Number:
     if table.dc_resistance is None:
         return table.minimum_impedance
     doubted = nominal < needed(amplifier, "loudspeaker.nominal_impedance")[0]
-    return np.where(doubted, np.minimum(table.minimum_impedance, 0.8 * nominal), table.minimum_impedance)
+    believed: Number = np.where(
+        doubted, np.minimum(table.minimum_impedance, 0.8 * nominal), table.minimum_impedance
+    )
+    return np.where(np.isnan(nominal), np.nan, believed)
 
 
 def _seen(amplifier: Amplifier, impedance: Number, angle: Number) -> tuple[Number, Number]:
