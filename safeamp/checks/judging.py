@@ -134,7 +134,7 @@ def _word(
 ) -> tuple[Verdict, tuple[str, ...]]:
     if measure.word is not None:
         return measure.word, ()
-    if np.isnan(value[0]):
+    if np.isnan(value[0]) or _level_is_unknown(measure):
         return Verdict.UNVERIFIED, ("the value could not be computed",)
     beyond = _beyond(value, bounds.stop, bounds.sense)
     if _stopped(value, bounds)[0]:
@@ -182,6 +182,11 @@ def _without_excuse(as_built: AsBuilt | None, value: Cases) -> npt.NDArray[np.in
     """Return the words of cases beyond stop: caution where the maker's own ratings cover them."""
     ceiling = as_built.ceiling if as_built is not None and as_built.holds else np.nan
     return np.where(value <= ceiling * (1.0 + CLOSE), int(Verdict.CAUTION), int(Verdict.STOP))
+
+
+def _level_is_unknown(measure: Measure) -> bool:
+    """Whether a level of the measure's own is no number: a level that is absent is None, never nan."""
+    return any(bool(np.any(np.isnan(level))) for level in (measure.go, measure.stop) if level is not None)
 
 
 def _enters_unknown(measure: Measure) -> bool:
