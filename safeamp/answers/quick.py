@@ -1,0 +1,70 @@
+"""What a quick command answers."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from safeamp.findings import Finding, Verdict
+from safeamp.quantities import Kind
+
+
+@dataclass(frozen=True)
+class PutIn:
+    """A value that a quick answer was computed with; `why` is empty for one that the user gave."""
+
+    option: str
+    text: str
+    why: str = ""
+
+
+@dataclass(frozen=True)
+class Amount:
+    """One result of a quick answer, SI unit of its kind, with its ends when an input had a tolerance; or a word."""
+
+    name: str
+    value: float | str | None
+    kind: Kind | None = None
+    low: float | None = None
+    high: float | None = None
+
+
+@dataclass(frozen=True)
+class Formula:
+    """A formula in words, and with the numbers put in."""
+
+    words: str
+    numbers: str
+
+
+@dataclass(frozen=True, kw_only=True)
+class QuickAnswer:
+    """What a quick answer without a sheet says.
+
+    Parameters
+    ----------
+    holds_for : str
+        For what a verdict holds: never more than what was put in.
+    judged : tuple of Finding
+        Everything among the results that has a limit; empty where nothing has.
+    cautions : tuple of str
+        What the numbers do not say.
+    """
+
+    command: str
+    title: str
+    put_in: tuple[PutIn, ...]
+    results: tuple[Amount, ...]
+    formulas: tuple[Formula, ...]
+    holds_for: str = ""
+    judged: tuple[Finding, ...] = ()
+    cautions: tuple[str, ...] = ()
+
+    @property
+    def verdict(self) -> Verdict | None:
+        """The worst word; None where nothing was judged."""
+        return max((finding.verdict for finding in self.judged), default=None)
+
+    @property
+    def exit_status(self) -> int:
+        """0 go or nothing to judge, 3 caution, 4 unverified, 5 stop."""
+        return 0 if self.verdict is None else self.verdict.exit_status
