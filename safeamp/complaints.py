@@ -46,3 +46,7 @@ def _place(complaint: Complaint) -> str:
     line = "" if complaint.line is None else f":{complaint.line}"
     key = f"{complaint.key}: " if complaint.key else ""
     return f"{complaint.path}{line}: {key}"
+
+
+class OptionsError(ValueError):
+    """Options of a quick answer say too little, or contradict one another; one sentence says what to add."""

@@ -226,11 +226,11 @@ def fuse_time(amplifier: Amplifier, fault: Fault, limits: Limits) -> Number:
     hot = coil * (1.0 + COPPER * (np.fmax(limit, 20.0) - 20.0))
     parallel = needed(amplifier, "loudspeaker.parallel")[0]
     return slowest_time(
-        times_rating=fault.volts / hot * parallel / fitted.rating, gates=_gates(fitted, limits)
+        times_rating=fault.volts / hot * parallel / fitted.rating, gates=gates_of(fitted, limits)
     )
 
 
-def _gates(fuse: Fuse, limits: Limits) -> Gates:
+def gates_of(fuse: Fuse, limits: Limits) -> Gates:
     """Return the gates of a fuse's letter; without a table of its own the slower one's."""
     table = limits.fuse_gates.get(fuse.letter) or limits.fuse_gates["T"]
     return Gates(

@@ -9,8 +9,13 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from safeamp.cli.capacitor import capacitor
+from safeamp.cli.heatsink import heatsink
+from safeamp.cli.loudspeaker import loudspeaker
+from safeamp.cli.offset import offset
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, complaining, emit, fail
+from safeamp.cli.soa import soa
 from safeamp.cli.tolerance import tolerance
 
 if TYPE_CHECKING:
@@ -188,3 +193,8 @@ def _emit_report(
 
 
 app.command("tolerance")(tolerance)
+app.command("capacitor")(capacitor)
+app.command("soa")(soa)
+app.command("heatsink")(heatsink)
+app.command("offset")(offset)
+app.command("loudspeaker")(loudspeaker)

@@ -160,8 +160,9 @@ def sink_rise(*, geometry: Geometry, heat: ArrayLike, air: ArrayLike) -> Array:
     some = np.where(watts > 0, watts, 1.0)
 
     def excess(level: Array) -> Array:
-        shed = fins_heat(geometry=geometry, rise=np.exp(level), air=air).total
-        return np.log(shed) - np.log(some)
+        shed: Array = fins_heat(geometry=geometry, rise=np.exp(level), air=air).total
+        above: Array = np.log(shed) - np.log(some)
+        return above
 
     found = np.exp(_balance(excess, np.log(_LEAST_RISE), np.log(MOST_RISE)))
     beyond = excess(np.asarray(np.log(MOST_RISE))) < 0

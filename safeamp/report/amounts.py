@@ -150,7 +150,8 @@ def kind_of(path: str, units: Mapping[str, str] | None = None) -> Kind | None:
     if path.endswith("_share"):
         return PERCENT
     key = written_key(path)
-    table, *_, name = key.split(".")
+    *tables, name = key.split(".")
+    table = tables[0] if tables else ""
     noun = Fins if ".fins." in key else TABLES.get(table)
     found = keys_of(noun).get(name) if noun else None
     if found is not None and len(found.kinds) == 1:

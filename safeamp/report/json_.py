@@ -25,7 +25,7 @@ def as_mapping(report: Report) -> dict[str, Any]:
         "scope": report.scope,
         "verdict": report.verdict.word,
         "steps": [_step(entry) for entry in report.steps],
-        "findings": [_finding(finding) for finding in report.findings],
+        "findings": [finding_mapping(finding) for finding in report.findings],
         "not_applicable": [{"id": entry.id, "because": entry.because} for entry in report.not_applicable],
         "assumptions": [
             {"key": entry.key, "value": entry.value, "why": entry.why} for entry in report.assumptions
@@ -47,7 +47,8 @@ def _step(entry: StepVerdict) -> dict[str, Any]:
     return {"step": entry.step.value, "verdict": word, "reached": entry.reached}
 
 
-def _finding(finding: Finding) -> dict[str, Any]:
+def finding_mapping(finding: Finding) -> dict[str, Any]:
+    """Return one finding as a dict."""
     return {
         "id": finding.id,
         "step": finding.step.value,

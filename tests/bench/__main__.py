@@ -19,6 +19,10 @@ TESTS = Path(__file__).parents[1]
 ROUNDS = 11
 UNIT = "import numpy"
 MAIN = "from safeamp.cli import main; main()"
+HEATSINK = ("heatsink", "--fins", "150x75x35 mm", "--thickness", "2 mm", "--count", "14", "--power", "20 W")
+HEATSINK += ("--air", "40 degC")
+SOA = ("soa", "--split-rail", "35 V", "--load", "8 ohm", "--case-temperature", "60 degC")
+SOA += ("--device", "to3-npn-140v-150w")
 
 #: What is run -> (arguments of the interpreter, goal as a ratio or None).
 RUNS: dict[str, tuple[tuple[str, ...], float | None]] = {
@@ -30,6 +34,11 @@ RUNS: dict[str, tuple[tuple[str, ...], float | None]] = {
     "import safeamp.quantities": (("-c", "import safeamp.quantities"), None),
     "import reading": (("-c", "import safeamp.reading"), None),
     "import checks and studies": (("-c", "import safeamp.studies.verdict"), None),
+    "safeamp offset": (("-c", MAIN, "offset", "--reading", "30 mV", "--dc-resistance", "6 ohm"), 3.5),
+    "safeamp capacitor": (("-c", MAIN, "capacitor", "--cutoff", "20 Hz", "--load", "8 ohm"), 3.5),
+    "safeamp heatsink by ruler": (("-c", MAIN, *HEATSINK), 3.5),
+    "safeamp soa": (("-c", MAIN, *SOA), 3.5),
+    "safeamp loudspeaker": (("-c", MAIN, "loudspeaker", "--split-rail", "35 V", "--load", "8 ohm"), 3.5),
     "safeamp --help": (("-c", MAIN, "--help"), 1.2),
     "safeamp check, split rail": (("-c", MAIN, "check", str(TESTS / "scenarios" / "split_rail.toml")), 4.5),
     "safeamp check, 4096 corners": (("-c", MAIN, "check", str(TESTS / "bench" / "twelve.toml")), 5.5),

@@ -1,0 +1,1 @@
+"""Quick answers without a sheet: one file a command, each (options, limits) -> answer."""
