@@ -16,9 +16,28 @@ S = np.array([1.0, 0.0])
 
 
 def admittance(
-    driver: Driver, *, series_resistor: float = 0.0, capacitance: float | None = None
+    *, driver: Driver, series_resistor: float = 0.0, capacitance: float | None = None
 ) -> tuple[Coefficients, Coefficients]:
-    """Return numerator and denominator in s of the admittance of one driver with what stands in series."""
+    """Return numerator and denominator in s, highest power first, of the admittance of a driver, A/V.
+
+    Parameters
+    ----------
+    driver : Driver
+        Single numbers.
+    series_resistor, capacitance : float
+        ohm, >= 0, and F, > 0, in series with it; None without a capacitor.
+
+    Raises
+    ------
+    ValueError
+        If the resistor is below zero or the capacitance not greater than zero.
+
+    References
+    ----------
+    Derived: one over the sum of the impedances, cleared of fractions.
+    """
+    non_negative(series_resistor=series_resistor)
+    positive(capacitance=1.0 if capacitance is None else capacitance)
     parts = driver.motional
     moving = np.array(
         [float(parts.capacitance), 1.0 / float(parts.resistance), 1.0 / float(parts.inductance)]
@@ -62,7 +81,9 @@ def _norm(
         return float("nan")
     driver = Driver(dc_resistance, Motional(resistance, capacitance, inductance), coil_inductance)
     in_series = None if np.isinf(series_capacitance) else series_capacitance
-    return _variation(fractions(*admittance(driver, series_resistor=series_resistor, capacitance=in_series)))
+    return _variation(
+        fractions(*admittance(driver=driver, series_resistor=series_resistor, capacitance=in_series))
+    )
 
 
 def admittance_norm(

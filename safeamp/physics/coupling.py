@@ -49,7 +49,7 @@ def response(
     """
     _checked(driver, capacitance, series_resistor)
     positive(frequency=frequency)
-    load = complex_impedance(driver, frequency)
+    load = complex_impedance(driver=driver, frequency=frequency)
     before = array(series_resistor) + 1 / (2j * np.pi * array(frequency) * array(capacitance))
     reference = array(driver.dc_resistance) / (array(driver.dc_resistance) + array(series_resistor))
     return np.abs(load / (load + before)) / reference
@@ -211,7 +211,7 @@ def turn_on_displacement(
     _checked(driver, capacitance, series_resistor)
     positive(force_factor=force_factor)
     non_negative(rise_time=rise_time)
-    _, through = admittance(driver, series_resistor=series_resistor, capacitance=capacitance)
+    _, through = admittance(driver=driver, series_resistor=series_resistor, capacitance=capacitance)
     travel = fractions(np.array([1.0 / force_factor, 0.0]), through)
     times = travel.times()
     if rise_time == 0:

@@ -227,14 +227,32 @@ def _turning(frequency: ArrayLike) -> Complex:
     return s
 
 
-def complex_impedance(driver: Driver, frequency: ArrayLike) -> Complex:
-    """Return the complex impedance, ohm, at frequencies, Hz, that broadcast against the driver's values."""
+def complex_impedance(*, driver: Driver, frequency: ArrayLike) -> Complex:
+    """Return the complex impedance of a driver, ohm.
+
+    Parameters
+    ----------
+    driver : Driver
+        Its values broadcast against the frequencies.
+    frequency : array_like
+        Hz, >= 0; at zero the coil alone is left.
+
+    Raises
+    ------
+    ValueError
+        If a frequency is below zero.
+
+    References
+    ----------
+    Derived: coil and inductance in series with the motional branch.
+    """
+    non_negative(frequency=frequency)
     s = _turning(frequency)
-    found: Complex = array(driver.dc_resistance) + s * array(driver.inductance) + s / moving(driver, s)
+    found: Complex = array(driver.dc_resistance) + s * array(driver.inductance) + s / _moving(driver, s)
     return found
 
 
-def moving(driver: Driver, s: Complex) -> Complex:
+def _moving(driver: Driver, s: Complex) -> Complex:
     """Return s over the motional impedance, which stays finite at no frequency."""
     parts = driver.motional
     found: Complex = (
@@ -262,8 +280,7 @@ def impedance(*, driver: Driver, frequency: ArrayLike) -> tuple[Array, Array]:
     ----------
     Derived: coil and inductance in series with the motional branch.
     """
-    non_negative(frequency=frequency)
-    found = complex_impedance(driver, frequency)
+    found = complex_impedance(driver=driver, frequency=frequency)
     return np.abs(found), np.rad2deg(np.angle(found))
 
 
@@ -315,7 +332,7 @@ def excursion(*, driver: Driver, force_factor: ArrayLike, peak: ArrayLike, frequ
     non_negative(peak=peak, frequency=frequency)
     s = _turning(frequency)
     coil = array(driver.dc_resistance) + s * array(driver.inductance)
-    return array(peak) / (array(force_factor) * np.abs(s + coil * moving(driver, s)))
+    return array(peak) / (array(force_factor) * np.abs(s + coil * _moving(driver, s)))
 
 
 def largest_excursion(

@@ -22,6 +22,7 @@ __all__ = [
     "minimum_allowed_impedance",
     "noise_voltage",
     "power_change",
+    "programme_power",
     "rated_noise_power",
     "settled_coil_temperature",
     "time_to_temperature",
@@ -84,6 +85,30 @@ def noise_voltage(*, power: ArrayLike, impedance: ArrayLike) -> Array:
     non_negative(power=power)
     positive(impedance=impedance)
     return np.sqrt(array(power) * array(impedance))
+
+
+def programme_power(*, power: ArrayLike, crest_factor: ArrayLike) -> Array:
+    """Return the power, W, of a programme whose peaks reach those of a sine.
+
+    Parameters
+    ----------
+    power : array_like
+        W of the sine, >= 0.
+    crest_factor : array_like
+        Peak over rms of the programme, > 0.
+
+    Raises
+    ------
+    ValueError
+        If a value is outside its range.
+
+    References
+    ----------
+    Derived: the peak power of a sine is twice its power, that of a programme its crest factor squared.
+    """
+    non_negative(power=power)
+    positive(crest_factor=crest_factor)
+    return 2 * array(power) / array(crest_factor) ** 2
 
 
 def crest_decibels(*, crest_factor: ArrayLike) -> Array:

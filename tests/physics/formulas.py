@@ -232,6 +232,7 @@ FORMULAS = (
     Formula(limiter, "shorted_power", "W", {"shorted_current": (1.8, P, "A"), "half_supply": (23.0, P, "V")}),
     Formula(loudspeaker, "rated_noise_power", "W", {"power": (100.0, N, "W")}, {"word": "programme"}),
     Formula(loudspeaker, "noise_voltage", "V", {"power": (125.0, N, "W"), "impedance": (6.0, P, "ohm")}),
+    Formula(loudspeaker, "programme_power", "W", {"power": (50.0, N, "W"), "crest_factor": (4.0, P, "")}),
     Formula(loudspeaker, "crest_decibels", "", {"crest_factor": (2.0, P, "")}),
     Formula(loudspeaker, "power_change", "", {"resistance_ratio": (1.8, P, "")}),
     Formula(loudspeaker, "minimum_allowed_impedance", "ohm", {

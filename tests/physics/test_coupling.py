@@ -103,7 +103,7 @@ def test_a_step_moves_the_cone_most():
 
 
 def test_admittance_blocks_direct_current():
-    top, bottom = any_signal.admittance(woofer(), capacitance=1000e-6)
+    top, bottom = any_signal.admittance(driver=woofer(), capacitance=1000e-6)
     assert np.polyval(top, 0.0) / np.polyval(bottom, 0.0) == 0.0
 
 

@@ -115,6 +115,13 @@ def test_direct_voltage_moves_the_cone_as_the_offset_does():
     assert moved == pytest.approx(float(alone))
 
 
+def test_complex_impedance_is_that_of_a_ladder_of_elements():
+    driver, turn = woofer(0.5e-3), 2j * np.pi * 55.0
+    branch = 1 / (1 / 60.0 + turn * driver.motional.capacitance + 1 / (turn * driver.motional.inductance))
+    found = drivers.complex_impedance(driver=driver, frequency=55.0)
+    assert found == pytest.approx(complex(6.0 + turn * 0.5e-3 + branch))
+
+
 def test_impedance_at_the_ends_of_the_band():
     magnitude, angle = drivers.impedance(driver=woofer(0.5e-3), frequency=[0.0, 1e5])
     assert magnitude[0] == pytest.approx(6.0)

@@ -92,3 +92,10 @@ def test_fault_of_a_6_ohm_coil(volts, amperes, watts):
     fault = {"voltage": volts, "dc_resistance": 6}
     assert loudspeaker.dc_fault_current(**fault) == pytest.approx(amperes)
     assert loudspeaker.dc_fault_power(**fault) == pytest.approx(watts)
+
+
+def test_power_of_a_programme_with_the_peaks_of_a_sine():
+    # 80 W sine into 8 ohm: 160 W at the peak. 12 dB crest: 160/15.85 W; a square wave: 160 W; a sine: 80 W
+    crest = [10 ** (12.0 / 20), loudspeaker.CREST_FACTORS["square"], loudspeaker.CREST_FACTORS["sine"]]
+    found = loudspeaker.programme_power(power=80.0, crest_factor=crest)
+    assert found == pytest.approx([10.095, 160.0, 80.0], rel=1e-4)
