@@ -3,8 +3,9 @@
 Numbers are SI floats, or arrays over the flat case axis (index 0 nominal); temperatures in degC, angles in deg.
 """
 
+from safeamp.amplifier.cases import at_case, number_of_cases
 from safeamp.amplifier.keys import Key, keys_of
-from safeamp.amplifier.load import Limiter, Loudspeaker, Readings
+from safeamp.amplifier.load import Curve, Limiter, Loudspeaker, Readings
 from safeamp.amplifier.power import Fins, Fuse, Heatsink, Mains, Protection, Supply
 from safeamp.amplifier.sheet import Assumption, Entry, Sheet
 from safeamp.amplifier.stage import Device, OutputCapacitor, Stage
@@ -14,6 +15,7 @@ __all__ = [
     "TABLES",
     "Amplifier",
     "Assumption",
+    "Curve",
     "Device",
     "Entry",
     "Fins",
@@ -29,7 +31,9 @@ __all__ = [
     "Sheet",
     "Stage",
     "Supply",
+    "at_case",
     "keys_of",
+    "number_of_cases",
     "value_at",
     "with_values",
     "written_key",

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 
 from safeamp.amplifier.keys import count, flag, internal, number, special, word
 from safeamp.quantities import (
@@ -37,6 +37,16 @@ class Limiter:
     text: str = ""
 
 
+@dataclass(frozen=True)
+class Curve:
+    """A measured impedance: Hz (rising), ohm and deg of each point, and the file that holds them."""
+
+    frequencies: tuple[float, ...] = field(repr=False)
+    impedances: tuple[float, ...] = field(repr=False)
+    phases: tuple[float, ...] = field(repr=False)
+    text: str = ""
+
+
 @dataclass(frozen=True, eq=False, kw_only=True)
 class Loudspeaker:
     """The load: a loudspeaker or a resistor."""
@@ -49,7 +59,13 @@ class Loudspeaker:
         why="what an amplifier is made for",
     )
     parallel: Number | None = count(
-        "loudspeakers driven at once", believable=(1, 16), default="1", why="one loudspeaker"
+        "loudspeakers driven at once, or branches of several in series",
+        believable=(1, 16),
+        default="1",
+        why="one loudspeaker",
+    )
+    series: Number | None = count(
+        "loudspeakers in series in each branch", believable=(1, 16), default="1", why="one loudspeaker"
     )
     nominal_impedance: Number | None = number(
         RESISTANCE, "nominal impedance on the label", required=True, believable=OHMS
@@ -80,7 +96,7 @@ class Loudspeaker:
         default="20 Hz",
         why="the low end of hearing",
     )
-    impedance_curve: str | None = special("file", "CSV with frequency [Hz], impedance [ohm], phase [deg]")
+    impedance_curve: Curve | None = special("file", "CSV with frequency [Hz], impedance [ohm], phase [deg]")
     resonance: Number | None = number(
         FREQUENCY, "resonance of the driver", symbol="f_s", believable=(5.0, 2000.0)
     )

@@ -16,7 +16,7 @@ def as_built(amplifier: Amplifier, limit: Limit, label: Limit) -> AsBuilt:
     """Return whether the maker's own ratings cover this load, these devices and this mains."""
     table, mains = amplifier.stage, amplifier.mains
     most = limit.extra["as_built_mains_over_rated"]
-    load = nominal(operating.believed_nominal(amplifier) / needed(amplifier, "loudspeaker.parallel")[0])
+    load = nominal(operating.believed_nominal(amplifier) * operating.together(amplifier))
     conditions = {
         "stage.rated_load": table.rated_load is not None and nominal(table.rated_load) <= load * (1.0 + 1e-9),
         "stage.original_devices": table.original_devices is True,

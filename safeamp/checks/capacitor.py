@@ -6,17 +6,20 @@ import numpy as np
 
 from safeamp.amplifier import Amplifier
 from safeamp.checks import operating, thermal
+from safeamp.checks.driver import in_series, is_started, parameters_of, seen_driver
 from safeamp.checks.offset import DIRECT
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
 from safeamp.checks.words import level, nominal, text
 from safeamp.findings import Also, Measure, NotApplicable, Remark, Step, Verdict
 from safeamp.limits import Limits
-from safeamp.physics import capacitor, offset, preferred, stage
+from safeamp.physics import capacitor, coupling, offset, preferred, stage
+from safeamp.physics.driver import Driver
 from safeamp.quantities import (
     CAPACITANCE,
     CURRENT,
     FREQUENCY,
+    LEVEL,
     POWER,
     RATIO,
     RESISTANCE,
@@ -25,6 +28,9 @@ from safeamp.quantities import (
     Number,
     Origin,
 )
+
+INTO_MINIMUM = "1/(2 pi R C) into the minimum impedance"
+INTO_DRIVER = "response through the capacitor into coil and motional impedance, over that of middle notes"
 
 
 @finding("capacitor.wear", Step.COLD_CHECKS, RATIO)
@@ -53,20 +59,48 @@ def _load_ohms(amplifier: Amplifier) -> Number:
 
 @finding("capacitor.cutoff", Step.COLD_CHECKS, FREQUENCY)
 def check_cutoff(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicable:
-    """-3 dB frequency into the minimum impedance against the target."""
+    """-3 dB frequency against the target: into the driver where its parameters are given, else into the minimum."""
     if not operating.is_capacitor_coupled(amplifier):
         return NotApplicable(DIRECT)
     farads, target = needed(amplifier, "output_capacitor.capacitance", "output_capacitor.target_cutoff")
-    ohms = _load_ohms(amplifier)
-    value = capacitor.cutoff_frequency(capacitance=farads, load_resistance=ohms)
+    ohms, driver = _load_ohms(amplifier), seen_driver(amplifier)
+    plain = capacitor.cutoff_frequency(capacitance=farads, load_resistance=ohms)
+    value = plain if driver is None else _into_driver(amplifier, driver, farads)
+    into = text(ohms, RESISTANCE) if driver is None else "the driver and its resonance"
     return Measure(
         value,
-        f"-3 dB at {text(value, FREQUENCY)} with {text(farads, CAPACITANCE)} into {text(ohms, RESISTANCE)}",
+        f"-3 dB at {text(value, FREQUENCY)} with {text(farads, CAPACITANCE)} into {into}",
         go=target,
         without_stop=True,
-        also=_size(target, ohms),
+        remarks=_unfinished(amplifier, driver),
+        needs=() if driver is not None or not is_started(amplifier) else parameters_of(amplifier).missing(),
+        also=(*_peak(amplifier, driver, farads, plain), *_size(target, ohms)),
         next="it costs bass, not the amplifier; fit the next larger value if the bass is thin",
-        method="1/(2 pi R C) into the minimum impedance",
+        method=INTO_MINIMUM if driver is None else INTO_DRIVER,
+    )
+
+
+def _into_driver(amplifier: Amplifier, driver: Driver, farads: Number) -> Number:
+    return coupling.cutoff_frequency(driver=driver, capacitance=farads, series_resistor=in_series(amplifier))
+
+
+def _unfinished(amplifier: Amplifier, driver: Driver | None) -> tuple[Remark, ...]:
+    """Return what is said where a driver is begun and not finished: its resonance would change the answer."""
+    if driver is not None or not is_started(amplifier):
+        return ()
+    keys = ", ".join(parameters_of(amplifier).missing())
+    return (Remark(Verdict.UNVERIFIED, f"the driver's resonance is not counted: {keys} not given"),)
+
+
+def _peak(amplifier: Amplifier, driver: Driver | None, farads: Number, plain: Number) -> tuple[Also, ...]:
+    """Return the highest response of the low notes, and the figure into a resistor, beside that into a driver."""
+    if driver is None or np.ndim(plain):
+        return ()
+    level, at = coupling.low_peak(driver=driver, capacitance=farads, series_resistor=in_series(amplifier))
+    return (
+        Also("highest response of the low notes", nominal(level), LEVEL),
+        Also("frequency of that response", nominal(at), FREQUENCY),
+        Also("-3 dB into a resistor of the minimum impedance", nominal(plain), FREQUENCY),
     )
 
 

@@ -8,6 +8,7 @@ import numpy as np
 
 from safeamp.amplifier import Amplifier, Fuse
 from safeamp.checks import operating
+from safeamp.checks.programme import ROOM, programme_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
 from safeamp.checks.words import nominal, text
@@ -18,8 +19,6 @@ from safeamp.physics.coil_heating import time_to_temperature
 from safeamp.physics.fuse import Gates, slowest_time
 from safeamp.quantities import CURRENT, ENERGY, POWER, RATIO, RESISTANCE, TIME, VOLTAGE, Number
 
-#: Room in which the loudspeaker stands, degC.
-ROOM = 25.0
 COPPER = 0.00393
 THERMAL = (
     "loudspeaker.coil_to_magnet",
@@ -64,12 +63,12 @@ def check_power(amplifier: Amplifier, limits: Limits) -> Measure:
     rated, share, parallel = needed(
         amplifier, "loudspeaker.rated_power", "loudspeaker.power_share", "loudspeaker.parallel"
     )
-    each = operating.output_power(amplifier) / parallel
+    each = operating.output_power(amplifier) / parallel / needed(amplifier, "loudspeaker.series")[0]
     noise = rated * share
     return Measure(
         each / noise,
         f"{text(each, POWER)} sine power at clipping, {text(noise, POWER)} rated noise power",
-        also=(Also("power at clipping", nominal(each), POWER),),
+        also=(Also("power at clipping", nominal(each), POWER), *programme_also(amplifier, each)),
         next="look up which kind of power the label means (loudspeaker.power_word); turn back when it sounds strained",
         method="sine power at clipping into the nominal impedance over rated noise power",
     )
@@ -77,7 +76,7 @@ def check_power(amplifier: Amplifier, limits: Limits) -> Measure:
 
 @dataclass(frozen=True, eq=False)
 class Fault:
-    """A direct voltage on the coil, V, and how it gets there."""
+    """A direct voltage on each coil, V, and how it gets there."""
 
     volts: Number
     how: str
@@ -85,11 +84,11 @@ class Fault:
 
 def fault_of(amplifier: Amplifier) -> Fault:
     """Return the direct voltage that one shorted device of each side puts on the coil."""
-    rail = operating.no_load_rail(amplifier)
+    rail, (series,) = operating.no_load_rail(amplifier), needed(amplifier, "loudspeaker.series")
     if amplifier.stage.bridged:
         total = rail if operating.is_single(amplifier) else 2.0 * rail
-        return Fault(total, "one device of each side shorted")
-    return Fault(rail, "one device shorted")
+        return Fault(total / series, "one device of each side shorted")
+    return Fault(rail / series, "one device shorted")
 
 
 def capacitor_holds(amplifier: Amplifier) -> Number:
@@ -141,8 +140,9 @@ def _step_also(amplifier: Amplifier) -> tuple[Also, ...]:
         )
     ]
     if coil is not None:
-        found.append(Also("current with only the capacitor shorted", nominal(middle / coil), CURRENT))
-        found.append(Also("power with only the capacitor shorted", nominal(middle**2 / coil), POWER))
+        volts = middle / needed(amplifier, "loudspeaker.series")[0]
+        found.append(Also("current with only the capacitor shorted", nominal(volts / coil), CURRENT))
+        found.append(Also("power with only the capacitor shorted", nominal(volts**2 / coil), POWER))
     return tuple(found)
 
 
@@ -163,7 +163,7 @@ def _stopped_in_time(
         everywhere=True,
         remarks=(
             *_trip_remarks(amplifier, limits),
-            *_contact_remarks(fault, relay, fuse, burns_after, limits),
+            *_contact_remarks(amplifier, fault, relay, fuse, burns_after, limits),
         ),
         also=(*also, *_times(acts_after, burns_after)),
         next="a relay with a DC detector, or a loudspeaker fuse, must act before the coil reaches its limit",
@@ -186,7 +186,8 @@ def _nothing_fitted(amplifier: Amplifier) -> bool:
 def heating(amplifier: Amplifier, fault: Fault) -> dict[str, Number]:
     """Return what heats the coil of one loudspeaker, from where one eighth of clipping power has warmed it."""
     coil, to_magnet, fast, to_air, slow, limit = needed(amplifier, "loudspeaker.dc_resistance", *THERMAL)
-    each = operating.output_power(amplifier) / needed(amplifier, "loudspeaker.parallel")[0]
+    parallel, series = needed(amplifier, "loudspeaker.parallel", "loudspeaker.series")
+    each = operating.output_power(amplifier) / parallel / series
     start = ROOM + each / 8.0 * (to_magnet + to_air)
     return {
         "voltage": fault.volts,
@@ -266,11 +267,12 @@ def _trip_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
 
 
 def _contact_remarks(
-    fault: Fault, relay: Number, fuse: Number, burns_after: Number, limits: Limits
+    amplifier: Amplifier, fault: Fault, relay: Number, fuse: Number, burns_after: Number, limits: Limits
 ) -> tuple[Remark, ...]:
     above = limits["loudspeaker.dc_fault"].extra["contacts_caution_above"]
     leans_on_relay = np.isfinite(nominal(relay)) and not nominal(fuse) < nominal(burns_after)
-    if not leans_on_relay or not np.any(np.asarray(fault.volts) > above * (1.0 + 1e-9)):
+    whole = np.asarray(fault.volts) * needed(amplifier, "loudspeaker.series")[0]
+    if not leans_on_relay or not np.any(whole > above * (1.0 + 1e-9)):
         return ()
     return (
         Remark(Verdict.CAUTION, f"relay contacts on more than {above:.0f} V DC: are they rated to break it?"),

@@ -8,13 +8,14 @@ import numpy as np
 
 from safeamp.amplifier import Amplifier, value_at
 from safeamp.checks import operating
+from safeamp.checks.driver import switch_on_travel
 from safeamp.checks.registry import finding
-from safeamp.checks.trace import needed
+from safeamp.checks.trace import aside, needed
 from safeamp.checks.words import nominal, text
 from safeamp.findings import Also, Measure, NotApplicable, Step
 from safeamp.limits import Limits
 from safeamp.physics import capacitor, offset
-from safeamp.quantities import LENGTH, PERCENT, POWER, RATIO, VOLTAGE, Number
+from safeamp.quantities import ENERGY, LENGTH, PERCENT, POWER, RATIO, TIME, VOLTAGE, Number
 
 COUPLED = 'stage.coupling is "capacitor"'
 DIRECT = 'stage.coupling is "direct"'
@@ -62,6 +63,7 @@ def _coil(amplifier: Amplifier, volts: Number) -> tuple[Also, ...]:
     table = amplifier.loudspeaker
     if table.dc_resistance is None:
         return ()
+    volts = volts / needed(amplifier, "loudspeaker.series")[0]
     power = offset.coil_power(voltage=volts, dc_resistance=table.dc_resistance)
     found = [Also("power in the coil", nominal(power), POWER)]
     if table.force_factor is not None and table.compliance is not None:
@@ -102,20 +104,42 @@ def check_midpoint(amplifier: Amplifier, limits: Limits) -> Measure | NotApplica
     return Measure(
         np.abs(error),
         f"midpoint {text(middle, VOLTAGE)}, {text(error, PERCENT)} from half the rail",
-        also=_turn_on(amplifier),
+        also=() if np.ndim(error) else (*_turn_on(amplifier), *_settling(amplifier)),
         next="set the midpoint to half the rail, warm, then read it again",
         method="(midpoint - half the rail) over half the rail",
     )
 
 
 def _turn_on(amplifier: Amplifier) -> tuple[Also, ...]:
+    amplifier = aside(amplifier)
     table = amplifier.output_capacitor
     if table.rise_time is None or table.capacitance is None:
         return ()
-    peak = capacitor.turn_on_peak(
-        capacitance=table.capacitance,
-        load_resistance=operating.nominal_load(amplifier)[0],
-        midpoint=operating.midpoint(amplifier),
-        rise_time=table.rise_time,
+    charging = {
+        "capacitance": table.capacitance,
+        "load_resistance": operating.nominal_load(amplifier)[0],
+        "midpoint": operating.midpoint(amplifier),
+        "rise_time": table.rise_time,
+    }
+    peak, energy = capacitor.turn_on_peak(**charging), capacitor.turn_on_energy(**charging)
+    shared = peak / needed(amplifier, "loudspeaker.series")[0]
+    return (
+        Also("peak across the loudspeaker at switch-on", nominal(peak), VOLTAGE),
+        Also("energy into the loudspeaker at switch-on", nominal(energy), ENERGY),
+        *switch_on_travel(amplifier, shared),
     )
-    return (Also("peak across the loudspeaker at switch-on", nominal(peak), VOLTAGE),)
+
+
+def _settling(amplifier: Amplifier) -> tuple[Also, ...]:
+    """Return how long the output capacitor takes to charge through the load, and to empty through its bleeder."""
+    table = aside(amplifier).output_capacitor
+    if table.capacitance is None:
+        return ()
+    ohms = operating.nominal_load(amplifier)[0]
+    charged = capacitor.settling_time(capacitance=table.capacitance, resistance=ohms)
+    rise = 0.0 if table.rise_time is None else table.rise_time
+    found = [Also("output settles after switch-on in", nominal(charged + rise), TIME)]
+    if table.bleeder is not None:
+        emptied = capacitor.settling_time(capacitance=table.capacitance, resistance=table.bleeder)
+        found.append(Also("capacitor empties through the bleeder in", nominal(emptied), TIME))
+    return tuple(found)

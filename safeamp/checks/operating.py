@@ -98,7 +98,7 @@ def half(amplifier: Amplifier, rail: Number) -> Number:
     return rail / 2.0 if is_single(amplifier) else rail
 
 
-def level_half_supply(amplifier: Amplifier, fraction: float) -> Number:
+def level_half_supply(amplifier: Amplifier, fraction: Number) -> Number:
     """Return half the supply while a fraction of clipping power is played, V."""
     rail = supply.level_rail(
         no_load=no_load_rail(amplifier), full_load=full_load_rail(amplifier), fraction=fraction
@@ -220,10 +220,19 @@ def believed_minimum(amplifier: Amplifier) -> Number:
     return np.where(np.isnan(nominal), np.nan, believed)
 
 
-def _seen(amplifier: Amplifier, impedance: Number, angle: Number) -> tuple[Number, Number]:
-    """Return magnitude and angle that one side sees: loudspeakers in parallel, series resistor, bridged halves."""
-    (parallel,) = needed(amplifier, "loudspeaker.parallel")
-    magnitude, turned = impedance / parallel, angle
+def together(amplifier: Amplifier) -> Number:
+    """Return the impedance of all loudspeakers together over that of one: in series more, in parallel less."""
+    parallel, series = needed(amplifier, "loudspeaker.parallel", "loudspeaker.series")
+    share: Number = series / parallel
+    return share
+
+
+def of_loudspeaker(amplifier: Amplifier, impedance: Number, angle: Number) -> tuple[Number, Number]:
+    """Return magnitude (ohm) and angle (deg) that one side sees of loudspeakers of an impedance each.
+
+    Loudspeakers in parallel and in series, a series resistor and the halves of a bridge count.
+    """
+    magnitude, turned = impedance * together(amplifier), angle
     if amplifier.stage.series_resistor is not None:
         magnitude, turned = stage.load_combination(
             impedance=magnitude, phase_angle=angle, series_resistor=amplifier.stage.series_resistor
@@ -233,12 +242,12 @@ def _seen(amplifier: Amplifier, impedance: Number, angle: Number) -> tuple[Numbe
 
 def nominal_load(amplifier: Amplifier, angle: Number = 0.0) -> tuple[Number, Number]:
     """Return the nominal load of one side as magnitude (ohm) and angle (deg)."""
-    return _seen(amplifier, believed_nominal(amplifier), angle)
+    return of_loudspeaker(amplifier, believed_nominal(amplifier), angle)
 
 
 def minimum_load(amplifier: Amplifier, angle: Number = 0.0) -> tuple[Number, Number]:
     """Return the minimum load of one side as magnitude (ohm) and angle (deg)."""
-    return _seen(amplifier, believed_minimum(amplifier), angle)
+    return of_loudspeaker(amplifier, believed_minimum(amplifier), angle)
 
 
 def behind_capacitor(
@@ -260,7 +269,10 @@ def behind_capacitor(
 
 
 def phase_angle(amplifier: Amplifier) -> Number:
-    """Return the angle that counts, deg: never below 45 without a curve."""
+    """Return the largest angle that counts, deg: that of the curve, never below 45 without one."""
+    curve = amplifier.loudspeaker.impedance_curve
+    if curve is not None:
+        return float(np.max(np.abs(curve.phases)))
     (angle,) = needed(amplifier, "loudspeaker.phase_angle")
     return np.maximum(angle, LEAST_ANGLE)
 

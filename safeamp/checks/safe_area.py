@@ -9,8 +9,9 @@ from typing import Any
 import numpy as np
 
 from safeamp.amplifier import Amplifier
-from safeamp.checks import operating, thermal
+from safeamp.checks import curve, operating, thermal
 from safeamp.checks.as_built import as_built
+from safeamp.checks.driver import any_signal_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import needed
 from safeamp.checks.words import idle_remarks, nominal, sharing_remarks, text
@@ -18,7 +19,18 @@ from safeamp.findings import Also, Measure, Remark, Step, Verdict
 from safeamp.limits import Limits
 from safeamp.physics import safe_area
 from safeamp.physics.safe_area import ZONES, Rating, Use
-from safeamp.quantities import CURRENT, POWER, RATIO, RESISTANCE, TEMPERATURE, VOLTAGE, Number, Origin, show
+from safeamp.quantities import (
+    CURRENT,
+    FREQUENCY,
+    POWER,
+    RATIO,
+    RESISTANCE,
+    TEMPERATURE,
+    VOLTAGE,
+    Number,
+    Origin,
+    show,
+)
 
 #: Angle at which the minimum impedance is judged, deg.
 MINIMUM_ANGLE = 30.0
@@ -32,6 +44,7 @@ OPEN_LOAD_IDLE = 0.25
 OPEN_LOAD = 1e6
 SIDES = ("upper", "lower")
 METHOD = "DC safe area at case temperature, closed-form envelope of all angles, class-AB law"
+CURVE_METHOD = "DC safe area at case temperature, every point of the impedance curve, class-AB law"
 NEXT = (
     "a load of higher impedance, lower mains, a cooler heatsink or stronger devices clear it; "
     "no loudspeaker while it is unverified or stop"
@@ -113,6 +126,8 @@ class Worst:
     case: Number
     side: str
     load: Load
+    frequency: float = np.nan
+    """Hz of the worst point of a curve; nan without one."""
 
 
 def _worst(amplifier: Amplifier, loads: tuple[Load, ...], fraction: float, angle: Number) -> Worst:
@@ -125,6 +140,34 @@ def _worst(amplifier: Amplifier, loads: tuple[Load, ...], fraction: float, angle
     use = reduce(np.maximum, [one[0].use for one in found])
     unknown = reduce(np.logical_or, [one[0].enters_unknown for one in found])
     return Worst(use, unknown, point, case, side, load)
+
+
+def _worst_of_curve(amplifier: Amplifier, points: curve.Points) -> Worst:
+    """Return the worst use over sides and over every point of a measured curve."""
+    heating, found = curve.heating_load(amplifier, points, thermal.ONE_EIGHTH), []
+    for side in sides_to_judge(amplifier):
+        case = thermal.hotter_case(amplifier, side, thermal.ONE_EIGHTH, load=heating)
+        found.append((_of_curve(amplifier, points, side, case), case, side))
+    worst, case, side = max(found, key=lambda one: _sortable(one[0].point.use))
+    use = reduce(np.maximum, [one[0].use for one in found])
+    unknown = reduce(np.logical_or, [one[0].unknown for one in found])
+    point = points.at(worst.place)
+    load = _curve_load(amplifier, point)
+    return Worst(use, unknown, worst.point, case, side, load, float(point.frequency))
+
+
+def _of_curve(amplifier: Amplifier, points: curve.Points, side: str, case: Number) -> curve.OfCurve:
+    def use_into(one: Amplifier, magnitude: Number, angle: Number, warm: Number) -> Use:
+        driven = _drive(one, side, Load(magnitude, angle, ""))
+        return safe_area.angle_use(**driven, case_temperature=warm, rating=rating_of(one, side))
+
+    return curve.worst_use(amplifier, points, case, use_into)
+
+
+def _curve_load(amplifier: Amplifier, point: curve.Points) -> Load:
+    magnitude, angle = curve.seen(amplifier, point)
+    turned = f"{text(magnitude, RESISTANCE)} at {nominal(angle):.0f} deg"
+    return Load(magnitude, angle, f"{turned}, {show(float(point.frequency), FREQUENCY)} of the curve")
 
 
 def _sortable(use: Number) -> float:
@@ -168,11 +211,12 @@ def _needs(amplifier: Amplifier) -> tuple[str, ...]:
 
 def _point(worst: Worst) -> dict[str, float | str]:
     zone = int(nominal(worst.point.zone))
-    return {
+    found: dict[str, float | str] = {
         "voltage": nominal(worst.point.voltage),
         "current": nominal(worst.point.current),
         "zone": ZONES[zone],
     }
+    return found if np.isnan(worst.frequency) else {**found, "frequency": worst.frequency}
 
 
 def _says(worst: Worst, use: Number) -> str:
@@ -233,7 +277,10 @@ def _usable(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
 
 
 def worst_into_loudspeaker(amplifier: Amplifier) -> Worst:
-    """Return the worst use into the loudspeaker."""
+    """Return the worst use into the loudspeaker: with a measured curve every point counts, and nothing else."""
+    points = curve.points_of(amplifier)
+    if points is not None:
+        return _worst_of_curve(amplifier, points)
     angle = operating.phase_angle(amplifier)
     return _worst(amplifier, loads(amplifier, angle), thermal.ONE_EIGHTH, angle)
 
@@ -250,9 +297,9 @@ def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
         unknown=worst.unknown,
         needs=_needs(amplifier),
         at=_point(worst),
-        also=(*_at_sixty(amplifier, worst), *open_load, *_usable(amplifier, worst)),
+        also=(*_beside(amplifier, worst), *open_load, *_usable(amplifier, worst)),
         next=NEXT,
-        method=METHOD,
+        method=METHOD if np.isnan(worst.frequency) else CURVE_METHOD,
         as_built=as_built(amplifier, limits["soa.loudspeaker"], limits["loudspeaker.label"]),
     )
 
@@ -282,9 +329,14 @@ def _low_notes(amplifier: Amplifier, load: Load) -> tuple[Load, ...]:
     return tuple(Load(magnitude, turned, name) for magnitude, turned in seen)
 
 
-def _at_sixty(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
+def _beside(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
     if np.ndim(worst.use):  # only the nominal figure is shown: over the corners it would be work for nothing
         return ()
+    sixty = _at_sixty(amplifier, worst) if np.isnan(worst.frequency) else ()
+    return (*sixty, *any_signal_also(amplifier))
+
+
+def _at_sixty(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
     magnitude, turned = operating.nominal_load(amplifier, SHOWN_ANGLE)
     load = Load(magnitude, turned, "60 deg")
     use = _use_of(amplifier, worst.side, load, worst.case, rating_of(amplifier, worst.side))

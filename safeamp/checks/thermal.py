@@ -37,9 +37,11 @@ def no_signal(amplifier: Amplifier) -> Dissipation:
     return Dissipation(power, idle)
 
 
-def at_level(amplifier: Amplifier, fraction: float, angle: Number = 0.0) -> Dissipation:
-    """Return the heat of a sine at a fraction of clipping power into the nominal load at an angle."""
-    magnitude, turned = operating.nominal_load(amplifier, angle)
+def at_level(
+    amplifier: Amplifier, fraction: Number, angle: Number = 0.0, load: tuple[Number, Number] | None = None
+) -> Dissipation:
+    """Return the heat of a sine at a fraction of clipping power into the nominal load at an angle, or into another."""
+    magnitude, turned = operating.nominal_load(amplifier, angle) if load is None else load
     peak = stage.level_peak(clipping_peak=operating.clipping_peak(amplifier), fraction=fraction)
     upper, lower = operating.sides(amplifier)
     laws = {operating.law_of(side.device): side.device for side in (upper, lower)}
@@ -54,7 +56,7 @@ def _worse(one: Dissipation, other: Dissipation) -> Dissipation:
 
 
 def _sine(
-    amplifier: Amplifier, device: Device, fraction: float, peak: Number, magnitude: Number, angle: Number
+    amplifier: Amplifier, device: Device, fraction: Number, peak: Number, magnitude: Number, angle: Number
 ) -> Dissipation:
     common = {
         "conducting": operating.conducting(amplifier),
@@ -179,8 +181,14 @@ def device_value(amplifier: Amplifier, side: str, name: str) -> Number:
     return value
 
 
-def hotter_case(amplifier: Amplifier, side: str, fraction: float, angle: Number = 0.0) -> Number:
+def hotter_case(
+    amplifier: Amplifier,
+    side: str,
+    fraction: float,
+    angle: Number = 0.0,
+    load: tuple[Number, Number] | None = None,
+) -> Number:
     """Return the case temperature of a side's hottest device at the hotter of no signal and a level, degC."""
     quiet = temperatures(amplifier, no_signal(amplifier), side)
-    loud = temperatures(amplifier, at_level(amplifier, fraction, angle), side)
+    loud = temperatures(amplifier, at_level(amplifier, fraction, angle, load), side)
     return np.maximum(quiet.case, loud.case)

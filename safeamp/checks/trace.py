@@ -13,10 +13,15 @@ NAN = float("nan")
 
 @dataclass
 class Trace:
-    """Key paths read and key paths found missing, in order."""
+    """Key paths read, key paths found missing, and key paths read for numbers that are only shown, in order."""
 
     reads: dict[str, None] = field(default_factory=dict)
     missing: dict[str, None] = field(default_factory=dict)
+    shown: dict[str, None] = field(default_factory=dict)
+
+    def inputs(self) -> tuple[str, ...]:
+        """Return every key path that was read, for the value or for what is shown beside it."""
+        return tuple(dict.fromkeys((*self.reads, *self.shown)))
 
 
 class _Watched:
@@ -35,6 +40,14 @@ class _Watched:
             return _Watched(found, path, self.trace)
         self.trace.reads[path] = None
         return found
+
+
+def aside(amplifier: Amplifier) -> Amplifier:
+    """Return the amplifier for numbers shown beside a value: what they read moves no corner, and nothing is missing."""
+    trace = getattr(amplifier, "trace", None)
+    if trace is None:
+        return amplifier
+    return cast(Amplifier, _Watched(cast(Any, amplifier)._node, "", Trace(reads=trace.shown)))
 
 
 def _is_table(found: Any) -> bool:

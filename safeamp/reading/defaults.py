@@ -4,9 +4,9 @@ from __future__ import annotations
 
 from typing import Any
 
-from safeamp.amplifier import TABLES, Key, keys_of
+from safeamp.amplifier import TABLES, Curve, Key, keys_of
 from safeamp.limits import Limits
-from safeamp.quantities import PERCENT, RATIO, VOLTAGE, Origin, read, show
+from safeamp.quantities import PERCENT, RATIO, RESISTANCE, VOLTAGE, Origin, read, show
 from safeamp.reading.draft import Draft
 from safeamp.reading.heat_defaults import fill_heat
 from safeamp.reading.midpoint import fill_midpoint
@@ -39,7 +39,7 @@ def _applies(draft: Draft, table: str) -> bool:
 
 
 def _plain(draft: Draft, path: str, key: Key) -> None:
-    if not key.default or path in draft.values or path in draft.written:
+    if not key.default or path in draft.values or path in draft.written or _replaced(draft, path):
         return
     if not key.kinds:
         draft.put(path, key.default == "true" if key.flag else key.default, Origin.ASSUMED)
@@ -47,6 +47,11 @@ def _plain(draft: Draft, path: str, key: Key) -> None:
         value: Any = float(key.default) if key.kinds[0] == RATIO else key.default
         draft.fill(path, read(value, key.kinds[0], sign=key.sign).nominal, key.kinds[0], text=key.default)
     draft.assume(path, key.default, key.why)
+
+
+def _replaced(draft: Draft, path: str) -> bool:
+    """Whether something measured stands in place of a default."""
+    return path == "loudspeaker.phase_angle" and draft.has("loudspeaker.impedance_curve")
 
 
 def _stage(draft: Draft, limits: Limits) -> None:
@@ -102,18 +107,30 @@ def spread_text(low: float, high: float) -> str:
 
 
 def _loudspeaker(draft: Draft, limits: Limits) -> None:
-    if "loudspeaker.minimum_impedance" not in draft.written:
+    curve = draft.values.get("loudspeaker.impedance_curve")
+    if isinstance(curve, Curve):
+        _by_curve(draft, curve)
+    elif "loudspeaker.minimum_impedance" not in draft.written:
         share = limits.default("loudspeaker.minimum_impedance")
         draft.fill("loudspeaker.minimum_share", share.nominal, RATIO, text="80 % of nominal")
         draft.assume("loudspeaker.minimum_impedance", f"{100 * share.nominal:g} % of nominal", share.says)
     angle = draft.number("loudspeaker.phase_angle")
     least = limits.default("loudspeaker.phase_angle").nominal
-    if angle is not None and angle < least and not draft.has("loudspeaker.impedance_curve"):
+    if angle is not None and angle < least and curve is None:
         draft.remarks.append(
             f"loudspeaker.phase_angle of {angle:g} deg counts as {least:g} deg: there is no curve"
         )
     if draft.has("loudspeaker.rated_power"):
         _power_share(draft, limits)
+
+
+def _by_curve(draft: Draft, curve: Curve) -> None:
+    """Take from a measured curve what it says better than a rule: its lowest point, and every angle."""
+    if "loudspeaker.minimum_impedance" not in draft.written:
+        lowest = min(curve.impedances)
+        draft.fill("loudspeaker.minimum_impedance", lowest, RESISTANCE, origin=Origin.STATED, text=curve.text)
+    if draft.has("loudspeaker.phase_angle"):
+        draft.remarks.append("loudspeaker.phase_angle does not count: the impedance curve has every angle")
 
 
 def _power_share(draft: Draft, limits: Limits) -> None:

@@ -7,8 +7,9 @@ from collections.abc import Callable
 from pathlib import Path
 from typing import Any
 
-from safeamp.amplifier import Fuse, Limiter
+from safeamp.amplifier import Curve, Fuse, Limiter
 from safeamp.quantities import CURRENT, POWER, RESISTANCE, Kind, Origin, QuantityError, Reading, read
+from safeamp.reading.curves import read_curve
 from safeamp.reading.draft import Draft
 
 #: Letters of IEC 60127 and the words that the standard gives them.
@@ -68,8 +69,8 @@ def limiter(text: str, _: Draft) -> tuple[Limiter, Origin]:
     return Limiter("resistor", reading.nominal, text), reading.origin
 
 
-def file(text: str, draft: Draft) -> tuple[str, Origin]:
-    """Return the name of a file, relative to the sheet, that must be there."""
+def curve(text: str, draft: Draft) -> tuple[Curve | None, Origin]:
+    """Return the curve of a file, relative to the sheet, that must be there."""
     try:
         there = (Path(draft.folder) / text).is_file()
     except (OSError, ValueError):
@@ -78,7 +79,7 @@ def file(text: str, draft: Draft) -> tuple[str, Origin]:
         raise QuantityError(
             f'"{text}" is not a file beside the sheet', "write its name relative to the sheet"
         )
-    return text, Origin.STATED
+    return read_curve(Path(draft.folder) / text, text, draft), Origin.STATED
 
 
 def _read_off(text: str, value: str, kind: Kind, believable: tuple[float, float]) -> Reading:
@@ -92,5 +93,5 @@ def _read_off(text: str, value: str, kind: Kind, believable: tuple[float, float]
 FORMS: dict[str, Callable[[str, Draft], tuple[Any, Origin]]] = {
     "fuse": fuse,
     "limiter": limiter,
-    "file": file,
+    "file": curve,
 }

@@ -7,14 +7,6 @@ from safeamp.reading.draft import Draft
 #: Key of the sheet (a device's without its name) -> ids of the findings that it would change.
 WOULD_CHANGE: dict[str, tuple[str, ...]] = {
     "device.pulse": ("soa.resistive_load", "soa.loudspeaker"),
-    "device.transient": ("heat.junction",),
-    "loudspeaker.impedance_curve": ("soa.loudspeaker",),
-    "loudspeaker.crest_factor": ("loudspeaker.power",),
-    "loudspeaker.resonance": ("capacitor.cutoff",),
-    "loudspeaker.q_mechanical": ("capacitor.cutoff",),
-    "loudspeaker.q_electrical": ("capacitor.cutoff",),
-    "loudspeaker.inductance": ("capacitor.cutoff",),
-    "loudspeaker.moving_mass": ("capacitor.cutoff",),
 }
 
 
@@ -23,7 +15,7 @@ def unassessed(draft: Draft) -> dict[str, tuple[str, ...]]:
     found = {}
     for key, ids in WOULD_CHANGE.items():
         for path in _written(draft, key):
-            found[path] = tuple(id for id in ids if _applies(draft, id))
+            found[path] = ids
     return found
 
 
@@ -32,8 +24,3 @@ def _written(draft: Draft, key: str) -> list[str]:
     devices = [f"device.{device}.{name}" for device in draft.outputs()]
     paths = devices if table == "device" else [key]
     return [path for path in paths if path in draft.written and path not in draft.absent]
-
-
-def _applies(draft: Draft, id: str) -> bool:
-    """Whether a finding applies to this amplifier: those of the output capacitor need one."""
-    return not (id.startswith("capacitor.") and draft.word("stage.coupling") == "direct")

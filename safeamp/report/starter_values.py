@@ -77,6 +77,7 @@ EXAMPLES: Final[Mapping[str, Any]] = {
     "heatsink.fins.emissivity": 0.8,
     "loudspeaker.load": "loudspeaker",
     "loudspeaker.parallel": 1,
+    "loudspeaker.series": 1,
     "loudspeaker.nominal_impedance": "8 ohm",
     "loudspeaker.minimum_impedance": "6.4 ohm",
     "loudspeaker.phase_angle": "45 deg",

@@ -7,7 +7,7 @@ from dataclasses import dataclass, field, replace
 
 import numpy as np
 
-from safeamp.amplifier import Amplifier, Entry, Fuse, Limiter, Sheet, value_at, written_key
+from safeamp.amplifier import Amplifier, Curve, Entry, Fuse, Limiter, Sheet, value_at, written_key
 from safeamp.checks import Check
 from safeamp.checks.judging import Cases, Judgement, badness, bounds_of, judge, missing_word, nominal_bound
 from safeamp.checks.trace import Trace, watched
@@ -72,7 +72,7 @@ def _remarks(check: Check, bench: Bench, trace: Trace) -> list[Remark]:
     """Return what holds a finding back whatever its number: examples, keys not assessed, a bench load, a limiter."""
     amplifier, found = bench.sheet.amplifier, []
     invented = [
-        path for path in _with_items(bench.sheet, trace.reads) if amplifier.origin(path) is Origin.EXAMPLE
+        path for path in _with_items(bench.sheet, trace.inputs()) if amplifier.origin(path) is Origin.EXAMPLE
     ]
     if invented and not bench.demo:
         keys = ", ".join(dict.fromkeys(written_key(path) for path in invented[:3]))
@@ -272,11 +272,11 @@ def _overturned_by(measure: Measure, design: Design, limit: Limit, bench: Bench)
 
 def _inputs(sheet: Sheet, trace: Trace) -> tuple[Input, ...]:
     found = []
-    for path in _with_items(sheet, trace.reads):
+    for path in _with_items(sheet, trace.inputs()):
         value = value_at(sheet.amplifier, path)
         if value is None or isinstance(value, (tuple, frozenset)):
             continue
-        if isinstance(value, (Fuse, Limiter)):
+        if isinstance(value, (Curve, Fuse, Limiter)):
             value = value.text
         entry = sheet.entries.get(path)
         origin = entry.origin if entry else sheet.amplifier.origin(path) or Origin.STATED

@@ -87,13 +87,17 @@ def _scope(amplifier: Amplifier, *, on_paper: bool) -> str:
     """Return for what the verdict holds."""
     ohms = float(np.asarray(operating.believed_nominal(amplifier)).flat[0])
     load = f"{show(ohms, RESISTANCE)} {amplifier.loudspeaker.load}"
-    parallel = float(np.asarray(amplifier.loudspeaker.parallel).flat[0])
-    if parallel > 1:
-        load = f"{parallel:.0f} in parallel of {load}"
+    for word in ("series", "parallel"):
+        count = float(np.asarray(getattr(amplifier.loudspeaker, word)).flat[0])
+        if count > 1:
+            load = f"{count:.0f} in {word} of {load}"
     parts = [load]
     if amplifier.loudspeaker.load != "resistor":
         angle = float(np.asarray(operating.phase_angle(amplifier)).flat[0])
-        parts.append(f"phase up to {show(angle, ANGLE)}")
+        measured = amplifier.loudspeaker.impedance_curve is not None
+        parts.append(
+            "every point of its impedance curve" if measured else f"phase up to {show(angle, ANGLE)}"
+        )
     parts.append(_supply_scope(amplifier))
     return ", ".join(parts) + ("; on paper: clears no power" if on_paper else "")
 

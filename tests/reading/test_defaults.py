@@ -167,9 +167,34 @@ def test_a_small_phase_angle_without_a_curve_is_said_to_count_as_45_degrees(tmp_
     sheet = load(tmp_path, {"loudspeaker.phase_angle": "30 deg"})
     assert "loudspeaker.phase_angle of 30 deg counts as 45 deg: there is no curve" in sheet.remarks
     assert sheet.amplifier.loudspeaker.phase_angle == 30
-    (tmp_path / "curve.csv").write_text("x")
+    curve = "frequency [Hz], impedance [ohm], phase [deg]\n20, 7.5, 30\n200, 6.1, -20\n"
+    (tmp_path / "curve.csv").write_text(curve)
     sheet = load(tmp_path, {"loudspeaker.phase_angle": "30 deg", "loudspeaker.impedance_curve": "curve.csv"})
-    assert sheet.remarks == ()
+    assert sheet.remarks == ("loudspeaker.phase_angle does not count: the impedance curve has every angle",)
+
+
+def test_a_curve_stands_in_place_of_an_assumed_angle_and_an_assumed_minimum(tmp_path):
+    curve = "frequency [Hz], impedance [ohm], phase [deg]\n20, 7.5, 30\n200, 6.1, -20\n"
+    (tmp_path / "curve.csv").write_text(curve)
+    bare = {"loudspeaker.phase_angle": GONE, "loudspeaker.minimum_impedance": GONE}
+    sheet = load(tmp_path, {**bare, "loudspeaker.impedance_curve": "curve.csv"})
+    table = sheet.amplifier.loudspeaker
+    assert (table.minimum_impedance, table.minimum_share, table.phase_angle) == (6.1, None, None)
+    assumed = {one.key for one in sheet.assumptions}
+    assert assumed.isdisjoint({"loudspeaker.phase_angle", "loudspeaker.minimum_impedance"})
+    own = load(
+        tmp_path, {"loudspeaker.minimum_impedance": "5 ohm", "loudspeaker.impedance_curve": "curve.csv"}
+    )
+    assert own.amplifier.loudspeaker.minimum_impedance == 5.0
+
+
+def test_the_lowest_point_of_a_curve_may_lie_above_the_label(tmp_path):
+    curve = "frequency [Hz], impedance [ohm], phase [deg]\n20, 9.5, 30\n200, 8.4, -20\n"
+    (tmp_path / "curve.csv").write_text(curve)
+    sheet = load(
+        tmp_path, {"loudspeaker.minimum_impedance": GONE, "loudspeaker.impedance_curve": "curve.csv"}
+    )
+    assert sheet.amplifier.loudspeaker.minimum_impedance == 8.4
 
 
 def test_an_insulator_beside_a_thermal_resistance_is_not_used_and_said_so(tmp_path):

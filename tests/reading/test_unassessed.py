@@ -10,7 +10,6 @@ VALUES = {
     "device.transient": [["0.3 K/W", "2 ms"]],
     "device.temperature_coefficient": "-2.1 mV/K",
     "device.transconductance_parameter": "3 A/V2",
-    "loudspeaker.impedance_curve": "sheet.toml",
     "loudspeaker.crest_factor": "12 dB",
     "loudspeaker.resonance": "40 Hz",
     "loudspeaker.q_mechanical": 3.5,
@@ -34,8 +33,9 @@ def test_each_key_alone(tmp_path, key):
     assert sheet.unassessed == {path: WOULD_CHANGE[key]}
 
 
-def test_findings_of_the_output_capacitor_need_one(tmp_path):
-    assert load(tmp_path, {"loudspeaker.resonance": "40 Hz"}).unassessed["loudspeaker.resonance"] == ()
+def test_parameters_of_a_driver_are_assessed(tmp_path):
+    driver = {f"loudspeaker.{name}": VALUES[f"loudspeaker.{name}"] for name in ("resonance", "crest_factor")}
+    assert load(tmp_path, {**BARE, **driver}, base="leaky_capacitor").unassessed == {}
 
 
 def test_data_of_a_driver_or_of_a_generic_device_are_not_keys_of_the_sheet(tmp_path):
