@@ -1,6 +1,6 @@
 """What the studies return, one file a question."""
 
-from safeamp.answers.chances import Chance, FindingChances, StepChances, Tolerance
+from safeamp.answers.chances import Chance, FindingChances, Histogram, StepChances, Tolerance
 from safeamp.answers.overview import Overview, OverviewRow
 from safeamp.answers.quick import Amount, Formula, PutIn, QuickAnswer
 from safeamp.answers.report import NotApplying, Report, StepVerdict
@@ -13,6 +13,7 @@ __all__ = [
     "FindingChances",
     "Forbidding",
     "Formula",
+    "Histogram",
     "Interval",
     "NotApplying",
     "Overview",

@@ -23,6 +23,16 @@ class Chance:
     high: float
 
 
+@dataclass(frozen=True)
+class Histogram:
+    """Numbers of samples in bins of one width from `low` up, and of those outside them or without bound."""
+
+    low: float
+    width: float
+    counts: tuple[int, ...]
+    outside: int = 0
+
+
 @dataclass(frozen=True, kw_only=True)
 class FindingChances:
     """How likely each word of a finding is, where its value lies, and what moves it.
@@ -34,6 +44,8 @@ class FindingChances:
     quantiles : mapping of float to float
         Share -> value that this share does not exceed, in the unit of `kind`, right to `resolution`; infinite where
         that many samples are without bound.
+    histogram : Histogram or None
+        Where the values lie, in the unit of `kind`; None where they do not vary.
     unknown : int
         Samples without a value.
     shares : mapping of str to float
@@ -48,6 +60,7 @@ class FindingChances:
     sampled: bool
     quantiles: Mapping[float, float] = field(default_factory=dict)
     resolution: float | None = None
+    histogram: Histogram | None = None
     unknown: int = 0
     shares: Mapping[str, float] = field(default_factory=dict)
     linear: float | None = None

@@ -9,6 +9,7 @@ from functools import cached_property
 import numpy as np
 import numpy.typing as npt
 
+from safeamp import answers
 from safeamp.answers import Chance
 from safeamp.findings import Verdict
 
@@ -97,6 +98,14 @@ class Histogram:
             place = np.floor((values - self.low) / self.width)
         place = np.where(np.isnan(place), 0.0, place)  # the one value of a range without width
         return np.clip(place + 1.0, 0.0, BINS + 1.0).astype(np.int64)
+
+    @property
+    def bins(self) -> answers.Histogram | None:
+        """The bins as an answer; None where there is one value or none."""
+        if self.width == 0.0:
+            return None
+        inside = tuple(int(count) for count in self.counts[1:-1])
+        return answers.Histogram(self.low, self.width, inside, int(self.counts[0] + self.counts[-1]))
 
     def quantile(self, share: float) -> float | None:
         """Return the value that this share of the samples does not exceed; None without values.

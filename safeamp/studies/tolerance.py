@@ -279,6 +279,7 @@ def _chances(
         sampled=True,
         quantiles={share: value for share, value in quantiles.items() if value is not None},
         resolution=subject.histogram.width,
+        histogram=subject.histogram.bins,
         unknown=subject.unknown,
         shares={varied[place].path: share for place, share in sorted(shares.items(), key=lambda x: -x[1])},
         linear=None if fitted is None else fitted[1],

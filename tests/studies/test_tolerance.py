@@ -310,3 +310,13 @@ def test_no_sample_is_worse_than_the_worst_corner():
             assert one.quantiles[0.95] <= judged.worst * (1 + 1e-9) + one.resolution
             compared += 1
     assert compared >= 8
+
+
+def test_the_bins_hold_every_sample_and_agree_with_the_quantiles():
+    answer = tolerance(sheet("split_rail"), limits(), samples=2000)
+    one = one_of(answer, "soa.loudspeaker")
+    bins = one.histogram
+    assert sum(bins.counts) + bins.outside == 2000 - one.unknown
+    below = sum(bins.counts[: int((one.quantiles[0.5] - bins.low) / bins.width) + 1])
+    assert below == pytest.approx(1000, abs=20)
+    assert next(found for found in answer.findings if not found.sampled).histogram is None
