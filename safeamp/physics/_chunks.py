@@ -57,16 +57,24 @@ def _call(function: Callable[..., R], given: dict[str, Any], shape: tuple[int, .
     return function(**cut)
 
 
+def chunks_of(size: int) -> Callable[[Callable[P, R]], Callable[P, R]]:
+    """Let a function of cases along the first axis work on so many at a time."""
+
+    def decorate(function: Callable[P, R]) -> Callable[P, R]:
+        @wraps(function)
+        def chunked(*args: P.args, **kwargs: P.kwargs) -> R:
+            shape = np.broadcast_shapes(*(np.shape(leaf) for leaf in _leaves(tuple(kwargs.values()))))
+            if args or not shape or shape[0] <= size:
+                return function(*args, **kwargs)
+            pieces = [slice(start, start + size) for start in range(0, shape[0], size)]
+            whole: R = _joined([_call(function, kwargs, shape, piece) for piece in pieces])
+            return whole
+
+        return chunked
+
+    return decorate
+
+
 def in_chunks(function: Callable[P, R]) -> Callable[P, R]:
     """Let a function of cases along the first axis work on a few hundred at a time."""
-
-    @wraps(function)
-    def chunked(*args: P.args, **kwargs: P.kwargs) -> R:
-        shape = np.broadcast_shapes(*(np.shape(leaf) for leaf in _leaves(tuple(kwargs.values()))))
-        if args or not shape or shape[0] <= CHUNK:
-            return function(*args, **kwargs)
-        pieces = [slice(start, start + CHUNK) for start in range(0, shape[0], CHUNK)]
-        whole: R = _joined([_call(function, kwargs, shape, piece) for piece in pieces])
-        return whole
-
-    return chunked
+    return chunks_of(CHUNK)(function)

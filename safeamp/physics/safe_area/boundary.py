@@ -1,5 +1,6 @@
 """The boundary of the safe area as a current over voltage."""
 
+from collections.abc import Iterator
 from dataclasses import dataclass
 from itertools import pairwise
 from typing import Any
@@ -37,6 +38,18 @@ class Boundary:
         line = np.where(voltage > self.last, np.inf, line + 0.0 * self.last)
         with np.errstate(invalid="ignore"):
             return np.where(np.isposinf(line), np.inf, self.derating * np.exp(line))
+
+    def bends(self) -> Iterator[Array]:
+        """Yield the voltages at which the allowed current jumps, or may fall less steeply than before."""
+        if not self.lines:
+            return
+        volts = [array(voltage) for voltage, _ in self.rating.points]
+        if np.any(volts[0] * array(self.rating.points[0][1]) < self.power):
+            yield volts[0]
+        for at, (before, after) in zip(volts[1:], pairwise(self.lines), strict=False):
+            if np.any(after[1] > before[1]):
+                yield at
+        yield volts[-1]
 
     def power_line(self, voltage: Array) -> Array:
         """Return the derated current of the power line, A."""

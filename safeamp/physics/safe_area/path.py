@@ -4,7 +4,8 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from safeamp.physics._checks import Array, array, within
-from safeamp.physics.safe_area.use import _device, _refuse_impossible
+from safeamp.physics.safe_area.device import device_of
+from safeamp.physics.safe_area.use import _refuse_impossible
 from safeamp.physics.stage import THERMAL_VOLTAGE, Law
 
 
@@ -51,10 +52,11 @@ def envelope_path(
     """
     _refuse_impossible(half_supply, peak, load_magnitude, phase_angle)
     within(-90.0, 90.0, output_angle=output_angle)
-    device = _device(
+    device = device_of(
         half_supply=half_supply,
         peak=peak,
         load_magnitude=load_magnitude,
+        phase_angle=phase_angle,
         conducting=conducting,
         emitter_resistor=emitter_resistor,
         idle_current=idle_current,
@@ -64,6 +66,7 @@ def envelope_path(
         thermal_voltage=thermal_voltage,
     )
     angle = array(output_angle)
-    turned = np.minimum(90.0, angle + np.abs(phase_angle))
-    voltage, current = device(np.sin(np.deg2rad(angle)), np.sin(np.deg2rad(turned)))
+    mean = device.mean_current(np.sin(np.deg2rad(np.minimum(90.0, angle + np.abs(phase_angle)))))
+    voltage = device.supply - device.swing * np.sin(np.deg2rad(angle)) - mean * device.resistor
+    current = device.worst_current(mean)
     return voltage + 0.0 * current, current + 0.0 * voltage

@@ -1,60 +1,23 @@
 """How much of its safe area a device uses into a load."""
 
-from collections.abc import Callable
+from collections.abc import Iterable, Iterator
+from dataclasses import replace
+from typing import Any
 
 import numpy as np
 from numpy.typing import ArrayLike
 
 from safeamp.physics._checks import Array, array, non_negative, positive, refuse, within
-from safeamp.physics._chunks import in_chunks
+from safeamp.physics._chunks import chunks_of
 from safeamp.physics.safe_area.boundary import boundary
-from safeamp.physics.safe_area.locus import Locus, Use, worst_use
-from safeamp.physics.safe_area.rating import Rating, spread_out
-from safeamp.physics.stage import THERMAL_VOLTAGE, Law, carrying_current, worst_device_current
+from safeamp.physics.safe_area.device import device_of
+from safeamp.physics.safe_area.lines import worst_along_lines
+from safeamp.physics.safe_area.locus import Use
+from safeamp.physics.safe_area.rating import Rating
+from safeamp.physics.stage import THERMAL_VOLTAGE, Law
 
-
-def _device(
-    *,
-    half_supply: ArrayLike,
-    peak: ArrayLike,
-    load_magnitude: ArrayLike,
-    conducting: ArrayLike,
-    emitter_resistor: ArrayLike,
-    idle_current: ArrayLike,
-    law: Law,
-    imbalance: ArrayLike | None,
-    transconductance_parameter: ArrayLike | None,
-    thermal_voltage: float,
-) -> Callable[[Array, Array], tuple[Array, Array]]:
-    """Return the function that turns sine and current share (-1 to 1) into voltage and current."""
-    supply, swing, resistor, idle, pairs = (
-        array(value)[..., None] for value in (half_supply, peak, emitter_resistor, idle_current, conducting)
-    )
-    each = swing / array(load_magnitude)[..., None] / pairs
-    uneven = None if imbalance is None else array(imbalance)[..., None]
-    parameter = None
-    if transconductance_parameter is not None:
-        parameter = array(transconductance_parameter)[..., None]
-
-    def device(sine: Array, share: Array) -> tuple[Array, Array]:
-        mean = carrying_current(
-            load_current=each * share,
-            idle_current=idle,
-            emitter_resistor=resistor,
-            law=law,
-            transconductance_parameter=parameter,
-            thermal_voltage=thermal_voltage,
-        )
-        worst = worst_device_current(
-            mean=mean,
-            emitter_resistor=resistor,
-            pairs=pairs,
-            imbalance=uneven,
-            thermal_voltage=thermal_voltage,
-        )
-        return supply - swing * sine - mean * resistor, worst
-
-    return device
+CHUNK = 2048
+"""Cases at a time: with some twenty phases each, one array takes 400 KiB."""
 
 
 def _refuse_impossible(
@@ -67,13 +30,20 @@ def _refuse_impossible(
     within(-90.0, 90.0, phase_angle=phase_angle)
 
 
-def _search(locus: Locus, case_temperature: ArrayLike, rating: Rating, low: float, high: float) -> Use:
-    """Return the worst point of a locus against a rating, with the phase on a last axis."""
-    cases = array(case_temperature)[..., None]
-    return worst_use(locus=locus, boundary=boundary(spread_out(rating), cases), low=low, high=high)
+def _unknown(values: Iterable[Any]) -> Array:
+    """Return where a value is nan: no comparison may hide it."""
+    unknown: Array = np.isnan(sum(array(value) for value in values if value is not None))
+    return unknown
 
 
-@in_chunks
+def _rated(rating: Rating) -> Iterator[Any]:
+    yield from (rating.current, rating.power, rating.power_at, rating.junction_limit, rating.voltage)
+    yield rating.junction_to_case
+    for point in rating.points:
+        yield from point
+
+
+@chunks_of(CHUNK)
 def envelope_use(
     *,
     half_supply: ArrayLike,
@@ -139,10 +109,11 @@ def envelope_use(
     Envelope of the ellipses of all angles; derived.
     """
     _refuse_impossible(half_supply, peak, load_magnitude, phase_angle)
-    device = _device(
+    device = device_of(
         half_supply=half_supply,
         peak=peak,
         load_magnitude=load_magnitude,
+        phase_angle=phase_angle,
         conducting=conducting,
         emitter_resistor=emitter_resistor,
         idle_current=idle_current,
@@ -151,64 +122,47 @@ def envelope_use(
         transconductance_parameter=transconductance_parameter,
         thermal_voltage=thermal_voltage,
     )
-    angle = np.abs(array(phase_angle))[..., None]
+    found = worst_along_lines(device=device, boundary=boundary(rating, array(case_temperature)))
+    values = (
+        device.supply,
+        device.each,
+        device.resistor,
+        device.idle,
+        device.angle,
+        case_temperature,
+        imbalance,
+    )
+    parameter = device.parameter if law is Law.MOSFET else None
+    unknown = _unknown((*values, parameter, *_rated(rating)))
+    return replace(found, use=np.where(unknown, np.nan, found.use))
 
-    def locus(t: Array) -> tuple[Array, Array]:
-        return device(np.sin(np.deg2rad(t)), np.sin(np.deg2rad(np.minimum(90.0, t + angle))))
 
-    return _search(locus, case_temperature, rating, -90.0, 90.0)
-
-
-@in_chunks
-def angle_use(
-    *,
-    half_supply: ArrayLike,
-    peak: ArrayLike,
-    load_magnitude: ArrayLike,
-    phase_angle: ArrayLike,
-    conducting: ArrayLike,
-    emitter_resistor: ArrayLike,
-    idle_current: ArrayLike,
-    law: Law,
-    imbalance: ArrayLike | None,
-    case_temperature: ArrayLike,
-    rating: Rating,
-    transconductance_parameter: ArrayLike | None = None,
-    thermal_voltage: float = THERMAL_VOLTAGE,
-) -> Use:
+def angle_use(*, phase_angle: ArrayLike, **more: Any) -> Use:
     """Return the use of the safe area into a load of one angle, every amplitude up to `peak`.
 
-    The ellipse of the largest amplitude encloses those of the smaller ones, and both signs of the
-    angle run through the same points. Every output voltage comes twice in a cycle; the half cycle
-    searched holds the larger current of the two.
+    It is that of the envelope. The ellipse of the largest amplitude encloses those of the smaller ones, and both
+    signs of an angle run through the same points. Up to the output voltage at which its current peaks, the largest
+    angle draws more than any smaller one; beyond, the envelope has that same peak current at less device voltage.
 
-    Parameters and errors as in `envelope_use`.
+    Parameters
+    ----------
+    phase_angle : array_like
+        deg, -90 to 90; the sign does not matter.
+    **more
+        As in `envelope_use`.
 
     Returns
     -------
     Use
         One value a case; nan where an input is nan.
 
+    Raises
+    ------
+    ValueError
+        If a value is outside its range.
+
     References
     ----------
     Ellipse of a sine into a complex load; derived.
     """
-    _refuse_impossible(half_supply, peak, load_magnitude, phase_angle)
-    device = _device(
-        half_supply=half_supply,
-        peak=peak,
-        load_magnitude=load_magnitude,
-        conducting=conducting,
-        emitter_resistor=emitter_resistor,
-        idle_current=idle_current,
-        law=law,
-        imbalance=imbalance,
-        transconductance_parameter=transconductance_parameter,
-        thermal_voltage=thermal_voltage,
-    )
-    angle = np.abs(array(phase_angle))[..., None]
-
-    def locus(t: Array) -> tuple[Array, Array]:
-        return device(np.sin(np.deg2rad(t)), np.sin(np.deg2rad(t + angle)))
-
-    return _search(locus, case_temperature, rating, -90.0, 90.0)
+    return envelope_use(phase_angle=phase_angle, **more)
