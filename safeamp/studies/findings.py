@@ -13,7 +13,7 @@ from safeamp.checks.judging import Cases, Judgement, badness, bounds_of, judge, 
 from safeamp.checks.trace import Trace, watched
 from safeamp.findings import Bound, Finding, Input, Measure, NotApplicable, Remark, Step, Verdict
 from safeamp.limits import Limit, Limits
-from safeamp.quantities import Origin, show
+from safeamp.quantities import Kind, Origin, show
 from safeamp.studies import corners
 from safeamp.studies.corners import Design
 
@@ -224,7 +224,7 @@ def _finding(
         unbounded=judgement.unbounded,
         bound=_bound(measure, limit),
         because=judgement.because,
-        overturned_by=_overturned_by(over_cases, design, limit, bench),
+        overturned_by=_overturned_by(over_cases, kind, design, limit, bench),
         also=tuple(one for one in measure.also if np.isfinite(one.value)),
         worst_case=_worst_case(over_cases, design, judgement.worst),
         at=measure.at,
@@ -252,7 +252,7 @@ def _worst_case(measure: Measure, design: Design, worst: int) -> dict[str, float
     return found or moved
 
 
-def _overturned_by(measure: Measure, design: Design, limit: Limit, bench: Bench) -> str:
+def _overturned_by(measure: Measure, kind: Kind, design: Design, limit: Limit, bench: Bench) -> str:
     """Return which guess or assumption, moved alone, makes the finding most worse."""
     values = _values(measure, design)
     bad = _badness_of(measure, limit, len(design.rows))
@@ -261,12 +261,8 @@ def _overturned_by(measure: Measure, design: Design, limit: Limit, bench: Bench)
         if design.guessed[row] and bad[row] > worst + 1e-12:
             ((path, value),) = design.moved(row).items()
             entry = bench.sheet.entries[path]
-            kind = measure.kind
-            shown = show(values[row], kind) if kind is not None else f"{values[row]:.3g}"
-            worst, text = (
-                bad[row],
-                f"{written_key(path)} ({entry.origin.value}) at {show(value, entry.kind)} makes it {shown}",
-            )
+            moved = f"{written_key(path)} ({entry.origin.value}) at {show(value, entry.kind)}"
+            worst, text = bad[row], f"{moved} makes it {show(values[row], kind)}"
     return text
 
 

@@ -174,7 +174,7 @@ def test_what_only_an_assumption_reaches_is_unverified_and_names_it():
 
 def test_a_guess_is_named_with_what_it_would_do():
     one = finding(report("single_rail"), "heat.heatsink")
-    assert one.overturned_by.startswith("heatsink.sink_to_air (guess) at 1.7 K/W makes it 70.3")
+    assert one.overturned_by.startswith("heatsink.sink_to_air (guess) at 1.7 K/W makes it 70.3 °C")
 
 
 #: Finding -> keys taken away together, and the word that follows.
