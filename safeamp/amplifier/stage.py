@@ -200,7 +200,7 @@ class Device:
         shape="points",
         sign=Sign.MAGNITUDE,
     )
-    pulse: tuple[object, ...] | None = number(
+    pulse: tuple[tuple[float, tuple[tuple[float, float], ...]], ...] | None = number(
         (TIME, VOLTAGE, CURRENT),
         'further curves, each a duration and its points: [["10 ms", ["40 V", "5 A"], ["100 V", "1 A"]], ...]',
         shape="curves",

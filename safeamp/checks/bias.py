@@ -8,6 +8,7 @@ import numpy as np
 
 from safeamp.amplifier import Amplifier
 from safeamp.checks import operating
+from safeamp.checks.beside import plain
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
 from safeamp.checks.words import level, nominal, text
@@ -16,6 +17,8 @@ from safeamp.limits import Limits
 from safeamp.physics import bias
 from safeamp.quantities import CURRENT, POWER, RATIO, VOLTAGE, Number, Origin
 
+#: Junctions from base to emitter, by kind of device.
+JUNCTIONS = {"bipolar": 1.0, "darlington": 2.0}
 NEXT_IDLE = (
     "read mV across ONE emitter resistor of each device, warm, input shorted, no load; enter each as a list"
 )
@@ -144,9 +147,33 @@ def check_imbalance(amplifier: Amplifier, limits: Limits) -> Measure | NotApplic
         reduce(np.maximum, departures),
         f"{len(groups[0])} devices a side, mean {text(means[0], VOLTAGE)} above and {text(means[1], VOLTAGE)} below",
         stop=np.where(small, np.inf, level(limits["bias.imbalance"], "stop")),
+        also=_odd_device(amplifier, groups),
         next="compare each resistor's reading; the odd one out has another gain, or is open",
         method="largest departure from the mean of its group, over that mean",
     )
+
+
+def _odd_device(amplifier: Amplifier, groups: list[tuple[Number, ...]]) -> tuple[Also, ...]:
+    """Return by how much the base-emitter voltage of the odd device would have to differ to carry what it does.
+
+    A few tens of mV are the spread of a batch; more is another type, another temperature, or a bad joint.
+    """
+    whole, found = plain(amplifier), []
+    if whole is None:
+        return ()
+    resistor = nominal(needed(whole, "stage.emitter_resistor")[0])
+    for side, group in zip(("upper", "lower"), groups, strict=True):
+        junctions = JUNCTIONS.get(str(operating.device_of(whole, side).kind))
+        read = np.array([nominal(one) for one in group]) / resistor if resistor > 0.0 else np.zeros(1)
+        if junctions is None or not np.all(read > 0.0):
+            continue
+        apart = bias.control_difference(
+            current=read, mean=np.mean(read), emitter_resistor=resistor, junctions=junctions
+        )
+        found.append(float(apart[np.argmax(np.abs(apart))]))
+    if not found:
+        return ()
+    return (Also("base-emitter voltage by which the odd device differs", max(found, key=abs), VOLTAGE),)
 
 
 @finding("bias.balance", Step.BIAS, RATIO, at_bench=True)

@@ -2,16 +2,21 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
+
 import numpy as np
 
 from safeamp.amplifier import Amplifier
-from safeamp.checks import operating, thermal
+from safeamp.checks import cycle, operating, thermal
+from safeamp.checks.beside import one_open_also
+from safeamp.checks.levels import level_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
 from safeamp.checks.words import heat_remarks, idle_remarks, nominal, sharing_remarks, text
 from safeamp.findings import Also, Measure, NotApplicable, Step
 from safeamp.limits import Limits
 from safeamp.quantities import (
+    FREQUENCY,
     POWER,
     RATIO,
     TEMPERATURE,
@@ -22,6 +27,7 @@ from safeamp.quantities import (
 
 FREE_AIR = "nothing is said of a heatsink and the devices are rated in free air (junction_to_ambient)"
 METHOD = "class-AB law, heat of a sine at one third of clipping power and without signal, thermal chain"
+PEAK_METHOD = f"{METHOD}; at the lowest note the periodic answer of the Foster pairs on top of the mean"
 NEXT_SOAK = "run it at one third of power into a resistor until it settles; switch off above the stop level"
 LEVELS = {"one eighth": thermal.ONE_EIGHTH, "one third": thermal.ONE_THIRD}
 
@@ -36,7 +42,15 @@ def _stage_also(
         Also(
             "power at clipping into the nominal impedance", nominal(operating.output_power(amplifier)), POWER
         ),
+        *_bridged_also(amplifier),
     )
+
+
+def _bridged_also(amplifier: Amplifier) -> tuple[Also, ...]:
+    """Return what one side of a bridge gives: its devices see half the load, and heat is that of one side."""
+    if not amplifier.stage.bridged:
+        return ()
+    return (Also("of that each side of the bridge", nominal(operating.clipping_power(amplifier)), POWER),)
 
 
 def _ruled_also(amplifier: Amplifier, loud: thermal.Dissipation) -> tuple[Also, ...]:
@@ -58,46 +72,91 @@ def check_heatsink(amplifier: Amplifier, limits: Limits) -> Measure | NotApplica
         value,
         f"heatsink {text(cold, TEMPERATURE)} without signal, {text(hot, TEMPERATURE)} at one third of clipping power",
         remarks=(*heat_remarks(amplifier), *idle_remarks(amplifier)),
-        also=_stage_also(amplifier, quiet, loud),
+        also=(*_stage_also(amplifier, quiet, loud), *level_also(amplifier)),
         next=NEXT_SOAK,
         method=METHOD,
     )
 
 
+@dataclass(frozen=True, eq=False)
+class _Junction:
+    """The hottest junction over sides and levels, degC: at its peak, in the mean; its limit and its case."""
+
+    value: Number
+    mean: Number
+    limit: Number
+    case: Number
+
+
 @finding("heat.junction", Step.SOAK, TEMPERATURE)
 def check_junction(amplifier: Amplifier, limits: Limits) -> Measure:
-    """Hottest junction, the hotter of no signal and one third of clipping power."""
-    extra = limits["heat.junction"].extra
-    quiet, loud = thermal.no_signal(amplifier), thermal.at_level(amplifier, thermal.ONE_THIRD)
-    found = [_junction(amplifier, quiet, loud, side) for side in ("upper", "lower")]
-    (hot, limit, case), (other, other_limit, other_case) = found
-    margin, other_margin = np.asarray(hot) - limit, np.asarray(other) - other_limit
-    worse = np.isnan(margin) | (margin >= other_margin)  # of two sides the unknown one is shown
-    value, stop = np.where(worse, hot, other), np.where(worse, limit, other_limit)
+    """Hottest junction, the hotter of no signal and one third of clipping power; with `transient` at its peak."""
+    extra, found = limits["heat.junction"].extra, _hottest(amplifier)
     start: float = extra["span_from"]
     share: float = extra["go_share_of_span"]
     return Measure(
-        value,
-        f"junction {text(value, TEMPERATURE)}, allowed {text(stop, TEMPERATURE)}",
-        go=start + share * (np.asarray(stop) - start),
-        stop=stop,
+        found.value,
+        _junction_text(amplifier, found),
+        go=start + share * (np.asarray(found.limit) - start),
+        stop=found.limit,
         remarks=(
             *heat_remarks(amplifier),
             *idle_remarks(amplifier),
             *sharing_remarks(amplifier, limits),
+            *cycle.transient_remarks(amplifier),
         ),
-        also=(Also("case", nominal(np.maximum(case, other_case)), TEMPERATURE),),
+        also=_junction_also(amplifier, found),
         next="read the heatsink beside the hottest device; case and junction are above it",
-        method=METHOD,
+        method=PEAK_METHOD if _has_transient(amplifier) else METHOD,
+    )
+
+
+def _hottest(amplifier: Amplifier) -> _Junction:
+    quiet, loud = thermal.no_signal(amplifier), thermal.at_level(amplifier, thermal.ONE_THIRD)
+    one, other = (_junction(amplifier, quiet, loud, side) for side in ("upper", "lower"))
+    above, other_above = np.asarray(one.value) - one.limit, np.asarray(other.value) - other.limit
+    worse = np.isnan(above) | (above >= other_above)  # of two sides the unknown one is shown
+    return _Junction(
+        np.where(worse, one.value, other.value),
+        np.where(worse, one.mean, other.mean),
+        np.where(worse, one.limit, other.limit),
+        np.maximum(one.case, other.case),
     )
 
 
 def _junction(
     amplifier: Amplifier, quiet: thermal.Dissipation, loud: thermal.Dissipation, side: str
-) -> tuple[Number, Number, Number]:
+) -> _Junction:
     cold, hot = thermal.temperatures(amplifier, quiet, side), thermal.temperatures(amplifier, loud, side)
-    limit = thermal.device_value(amplifier, side, "junction_limit")
-    return np.maximum(cold.junction, hot.junction), limit, np.maximum(cold.case, hot.case)
+    peak = hot.junction + cycle.peak_over_mean(amplifier, side, thermal.ONE_THIRD, hot)
+    return _Junction(
+        np.maximum(cold.junction, peak),
+        np.maximum(cold.junction, hot.junction),
+        thermal.device_value(amplifier, side, "junction_limit"),
+        np.maximum(cold.case, hot.case),
+    )
+
+
+def _has_transient(amplifier: Amplifier) -> bool:
+    sides = ("upper", "lower")
+    return any(operating.device_of(amplifier, side).transient is not None for side in sides)
+
+
+def _junction_text(amplifier: Amplifier, found: _Junction) -> str:
+    said = f"{text(found.value, TEMPERATURE)}, allowed {text(found.limit, TEMPERATURE)}"
+    if not _has_transient(amplifier):
+        return f"junction {said}"
+    (note,) = needed(amplifier, cycle.NOTE)
+    return f"junction peaks at {said}, in every cycle of {text(note, FREQUENCY)}"
+
+
+def _junction_also(amplifier: Amplifier, found: _Junction) -> tuple[Also, ...]:
+    mean = Also("mean over a cycle", nominal(found.mean), TEMPERATURE)
+    return (
+        Also("case", nominal(found.case), TEMPERATURE),
+        *((mean,) if _has_transient(amplifier) else ()),
+        *one_open_also(amplifier, lambda less: _hottest(less).value, TEMPERATURE),
+    )
 
 
 @finding("heat.reading", Step.SOAK, RATIO, at_bench=True)
