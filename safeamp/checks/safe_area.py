@@ -91,7 +91,8 @@ def _drive(amplifier: Amplifier, side: str, load: Load) -> dict[str, Any]:
     }
 
 
-def _use_of(amplifier: Amplifier, side: str, load: Load, case: Number, rating: Rating) -> Use:
+def use_of(amplifier: Amplifier, side: str, load: Load, case: Number, rating: Rating) -> Use:
+    """Return the use of the safe area of a side into a load, at a case temperature (degC)."""
     return safe_area.envelope_use(**_drive(amplifier, side, load), case_temperature=case, rating=rating)
 
 
@@ -135,7 +136,7 @@ def _worst(amplifier: Amplifier, loads: tuple[Load, ...], fraction: float, angle
     for side in sides_to_judge(amplifier):
         case = thermal.hotter_case(amplifier, side, fraction, angle)
         rating = rating_of(amplifier, side)
-        found += [(_use_of(amplifier, side, load, case, rating), case, side, load) for load in loads]
+        found += [(use_of(amplifier, side, load, case, rating), case, side, load) for load in loads]
     point, case, side, load = max(found, key=lambda one: _sortable(one[0].use))
     use = reduce(np.maximum, [one[0].use for one in found])
     unknown = reduce(np.logical_or, [one[0].enters_unknown for one in found])
@@ -339,7 +340,7 @@ def _beside(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
 def _at_sixty(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
     magnitude, turned = operating.nominal_load(amplifier, SHOWN_ANGLE)
     load = Load(magnitude, turned, "60 deg")
-    use = _use_of(amplifier, worst.side, load, worst.case, rating_of(amplifier, worst.side))
+    use = use_of(amplifier, worst.side, load, worst.case, rating_of(amplifier, worst.side))
     return (Also("60 deg", nominal(use.use), RATIO),)
 
 
@@ -351,7 +352,7 @@ def _open_load(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
     if not nominal(operating.idle_current(amplifier)) > OPEN_LOAD_IDLE * nominal(peak):
         return ()
     rating = rating_of(amplifier, worst.side)
-    use = _use_of(amplifier, worst.side, Load(OPEN_LOAD, 0.0, "no load"), worst.case, rating)
+    use = use_of(amplifier, worst.side, Load(OPEN_LOAD, 0.0, "no load"), worst.case, rating)
     return (Also("driven without a load", nominal(use.use), RATIO),)
 
 
