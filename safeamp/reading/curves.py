@@ -118,7 +118,8 @@ def _points(text: str, file: _File) -> list[tuple[float, ...]]:
 def _rows(text: str, file: _File) -> Iterator[tuple[int, list[str]]]:
     """Yield line number and cells of each line that is not empty."""
     first = next((line for line in text.splitlines() if line.strip()), "")
-    reader = csv.reader(text.splitlines(), delimiter=";" if ";" in first else ",", strict=True)
+    delimiter = ";" if ";" in first else ","
+    reader = csv.reader(text.splitlines(), delimiter=delimiter, skipinitialspace=True, strict=True)
     try:
         for cells in reader:
             if any(cell.strip() for cell in cells):

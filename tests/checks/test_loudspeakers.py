@@ -210,7 +210,7 @@ def test_two_in_series_share_a_shorted_rail_and_an_offset():
 def test_series_of_two_in_parallel_are_the_load_of_one():
     alone = report("split_rail")
     four = report("split_rail", {"loudspeaker.series": 2, "loudspeaker.parallel": 2})
-    for identity in ("soa.loudspeaker", "heat.heatsink", "supply.rail_fuse", "touch.voltage"):
+    for identity in ("soa.loudspeaker", "heat.heatsink", "heat.junction", "touch.voltage"):
         assert finding(four, identity).nominal == finding(alone, identity).nominal
     assert "2 in parallel of 2 in series of 8 ohm loudspeaker" in four.scope
 

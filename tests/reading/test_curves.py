@@ -74,7 +74,7 @@ REFUSED = [
     (GOOD.replace("6.1", "0"), "3: 0 in the column impedance is not believable; it lies between 0.1 ohm and 100 kohm"),
     (GOOD.replace("6.1", "-6.1"), "3: -6.1 in the column impedance is not believable"),
     (GOOD.replace("6.1", "1e9"), "3: 1e9 in the column impedance is not believable"),
-    (GOOD.replace("-20", "-90.1"), "3: -90.1 in the column phase is not believable; it lies between -90 deg and 90 deg"),
+    (GOOD.replace("-20", "-90.1"), "3: -90.1 in the column phase is not believable; it lies between -90 deg and"),
     (GOOD.replace("20, 7.5", "0, 7.5"), "2: 0 in the column frequency is not believable"),
     (GOOD.replace("200,", "20,"), "3: 20 Hz does not rise above 20 Hz; write the points in order of rising frequency"),
     (GOOD.replace("2000,", "100,"), "4: 100 Hz does not rise above 200 Hz"),
