@@ -50,6 +50,13 @@ def test_a_measured_chain_well_below_its_limit_is_go():
     assert found["results"]["junction"] == {"value": pytest.approx(102.0), "unit": "degC"}
 
 
+def test_air_that_nobody_measured_may_be_10_kelvin_warmer():
+    measured = answer("heatsink", power="50 W", air="35 degC, measured", sink_to_air="1 K/W, measured")
+    assert "high" not in measured["results"]["sink"]
+    stated = answer("heatsink", power="50 W", air="35 degC", sink_to_air="1 K/W, measured")
+    assert stated["results"]["sink"] == {"value": 85.0, "unit": "degC", "low": 85.0, "high": 95.0}
+
+
 def test_the_heatsink_alone_can_be_a_stop():
     found = answer("heatsink", power="100 W", air="40 degC", sink_to_air="0.7 K/W")
     assert (found["verdict"], found["status"]) == ("stop", 5)
@@ -85,6 +92,12 @@ def test_fins_near_the_printed_example_and_at_best_caution():
     assert results["sink_to_air"] == pytest.approx(50.0 / results["power"])
     assert found["verdict"] == "caution"
     assert "-30/+70 %" in found["cautions"][0]
+
+
+def test_fins_are_never_go():
+    found = answer("heatsink", **FINS, sink_temperature="50 degC", air="30 degC, measured")
+    assert found["findings"][0]["limit"]["go"] == 70.0
+    assert (found["verdict"], found["status"]) == ("caution", 3)
 
 
 def test_fins_give_the_heat_back_that_they_were_solved_for():

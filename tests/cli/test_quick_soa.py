@@ -112,6 +112,30 @@ def test_a_hot_case_allows_nothing(folder):
     assert found["results"]["use"]["value"] is None
 
 
+def with_data(tmp_path, old, new):
+    assert old in DEVICE
+    (tmp_path / "fitted.toml").write_text(DEVICE.replace(old, new), encoding="utf-8")
+    return {"device": "fitted", "device_folder": str(tmp_path), **LINE}
+
+
+def test_the_lowest_impedance_counts_where_it_is_worse(tmp_path):
+    # A device of 2.6 A: 20 V into 8 ohm stays below that, into 80 % of it not.
+    line = with_data(tmp_path, 'current = "16 A"', 'current = "2.6 A"')
+    found = answer("soa", split_rail="20 V", highest="1", **line)
+    assert found["results"]["use"]["value"] < 1.0 < found["results"]["use_at_minimum_impedance"]["value"]
+    assert found["verdict"] == "stop"
+    assert "6.4 ohm at up to 30 deg" in found["findings"][0]["says"]
+
+
+def test_where_the_data_end_nothing_is_go(tmp_path):
+    line = with_data(tmp_path, ', ["80 V", "1.3 A"], ["140 V", "0.35 A"]]', ', ["60 V", "2.2 A"]]')
+    short = answer("soa", split_rail="25 V", **line)
+    assert short["verdict"] == "go"
+    beyond = answer("soa", split_rail="33 V", highest="1", **{**line, "load": "16 ohm"})
+    assert beyond["results"]["use"]["value"] < 0.8
+    assert beyond["verdict"] == "unverified"
+
+
 @pytest.mark.parametrize(
     ("options", "says"),
     [

@@ -33,16 +33,19 @@ def test_heat_is_judged_and_at_best_caution(tmp_path):
 
 
 def test_the_balance_is_that_of_the_heat_at_hand(tmp_path):
-    amplifier = load(tmp_path, RULED).amplifier
+    amplifier = load(tmp_path, {**RULED, "heatsink.shared_by": 2, "heatsink.other_heat": "3 W"}).amplifier
     sheet = fins.Geometry(
         width=0.2, height=0.075, depth=0.04, thickness=0.002, count=14, plate=0.0, emissivity=0.1
     )
     for dissipated in (thermal.no_signal(amplifier), thermal.at_level(amplifier, thermal.ONE_THIRD)):
-        heat = dissipated.stage_power * amplifier.heatsink.shared_by
+        stages = 2 * dissipated.stage_power
         rise = thermal.sink_temperature(amplifier, dissipated) - amplifier.heatsink.air
         shed = fins.fins_heat(geometry=sheet, rise=rise, air=amplifier.heatsink.air).total
-        assert shed == pytest.approx(heat, rel=1e-6)
-        assert thermal.sink_to_air(amplifier, dissipated) == pytest.approx(rise / heat, rel=1e-9)
+        assert shed == pytest.approx(stages + 3.0, rel=1e-6)
+        # What the bias loop sees is the heatsink at its own heat: a little more K/W than with the other heat on it.
+        alone = fins.sink_to_air(geometry=sheet, heat=stages, air=amplifier.heatsink.air)
+        assert thermal.sink_to_air(amplifier, dissipated) == pytest.approx(alone, rel=1e-9)
+        assert alone > rise / (stages + 3.0)
 
 
 def test_each_heatsink_carries_its_own_device(tmp_path):
