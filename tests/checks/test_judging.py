@@ -125,6 +125,12 @@ def test_bounds_of_the_measure_outrank_those_of_the_limit():
     assert word(1e9, go=INF, without_stop=True).verdict is GO
 
 
+def test_a_level_that_is_no_number_is_unverified():
+    assert word(0.1, stop=NAN).verdict is UNVERIFIED
+    assert word(0.1, go=NAN).verdict is UNVERIFIED
+    assert word([0.1, 0.2], stop=np.array([1.0, NAN])).verdict is UNVERIFIED
+
+
 def test_bounds_may_move_with_the_cases():
     # beyond stop only where the second case's own stop is
     assert word([0.5, 0.5], stop=np.array([1.0, 0.4])).verdict is CAUTION
