@@ -5,24 +5,32 @@ from safeamp.answers.overview import Overview, OverviewRow
 from safeamp.answers.quick import Amount, Formula, PutIn, QuickAnswer
 from safeamp.answers.report import NotApplying, Report, StepVerdict
 from safeamp.answers.solution import Edge, Forbidding, Interval, Solution
+from safeamp.answers.substitute import AtWork, Compared, LoadLine, Pair, Range, Ratings, Substitute
 
 __all__ = [
     "Amount",
+    "AtWork",
     "Chance",
+    "Compared",
     "Edge",
     "FindingChances",
     "Forbidding",
     "Formula",
     "Histogram",
     "Interval",
+    "LoadLine",
     "NotApplying",
     "Overview",
     "OverviewRow",
+    "Pair",
     "PutIn",
     "QuickAnswer",
+    "Range",
+    "Ratings",
     "Report",
     "Solution",
     "StepChances",
     "StepVerdict",
+    "Substitute",
     "Tolerance",
 ]

@@ -16,6 +16,7 @@ from safeamp.cli.offset import offset
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, complaining, emit, fail
 from safeamp.cli.soa import soa
+from safeamp.cli.substitute import substitute
 from safeamp.cli.tolerance import tolerance
 
 if TYPE_CHECKING:
@@ -193,6 +194,7 @@ def _emit_report(
 
 
 app.command("tolerance")(tolerance)
+app.command("substitute")(substitute)
 app.command("capacitor")(capacitor)
 app.command("soa")(soa)
 app.command("heatsink")(heatsink)
