@@ -1,0 +1,232 @@
+"""Trial values of one key: which are looked at, which hold, and where holding ends."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass, field
+from itertools import pairwise
+from typing import Any, Protocol
+
+import numpy as np
+
+from safeamp.amplifier import Sheet
+from safeamp.checks import Check
+from safeamp.complaints import ReadingError
+from safeamp.findings import Verdict
+from safeamp.limits import Limits
+from safeamp.quantities import ANGLE, LEVEL, PERCENT, TEMPERATURE, Kind
+from safeamp.studies.findings import Bench
+from safeamp.studies.trials import Word, words
+
+#: Trial values of the first look, and those between two of them at each later one.
+FIRST = 48
+BETWEEN = 7
+#: How closely an end is found, relative to the value.
+CLOSELY = 1e-6
+#: A range that starts at zero is looked at from this share of its upper end on, and at zero.
+SMALLEST_SHARE = 1e-9
+#: Differences of an excess that say nothing.
+FLAT = 1e-9
+LINEAR = (TEMPERATURE, ANGLE, LEVEL, PERCENT)
+#: How often a window or a gap that may lie between two trial values is looked for.
+ROUNDS = 3
+
+
+class Movable(Protocol):
+    """A key of a sheet whose number can be moved."""
+
+    @property
+    def path(self) -> str:
+        """The key."""
+
+    @property
+    def kind(self) -> Kind:
+        """The kind of its number."""
+
+    @property
+    def now(self) -> float | None:
+        """The number in the sheet."""
+
+    @property
+    def whole(self) -> bool:
+        """Whether only whole numbers count."""
+
+    @property
+    def span(self) -> tuple[float, float]:
+        """The believable range."""
+
+    def at(self, value: float) -> Sheet:
+        """Return the sheet with another number; ReadingError where it cannot have it."""
+
+    def written(self, value: float) -> Any:
+        """Return what stands in the sheet for a number."""
+
+
+@dataclass(frozen=True)
+class Trial:
+    """One value: what its sheet is, or why there is none, and the words of the findings."""
+
+    value: float
+    bench: Bench | None
+    trouble: ReadingError | None = None
+    words: dict[str, Word] = field(default_factory=dict)
+    until: Verdict = Verdict.GO
+
+    @property
+    def refused(self) -> str:
+        """Why the sheet cannot have this value; empty where it can."""
+        if self.trouble is None:
+            return ""
+        first = self.trouble.complaints[0]
+        return f"{first.key}: {first.text}" if first.key else first.text
+
+    @property
+    def failing(self) -> tuple[str, ...]:
+        """The ids of the findings that do not hold."""
+        return tuple(id for id, word in self.words.items() if not holds(word, self.until))
+
+    @property
+    def holds(self) -> bool:
+        """Whether all findings hold."""
+        return self.bench is not None and not self.failing
+
+    @property
+    def excess(self) -> float:
+        """How far the worst of the findings is beyond its levels; negative within."""
+        if self.bench is None:
+            return np.inf
+        wrong = [self.words[id].excess for id in self.failing]
+        return max(wrong or (word.excess for word in self.words.values()), default=-np.inf)
+
+
+def holds(word: Word, until: Verdict) -> bool:
+    """Whether a word is the one asked for or a better one; what does not apply holds."""
+    return word.verdict is None or word.verdict <= until
+
+
+@dataclass
+class Field:
+    """All trials of one key so far."""
+
+    key: Movable
+    limits: Limits
+    until: Verdict
+    checks: Sequence[Check] = ()
+    trials: dict[float, Trial] = field(default_factory=dict)
+
+    @property
+    def ordered(self) -> list[Trial]:
+        """The trials by rising value."""
+        return [self.trials[value] for value in sorted(self.trials)]
+
+    def read(self, values: Iterable[float]) -> list[Trial]:
+        """Read the sheet at each new value."""
+        new = [self._read(value) for value in dict.fromkeys(map(float, values)) if value not in self.trials]
+        self.trials |= {trial.value: trial for trial in new}
+        return new
+
+    def judge(self, trials: Iterable[Trial], checks: Sequence[Check] | None = None) -> None:
+        """Find the words that trials still lack, all corners of all of them in one pass a finding."""
+        read = [trial for trial in trials if trial.bench is not None]
+        for check in self.checks if checks is None else checks:
+            new = [trial for trial in read if check.id not in trial.words]
+            benches = [trial.bench for trial in new if trial.bench is not None]
+            for trial, word in zip(new, words(check, benches, until=self.until), strict=True):
+                trial.words[check.id] = word
+
+    def look(self, values: Iterable[float]) -> None:
+        """Read and judge the sheet at each new value."""
+        self.judge(self.read(values))
+
+    def _read(self, value: float) -> Trial:
+        try:
+            return Trial(value, Bench(self.key.at(value), self.limits), until=self.until)
+        except ReadingError as trouble:
+            return Trial(value, None, trouble, until=self.until)
+
+
+def first_values(key: Movable) -> list[float]:
+    """Return the trial values of the first look, over the whole believable range and at what the sheet has."""
+    low, high = key.span
+    if key.whole:
+        return [float(value) for value in range(int(np.ceil(low)), int(high) + 1)]
+    now = [] if key.now is None else [key.now]
+    if key.kind in LINEAR:
+        return sorted({*np.linspace(low, high, FIRST).tolist(), *now})
+    least = low if low > 0 else max(high * SMALLEST_SHARE, min(key.kind.believable[0], high * 0.01))
+    rising = np.geomspace(least, high, FIRST).tolist()
+    # The product of logarithms need not end where it should; outside the range the sheet would refuse.
+    rising[0], rising[-1] = least, high
+    ends = [low] if low <= 0 else []
+    falling = [-value for value in rising] + [0.0] if low < 0 else []
+    return sorted({*rising, *falling, *ends, *now})
+
+
+def between(low: float, high: float, *, count: int = BETWEEN) -> list[float]:
+    """Return values inside two others: in equal steps, or in equal ratios where they lie far apart."""
+    spaced = np.geomspace if low > 0 and high > 2 * low else np.linspace
+    found = spaced(low, high, count + 2)
+    return [float(value) for value in found[1:-1] if low < value < high]
+
+
+def look_closer(field: Field) -> None:
+    """Look between trial values where a window or a gap may have been stepped over."""
+    if field.key.whole:
+        return
+    for _ in range(ROUNDS):
+        found = list(_hidden(field.ordered))
+        values = [value for low, high in found if _apart(low, high) for value in between(low, high)]
+        if not values:
+            return
+        field.look(values)
+
+
+def _hidden(trials: list[Trial]) -> Iterable[tuple[float, float]]:
+    """Return the neighbourhoods of trials that fail less, or hold more narrowly, than those beside them."""
+    for before, here, after in zip(trials, trials[1:], trials[2:], strict=False):
+        if not before.holds == here.holds == after.holds:
+            continue
+        beside = (before.excess, after.excess)
+        # What rounding alone moves up and down hides nothing.
+        flat = FLAT * (1.0 + abs(here.excess))
+        least, most = here.excess < min(beside) - flat, here.excess > max(beside) + flat
+        if (most if here.holds else least) and np.isfinite(here.excess):
+            yield from ((before.value, here.value), (here.value, after.value))
+
+
+def _apart(low: float, high: float) -> bool:
+    return high - low > 1e-3 * max(abs(low), abs(high))
+
+
+def sharpen(field: Field) -> None:
+    """Look between each value that holds and its neighbour that does not, until they are close."""
+    if field.key.whole:
+        return
+    floor = CLOSELY * min((abs(value) for value in field.trials if value), default=1.0)
+    while True:
+        pairs = list(_ends(field.ordered))
+        values = [value for pair in pairs if _wide(pair, floor) for value in _inside(pair)]
+        # Only what fails at one end is asked for in between; the others are asked for once the ends are found.
+        failing = {id for pair in pairs for trial in pair for id in trial.failing}
+        field.judge(field.read(values), [check for check in field.checks if check.id in failing])
+        if not values:
+            field.judge(trial for pair in pairs for trial in pair)
+            if _values(pairs) == _values(_ends(field.ordered)):
+                return
+
+
+def _ends(trials: list[Trial]) -> Iterable[tuple[Trial, Trial]]:
+    return ((one, other) for one, other in pairwise(trials) if one.holds is not other.holds)
+
+
+def _values(pairs: Iterable[tuple[Trial, Trial]]) -> list[tuple[float, float]]:
+    return [(one.value, other.value) for one, other in pairs]
+
+
+def _wide(pair: tuple[Trial, Trial], floor: float) -> bool:
+    low, high = pair[0].value, pair[1].value
+    return high - low > max(CLOSELY * max(abs(low), abs(high)), floor)
+
+
+def _inside(pair: tuple[Trial, Trial]) -> list[float]:
+    return between(pair[0].value, pair[1].value)

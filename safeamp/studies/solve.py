@@ -1,0 +1,201 @@
+"""At which values of one key the findings that read it hold."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+from dataclasses import replace
+from itertools import groupby
+
+from safeamp.answers import Forbidding, Interval, Solution
+from safeamp.checks import CHECKS, Check
+from safeamp.findings import Finding, Verdict
+from safeamp.limits import Limits, nearest
+from safeamp.studies.edges import Asked, edge_at
+from safeamp.studies.findings import Bench, find, look
+from safeamp.studies.search import Field, Movable, Trial, first_values, holds, look_closer, sharpen
+
+
+def solve(
+    key: Movable,
+    limits: Limits,
+    *,
+    findings: Sequence[str] = (),
+    until: Verdict = Verdict.GO,
+    on_paper: bool = False,
+) -> Solution:
+    """Return where the findings that read a key hold, over its whole believable range.
+
+    Parameters
+    ----------
+    key : Movable
+        The number that is moved; its tolerance goes with it.
+    limits : Limits
+        What the findings are judged by.
+    findings : sequence of str
+        Ids; all that read the key when empty.
+    until : Verdict
+        The worst word that counts as holding: go or caution.
+    on_paper : bool
+        Leave out what is read at the bench.
+
+    Raises
+    ------
+    KeyError
+        If there is no such finding.
+    ValueError
+        If `until` clears nothing.
+    ReadingError
+        If the sheet can have no value at all there.
+    """
+    if not until.clears:
+        raise ValueError(f"a finding is held at go or caution, not at {until.word}")
+    named = [_named(id) for id in findings]
+    field = Field(key, limits, until)
+    field.read(first_values(key))
+    readable = [trial for trial in field.ordered if trial.bench is not None]
+    if not readable:
+        raise _refusal(field)
+    field.checks = [
+        check for check in (named or _reading(key, readable)) if not (on_paper and check.at_bench)
+    ]
+    return _answer(field, on_paper=on_paper)
+
+
+def _named(id: str) -> Check:
+    if id not in CHECKS:
+        raise KeyError(f"{id} is not a finding{nearest(id, CHECKS)}")
+    return CHECKS[id]
+
+
+def _refusal(field: Field) -> BaseException:
+    """Return what the sheet says of the value it has now, or of the first one."""
+    troubles = [trial.trouble for trial in field.ordered if trial.trouble is not None]
+    return troubles[0]
+
+
+def _reading(key: Movable, trials: list[Trial]) -> list[Check]:
+    """Return the checks that read the key, or what the sheet fills in after it."""
+    moved = _moved(trials) | {key.path}
+    middle = min(range(len(trials)), key=lambda place: abs(trials[place].value - (key.now or 0.0)))
+    seen = [trials[place].bench for place in dict.fromkeys((0, middle, len(trials) - 1))]
+    return [
+        check
+        for check in CHECKS.values()
+        if any(_list_of(path) in moved for bench in seen if bench for path in look(check, bench)[1].reads)
+    ]
+
+
+def _moved(trials: list[Trial]) -> set[str]:
+    """Return the paths, lists without the places of their items, whose values differ between trials."""
+    first, *others = [trial.bench.sheet.entries for trial in trials if trial.bench is not None]
+    return {
+        _list_of(path)
+        for entries in others
+        for path in first.keys() | entries.keys()
+        if (first[path].nominal if path in first else None)
+        != (entries[path].nominal if path in entries else None)
+    }
+
+
+def _list_of(path: str) -> str:
+    head, _, tail = path.rpartition(".")
+    return head if tail.isdigit() else path
+
+
+def _answer(field: Field, *, on_paper: bool) -> Solution:
+    """Return the solution for the checks of a field whose trials are read."""
+    field.judge(field.ordered)
+    key, sheet = field.key, next(trial.bench.sheet for trial in field.ordered if trial.bench is not None)
+    solution = Solution(
+        title=sheet.amplifier.title,
+        key=key.path,
+        kind=key.kind,
+        until=field.until,
+        findings=tuple(check.id for check in field.checks),
+        span=key.span,
+        now=key.now,
+        on_paper=on_paper,
+        source=sheet.source,
+        digest=sheet.digest,
+    )
+    if not field.checks:
+        return replace(solution, tried=len(field.trials))
+    never = [check for check in field.checks if not _holding(field, check.id)]
+    if not never:
+        look_closer(field)
+        sharpen(field)
+    now = None if key.now is None else field.trials.get(key.now)
+    return replace(
+        solution,
+        now_holds=now is not None and now.holds,
+        intervals=tuple(_intervals(field, on_paper=on_paper)),
+        tried=len(field.trials),
+        forbidden=_forbidden(field),
+        otherwise=_otherwise(field, never, on_paper=on_paper),
+    )
+
+
+def _holding(field: Field, id: str) -> list[float]:
+    """Return the trial values at which one finding holds."""
+    return [trial.value for trial in field.ordered if trial.bench and holds(trial.words[id], field.until)]
+
+
+def _intervals(field: Field, *, on_paper: bool) -> Iterator[Interval]:
+    ordered, place = field.ordered, 0
+    asked = Asked(field.key, field.limits, field.checks, field.until, on_paper)
+    for good, group in groupby(ordered, key=lambda trial: trial.holds):
+        run = list(group)
+        before, after = ordered[:place][::-1], ordered[place + len(run) :]
+        place += len(run)
+        if good:
+            yield Interval(
+                edge_at(asked, run, before) if before else None,
+                edge_at(asked, run[::-1], after) if after else None,
+            )
+
+
+def _forbidden(field: Field) -> tuple[Forbidding, ...]:
+    """Return what keeps every value from holding; nothing where one does."""
+    if any(trial.holds for trial in field.ordered):
+        return ()
+    read = [trial for trial in field.ordered if trial.bench is not None]
+    where = {check.id: _holding(field, check.id) for check in field.checks}
+    never = [check for check in field.checks if not where[check.id]]
+    shown = never or [check for check in field.checks if len(where[check.id]) < len(read)]
+    return tuple(
+        Forbidding(
+            _finding(check, trial),
+            trial.value,
+            (where[check.id][0], where[check.id][-1]) if where[check.id] else None,
+        )
+        for check in shown
+        for trial in [_shown_at(field, read, check.id)]
+    )
+
+
+def _shown_at(field: Field, trials: list[Trial], id: str) -> Trial:
+    """Return the trial at which a finding is shown that does not hold: the value of the sheet, or a narrow miss."""
+    failing = [trial for trial in trials if id in trial.failing]
+    return min(failing, key=lambda trial: (trial.value != field.key.now, trial.words[id].excess))
+
+
+def _finding(check: Check, trial: Trial) -> Finding:
+    assert trial.bench is not None
+    found = find(check, Bench(trial.bench.sheet, trial.bench.limits))
+    assert isinstance(found, Finding)
+    return found
+
+
+def _otherwise(field: Field, never: list[Check], *, on_paper: bool) -> Solution | None:
+    """Return the answer for the findings that hold somewhere, where others never do."""
+    rest = [check for check in field.checks if check not in never]
+    if not never or not rest:
+        return None
+    fresh = Field(field.key, field.limits, field.until, rest)
+    fresh.trials = {
+        value: replace(
+            trial, words={check.id: trial.words[check.id] for check in rest if check.id in trial.words}
+        )
+        for value, trial in field.trials.items()
+    }
+    return _answer(fresh, on_paper=on_paper)
