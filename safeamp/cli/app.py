@@ -15,7 +15,9 @@ from safeamp.cli.loudspeaker import loudspeaker
 from safeamp.cli.offset import offset
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, complaining, emit, fail
+from safeamp.cli.overview import overview
 from safeamp.cli.soa import soa
+from safeamp.cli.solve import solve
 from safeamp.cli.substitute import substitute
 from safeamp.cli.tolerance import tolerance
 
@@ -200,3 +202,5 @@ app.command("soa")(soa)
 app.command("heatsink")(heatsink)
 app.command("offset")(offset)
 app.command("loudspeaker")(loudspeaker)
+app.command("solve")(solve)
+app.command("overview")(overview)
