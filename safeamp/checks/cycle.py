@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
+
 import numpy as np
 
 from safeamp.amplifier import Amplifier
@@ -12,11 +14,14 @@ from safeamp.findings import Remark, Verdict
 from safeamp.physics import stage
 from safeamp.physics.safe_area import Pulse, Rating, curves_problem
 from safeamp.physics.transient import cycle_dissipation, peak_ripple
-from safeamp.quantities import THERMAL_RESISTANCE, Number
+from safeamp.quantities import THERMAL_RESISTANCE, Number, Origin
 
 #: Pairs that add up to another thermal resistance than the printed one by more than this contradict it.
 APART = 0.15
 NOTE = "loudspeaker.lowest_note"
+
+Seen = tuple[Number, Number] | None
+"""Magnitude (ohm) and angle (deg) of a load in place of the nominal one."""
 
 
 def devices_of(amplifier: Amplifier) -> dict[str, str]:
@@ -79,17 +84,53 @@ def transient_remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
     return tuple(found)
 
 
-def pulse_of(amplifier: Amplifier, side: str, junction: Number) -> Pulse | None:
+@dataclass(frozen=True, eq=False)
+class Cut:
+    """What bounds the use of the safe area beyond the DC curve: pulse curves, and a V-I limiter's line."""
+
+    pulse: Pulse | None = None
+    limiter: tuple[tuple[float, float], ...] = ()
+
+    @property
+    def is_none(self) -> bool:
+        """Whether the DC curve and the load's own locus say everything."""
+        return self.pulse is None and not self.limiter
+
+
+UNCUT = Cut()
+
+
+def cut_of(amplifier: Amplifier, side: str, fraction: float, angle: Number = 0.0, load: Seen = None) -> Cut:
+    """Return what bounds the use of a side's devices, warm from a fraction of clipping power.
+
+    Only a limiter that was measured cuts the locus: another may act later than its points say.
+    """
+    points = amplifier.protection.vi_limiter if limiter_measured(amplifier) else None
+    return Cut(_pulse(amplifier, side, fraction, angle, load), points or ())
+
+
+def limiter_measured(amplifier: Amplifier) -> bool:
+    """Whether the points of the V-I limiter were measured."""
+    return amplifier.origin("protection.vi_limiter") in (Origin.MEASURED, Origin.EXAMPLE)
+
+
+def method(cut: Cut) -> str:
+    """Return what a finding of the safe area adds to its method."""
+    pulse = "; pulse curves for half a cycle of the lowest note, from the mean junction" if cut.pulse else ""
+    return f"{pulse}; cut at the V-I limiter" if cut.limiter else pulse
+
+
+def _pulse(amplifier: Amplifier, side: str, fraction: float, angle: Number, load: Seen) -> Pulse | None:
     """Return half a cycle of the lowest note with the curves of a side's device, None where there are none.
 
-    Every pulse starts from the mean temperature of the junction, degC.
+    Every pulse starts from the mean temperature of the junction.
     """
     device = operating.device_of(amplifier, side)
     if device.pulse is None:
         return None
     return Pulse(
         duration=0.5 / np.asarray(needed(amplifier, NOTE)[0]),
-        junction=junction,
+        junction=_hotter_junction(amplifier, side, fraction, angle, load),
         curves=device.pulse,
         transient=device.transient or (),
     )
@@ -105,13 +146,8 @@ def pulse_remarks(amplifier: Amplifier, side: str, rating: Rating) -> tuple[Rema
     return (Remark(Verdict.UNVERIFIED, f"device.{name}.pulse: {problem}: read both again"),)
 
 
-def hotter_junction(
-    amplifier: Amplifier,
-    side: str,
-    fraction: float,
-    angle: Number = 0.0,
-) -> Number:
+def _hotter_junction(amplifier: Amplifier, side: str, fraction: float, angle: Number, load: Seen) -> Number:
     """Return the mean junction temperature of a side's hottest device, the hotter of no signal and a level, degC."""
     quiet = thermal.temperatures(amplifier, thermal.no_signal(amplifier), side)
-    loud = thermal.temperatures(amplifier, thermal.at_level(amplifier, fraction, angle), side)
+    loud = thermal.temperatures(amplifier, thermal.at_level(amplifier, fraction, angle, load), side)
     return np.maximum(quiet.junction, loud.junction)

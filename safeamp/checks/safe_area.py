@@ -9,8 +9,9 @@ from typing import Any
 import numpy as np
 
 from safeamp.amplifier import Amplifier
-from safeamp.checks import curve, operating, thermal
+from safeamp.checks import curve, cycle, operating, thermal
 from safeamp.checks.as_built import as_built
+from safeamp.checks.beside import bridge_remarks, limiter_remarks, one_open_also, uncut_also
 from safeamp.checks.driver import any_signal_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import needed
@@ -91,14 +92,22 @@ def _drive(amplifier: Amplifier, side: str, load: Load) -> dict[str, Any]:
     }
 
 
-def use_of(amplifier: Amplifier, side: str, load: Load, case: Number, rating: Rating) -> Use:
+def use_of(
+    amplifier: Amplifier, side: str, load: Load, case: Number, rating: Rating, cut: cycle.Cut = cycle.UNCUT
+) -> Use:
     """Return the use of the safe area of a side into a load, at a case temperature (degC)."""
-    return safe_area.envelope_use(**_drive(amplifier, side, load), case_temperature=case, rating=rating)
+    driven = {**_drive(amplifier, side, load), "case_temperature": case, "rating": rating}
+    if cut.is_none:
+        return safe_area.envelope_use(**driven)
+    return safe_area.cut_use(**driven, pulse=cut.pulse, limiter=cut.limiter)
 
 
-def path_of(amplifier: Amplifier, side: str, load: Load, output_angle: Number) -> tuple[Number, Number]:
+def path_of(
+    amplifier: Amplifier, side: str, load: Load, output_angle: Number, *, one_angle: bool = False
+) -> tuple[Number, Number]:
     """Return the voltages and currents through which a load takes the worst device of a side, one case."""
-    return safe_area.envelope_path(output_angle=output_angle, **_drive(amplifier, side, load))
+    path = safe_area.angle_path if one_angle else safe_area.envelope_path
+    return path(output_angle=output_angle, **_drive(amplifier, side, load))
 
 
 def _imbalance(amplifier: Amplifier) -> Number | None:
@@ -127,6 +136,7 @@ class Worst:
     case: Number
     side: str
     load: Load
+    cut: cycle.Cut
     frequency: float = np.nan
     """Hz of the worst point of a curve; nan without one."""
 
@@ -135,12 +145,12 @@ def _worst(amplifier: Amplifier, loads: tuple[Load, ...], fraction: float, angle
     found = []
     for side in sides_to_judge(amplifier):
         case = thermal.hotter_case(amplifier, side, fraction, angle)
-        rating = rating_of(amplifier, side)
-        found += [(use_of(amplifier, side, load, case, rating), case, side, load) for load in loads]
-    point, case, side, load = max(found, key=lambda one: _sortable(one[0].use))
+        rating, cut = rating_of(amplifier, side), cycle.cut_of(amplifier, side, fraction, angle)
+        found += [(use_of(amplifier, side, load, case, rating, cut), case, side, load, cut) for load in loads]
+    point, case, side, load, cut = max(found, key=lambda one: _sortable(one[0].use))
     use = reduce(np.maximum, [one[0].use for one in found])
     unknown = reduce(np.logical_or, [one[0].enters_unknown for one in found])
-    return Worst(use, unknown, point, case, side, load)
+    return Worst(use, unknown, point, case, side, load, cut)
 
 
 def _worst_of_curve(amplifier: Amplifier, points: curve.Points) -> Worst:
@@ -154,13 +164,15 @@ def _worst_of_curve(amplifier: Amplifier, points: curve.Points) -> Worst:
     unknown = reduce(np.logical_or, [one[0].unknown for one in found])
     point = points.at(worst.place)
     load = _curve_load(amplifier, point)
-    return Worst(use, unknown, worst.point, case, side, load, float(point.frequency))
+    cut = cycle.cut_of(amplifier, side, thermal.ONE_EIGHTH, load=heating)
+    return Worst(use, unknown, worst.point, case, side, load, cut, float(point.frequency))
 
 
 def _of_curve(amplifier: Amplifier, points: curve.Points, side: str, case: Number) -> curve.OfCurve:
     def use_into(one: Amplifier, magnitude: Number, angle: Number, warm: Number) -> Use:
-        driven = _drive(one, side, Load(magnitude, angle, ""))
-        return safe_area.angle_use(**driven, case_temperature=warm, rating=rating_of(one, side))
+        heating = curve.heating_load(one, points, thermal.ONE_EIGHTH)
+        cut = cycle.cut_of(one, side, thermal.ONE_EIGHTH, load=heating)
+        return use_of(one, side, Load(magnitude, angle, ""), warm, rating_of(one, side), cut)
 
     return curve.worst_use(amplifier, points, case, use_into)
 
@@ -196,7 +208,7 @@ def _remarks_on(amplifier: Amplifier, name: str) -> list[Remark]:
     problem = safe_area.points_problem(rating_of(amplifier, side))
     if problem is not None:
         found.append(Remark(Verdict.UNVERIFIED, problem))
-    return found
+    return [*found, *cycle.pulse_remarks(amplifier, side, rating_of(amplifier, side))]
 
 
 def _needs(amplifier: Amplifier) -> tuple[str, ...]:
@@ -250,17 +262,22 @@ def worst_into_resistor(amplifier: Amplifier) -> Worst:
 def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
     """Use of the safe area into a resistor of the nominal impedance."""
     worst = worst_into_resistor(amplifier)
+    uncut = uncut_also(amplifier, worst.cut, lambda one: worst_into_resistor(one).use)
     return Measure(
         worst.use,
         _says(worst, worst.use),
-        remarks=device_remarks(amplifier, limits),
+        remarks=(*device_remarks(amplifier, limits), *_limiter_remarks(amplifier, worst, uncut)),
         unknown=worst.unknown,
         needs=_needs(amplifier),
         at=_point(worst),
-        also=_usable(amplifier, worst),
+        also=(*uncut, *_usable(amplifier, worst)),
         next="passing with a resistor says nothing about a loudspeaker",
-        method=METHOD,
+        method=f"{METHOD}{cycle.method(worst.cut)}",
     )
+
+
+def _limiter_remarks(amplifier: Amplifier, worst: Worst, uncut: tuple[Also, ...]) -> tuple[Remark, ...]:
+    return limiter_remarks(amplifier, worst.point, uncut, worst.case, rating_of(amplifier, worst.side))
 
 
 def _usable(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
@@ -286,21 +303,38 @@ def worst_into_loudspeaker(amplifier: Amplifier) -> Worst:
     return _worst(amplifier, loads(amplifier, angle), thermal.ONE_EIGHTH, angle)
 
 
+def into_loudspeaker(amplifier: Amplifier) -> Number:
+    """Return the worst use into the loudspeaker as a number."""
+    return worst_into_loudspeaker(amplifier).use
+
+
 @finding("soa.loudspeaker", Step.LOUDSPEAKER, RATIO)
 def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
     """Use of the safe area into the loudspeaker: nominal at its angle, minimum at 30 deg, the worse counts."""
     worst = worst_into_loudspeaker(amplifier)
     open_load = _open_load(amplifier, worst)
+    uncut = uncut_also(amplifier, worst.cut, into_loudspeaker)
     return Measure(
         worst.use,
         _says(worst, worst.use),
-        remarks=(*device_remarks(amplifier, limits), *_open_remarks(open_load)),
+        remarks=(
+            *device_remarks(amplifier, limits),
+            *_open_remarks(open_load),
+            *_limiter_remarks(amplifier, worst, uncut),
+            *bridge_remarks(amplifier),
+        ),
         unknown=worst.unknown,
         needs=_needs(amplifier),
         at=_point(worst),
-        also=(*_beside(amplifier, worst), *open_load, *_usable(amplifier, worst)),
+        also=(
+            *_beside(amplifier, worst),
+            *uncut,
+            *one_open_also(amplifier, into_loudspeaker, RATIO),
+            *open_load,
+            *_usable(amplifier, worst),
+        ),
         next=NEXT,
-        method=METHOD if np.isnan(worst.frequency) else CURVE_METHOD,
+        method=f"{METHOD if np.isnan(worst.frequency) else CURVE_METHOD}{cycle.method(worst.cut)}",
         as_built=as_built(amplifier, limits["soa.loudspeaker"], limits["loudspeaker.label"]),
     )
 
@@ -340,7 +374,7 @@ def _beside(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
 def _at_sixty(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
     magnitude, turned = operating.nominal_load(amplifier, SHOWN_ANGLE)
     load = Load(magnitude, turned, "60 deg")
-    use = use_of(amplifier, worst.side, load, worst.case, rating_of(amplifier, worst.side))
+    use = use_of(amplifier, worst.side, load, worst.case, rating_of(amplifier, worst.side), worst.cut)
     return (Also("60 deg", nominal(use.use), RATIO),)
 
 
@@ -352,7 +386,7 @@ def _open_load(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
     if not nominal(operating.idle_current(amplifier)) > OPEN_LOAD_IDLE * nominal(peak):
         return ()
     rating = rating_of(amplifier, worst.side)
-    use = use_of(amplifier, worst.side, Load(OPEN_LOAD, 0.0, "no load"), worst.case, rating)
+    use = use_of(amplifier, worst.side, Load(OPEN_LOAD, 0.0, "no load"), worst.case, rating, worst.cut)
     return (Also("driven without a load", nominal(use.use), RATIO),)
 
 
