@@ -3,7 +3,7 @@
 from safeamp.physics.safe_area.boundary import allowed_current
 from safeamp.physics.safe_area.cut import cut_use
 from safeamp.physics.safe_area.locus import ZONES, Use
-from safeamp.physics.safe_area.path import envelope_path
+from safeamp.physics.safe_area.path import angle_path, envelope_path
 from safeamp.physics.safe_area.peak import equivalent_resistance, peak_dissipation
 from safeamp.physics.safe_area.pulse import Pulse, curves_problem
 from safeamp.physics.safe_area.rating import Rating, derating, points_problem, usable_power
@@ -16,6 +16,7 @@ __all__ = [
     "Rating",
     "Use",
     "allowed_current",
+    "angle_path",
     "angle_use",
     "curves_problem",
     "cut_use",
