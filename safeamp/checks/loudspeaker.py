@@ -8,6 +8,7 @@ import numpy as np
 
 from safeamp.amplifier import Amplifier, Fuse
 from safeamp.checks import operating
+from safeamp.checks.fault_also import rail_fuse_also, until_stopped
 from safeamp.checks.programme import ROOM, programme_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
@@ -165,7 +166,12 @@ def _stopped_in_time(
             *_trip_remarks(amplifier, limits),
             *_contact_remarks(amplifier, fault, relay, fuse, burns_after, limits),
         ),
-        also=(*also, *_times(acts_after, burns_after)),
+        also=(
+            *also,
+            *_times(acts_after, burns_after),
+            *until_stopped(power, acts_after),
+            *rail_fuse_also(amplifier, fault.volts, lambda fuse: gates_of(fuse, limits)),
+        ),
         next="a relay with a DC detector, or a loudspeaker fuse, must act before the coil reaches its limit",
         method="two-stage heating of the coil, copper's resistance rise, relay delay, slowest fuse gate",
     )
