@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
-from typing import Any
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -19,7 +18,7 @@ from safeamp.physics.safe_area.vi_limiter import limiter_current
 from safeamp.physics.stage import THERMAL_VOLTAGE, Law, carrying_current, worst_device_current
 
 #: deg; the limiter bends the locus and each curve the boundary, so the first look is a close one.
-_PHASES = np.linspace(-90.0, 90.0, 145)
+_PHASES = np.linspace(-90.0, 90.0, 97)
 _STEPS = np.arange(-4, 5) / 4.0
 _ROUNDS = 4
 
@@ -147,10 +146,13 @@ def _worst(locus: Callable[[Array], tuple[Array, Array]], area: Boundary) -> Use
     """Return the worst point of a locus, phases on the first axis, and whether it enters the unknown."""
     ndim = np.ndim(_ratio(*locus(np.asarray(0.0)), area))
     phases = _PHASES.reshape(-1, *(1,) * ndim)
-    worst = _climb(phases, lambda phase: _ratio(*locus(phase), area))
-    far = _climb(phases, lambda phase: _reach(*locus(phase), area))
-    reach = _reach(*locus(far), area)
-    worst = np.where(reach > area.rating.voltage, far, worst)
+    voltage, current = locus(phases)
+    worst = _climb(phases, _ratio(voltage, current, area), lambda phase: _ratio(*locus(phase), area))
+    reach: Array = np.asarray(-np.inf)
+    if not np.all(voltage <= np.fmin(area.last, area.rating.voltage)):
+        far = _climb(phases, _reach(voltage, current, area), lambda phase: _reach(*locus(phase), area))
+        reach = _reach(*locus(far), area)
+        worst = np.where(reach > area.rating.voltage, far, worst)
     voltage, current = locus(worst)
     enters = (reach > area.last) & (area.last < area.rating.voltage)
     found = (_ratio(voltage, current, area), voltage, current, _zone(voltage, area), enters)
@@ -162,9 +164,9 @@ def _reach(voltage: Array, current: Array, area: Boundary) -> Array:
     return np.where(_counted(current, area) == 0, -np.inf, voltage)
 
 
-def _climb(phases: Array, score: Callable[[Array], Any]) -> Array:
+def _climb(phases: Array, coarse: Array, score: Callable[[Array], Array]) -> Array:
     """Return the phase of the highest score, refined around the best of the first look; nan scores win."""
-    best, step = _best(phases, score(phases)), _PHASES[1] - _PHASES[0]
+    best, step = _best(phases, coarse), _PHASES[1] - _PHASES[0]
     steps = _STEPS.reshape(phases[: len(_STEPS)].shape)
     for _ in range(_ROUNDS):
         trial = np.clip(best + step * steps, -90.0, 90.0)
