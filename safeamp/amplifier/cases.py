@@ -6,8 +6,6 @@ from collections.abc import Iterator, Mapping
 from dataclasses import fields, is_dataclass, replace
 from typing import Any, TypeVar
 
-import numpy as np
-
 from safeamp.amplifier.load import Curve
 from safeamp.amplifier.tree import TABLES, Amplifier
 
@@ -18,7 +16,7 @@ def number_of_cases(amplifier: Amplifier) -> int | None:
     """Return how many cases an amplifier holds, None when it is a single one."""
     for name in TABLES:
         for leaf in _leaves(getattr(amplifier, name)):
-            if np.ndim(leaf) == 1:
+            if leaf.ndim == 1:
                 return len(leaf)
     return None
 
@@ -28,8 +26,14 @@ def at_case(amplifier: Amplifier, case: int) -> Amplifier:
     return replace(amplifier, **{name: _picked(getattr(amplifier, name), case) for name in TABLES})
 
 
+def _is_array(node: Any) -> bool:
+    import numpy as np  # here, because lists of keys must not wait for it
+
+    return isinstance(node, np.ndarray) and node.ndim > 0
+
+
 def _leaves(node: Any) -> Iterator[Any]:
-    """Yield the numbers and arrays of a table."""
+    """Yield the arrays of a table."""
     if isinstance(node, Curve):
         return
     if isinstance(node, Mapping):
@@ -41,7 +45,7 @@ def _leaves(node: Any) -> Iterator[Any]:
     elif is_dataclass(node):
         for item in fields(node):
             yield from _leaves(getattr(node, item.name))
-    elif isinstance(node, np.ndarray):
+    elif _is_array(node):
         yield node
 
 
@@ -55,4 +59,4 @@ def _picked(node: Any, case: int) -> Any:
         return tuple(_picked(item, case) for item in node)
     if is_dataclass(node) and not isinstance(node, type):
         return replace(node, **{item.name: _picked(getattr(node, item.name), case) for item in fields(node)})
-    return float(node[case]) if isinstance(node, np.ndarray) and node.ndim else node
+    return float(node[case]) if _is_array(node) else node
