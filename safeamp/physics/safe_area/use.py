@@ -10,7 +10,7 @@ from numpy.typing import ArrayLike
 from safeamp.physics._checks import Array, array, non_negative, positive, refuse, within
 from safeamp.physics._chunks import chunks_of
 from safeamp.physics.safe_area.boundary import boundary
-from safeamp.physics.safe_area.device import device_of
+from safeamp.physics.safe_area.device import Device, device_of
 from safeamp.physics.safe_area.lines import worst_along_lines
 from safeamp.physics.safe_area.locus import Use
 from safeamp.physics.safe_area.rating import Rating
@@ -41,6 +41,11 @@ def _rated(rating: Rating) -> Iterator[Any]:
     yield rating.junction_to_case
     for point in rating.points:
         yield from point
+
+
+def _driven(device: Device) -> Iterator[Any]:
+    yield from (device.supply, device.each, device.resistor, device.idle, device.angle)
+    yield device.parameter if device.law is Law.MOSFET else None
 
 
 @chunks_of(CHUNK)
@@ -123,46 +128,55 @@ def envelope_use(
         thermal_voltage=thermal_voltage,
     )
     found = worst_along_lines(device=device, boundary=boundary(rating, array(case_temperature)))
-    values = (
-        device.supply,
-        device.each,
-        device.resistor,
-        device.idle,
-        device.angle,
-        case_temperature,
-        imbalance,
-    )
-    parameter = device.parameter if law is Law.MOSFET else None
-    unknown = _unknown((*values, parameter, *_rated(rating)))
+    unknown = _unknown((*_driven(device), case_temperature, imbalance, *_rated(rating)))
     return replace(found, use=np.where(unknown, np.nan, found.use))
 
 
-def angle_use(*, phase_angle: ArrayLike, **more: Any) -> Use:
+def angle_use(
+    *,
+    half_supply: ArrayLike,
+    peak: ArrayLike,
+    load_magnitude: ArrayLike,
+    phase_angle: ArrayLike,
+    conducting: ArrayLike,
+    emitter_resistor: ArrayLike,
+    idle_current: ArrayLike,
+    law: Law,
+    imbalance: ArrayLike | None,
+    case_temperature: ArrayLike,
+    rating: Rating,
+    transconductance_parameter: ArrayLike | None = None,
+    thermal_voltage: float = THERMAL_VOLTAGE,
+) -> Use:
     """Return the use of the safe area into a load of one angle, every amplitude up to `peak`.
 
     It is that of the envelope. The ellipse of the largest amplitude encloses those of the smaller ones, and both
     signs of an angle run through the same points. Up to the output voltage at which its current peaks, the largest
     angle draws more than any smaller one; beyond, the envelope has that same peak current at less device voltage.
 
-    Parameters
-    ----------
-    phase_angle : array_like
-        deg, -90 to 90; the sign does not matter.
-    **more
-        As in `envelope_use`.
+    Parameters and errors as in `envelope_use`.
 
     Returns
     -------
     Use
         One value a case; nan where an input is nan.
 
-    Raises
-    ------
-    ValueError
-        If a value is outside its range.
-
     References
     ----------
     Ellipse of a sine into a complex load; derived.
     """
-    return envelope_use(phase_angle=phase_angle, **more)
+    return envelope_use(
+        half_supply=half_supply,
+        peak=peak,
+        load_magnitude=load_magnitude,
+        phase_angle=phase_angle,
+        conducting=conducting,
+        emitter_resistor=emitter_resistor,
+        idle_current=idle_current,
+        law=law,
+        imbalance=imbalance,
+        case_temperature=case_temperature,
+        rating=rating,
+        transconductance_parameter=transconductance_parameter,
+        thermal_voltage=thermal_voltage,
+    )
