@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from weakref import WeakKeyDictionary
 
 import numpy as np
 
@@ -25,6 +26,10 @@ class Dissipation:
     mean_current: Number
 
 
+#: Several checks ask for the heat of the same level of the same cases; it is the dearest number of most of them.
+_KNOWN: WeakKeyDictionary[Amplifier, dict[tuple[float, float], Dissipation]] = WeakKeyDictionary()
+
+
 def no_signal(amplifier: Amplifier) -> Dissipation:
     """Return the heat without signal at the no-load rails."""
     idle = operating.idle_current(amplifier)
@@ -41,6 +46,21 @@ def at_level(
     amplifier: Amplifier, fraction: Number, angle: Number = 0.0, load: tuple[Number, Number] | None = None
 ) -> Dissipation:
     """Return the heat of a sine at a fraction of clipping power into the nominal load at an angle, or into another."""
+    plain = load is None and np.ndim(angle) == np.ndim(fraction) == 0
+    if not plain or not isinstance(
+        amplifier, Amplifier
+    ):  # a watched amplifier is read anew: what is read is noted
+        return _level(amplifier, fraction, angle, load)
+    known = _KNOWN.setdefault(amplifier, {})
+    level = (float(fraction), float(angle))
+    if level not in known:
+        known[level] = _level(amplifier, fraction, angle, load)
+    return known[level]
+
+
+def _level(
+    amplifier: Amplifier, fraction: Number, angle: Number, load: tuple[Number, Number] | None
+) -> Dissipation:
     magnitude, turned = operating.nominal_load(amplifier, angle) if load is None else load
     peak = stage.level_peak(clipping_peak=operating.clipping_peak(amplifier), fraction=fraction)
     upper, lower = operating.sides(amplifier)
@@ -65,14 +85,16 @@ def _sine(
         "law": operating.law_of(device),
         "transconductance_parameter": device.transconductance_parameter,
     }
-    power = stage.pair_heat(
+    currents = stage.mean_currents(peak_current=peak / magnitude, **common)
+    power = stage.heat_of_currents(
+        currents=currents,
         half_supply=operating.level_half_supply(amplifier, fraction),
         peak=peak,
         load_magnitude=magnitude,
         phase_angle=angle,
-        **common,
+        conducting=common["conducting"],
+        emitter_resistor=common["emitter_resistor"],
     )
-    currents = stage.mean_currents(peak_current=peak / magnitude, **common)
     return Dissipation(power, currents.mean)
 
 

@@ -3,6 +3,7 @@
 from collections.abc import Callable, Iterator
 from dataclasses import fields, is_dataclass, replace
 from functools import wraps
+from itertools import pairwise
 from typing import Any, ParamSpec, TypeVar
 
 import numpy as np
@@ -66,7 +67,10 @@ def chunks_of(size: int) -> Callable[[Callable[P, R]], Callable[P, R]]:
             shape = np.broadcast_shapes(*(np.shape(leaf) for leaf in _leaves(tuple(kwargs.values()))))
             if args or not shape or shape[0] <= size:
                 return function(*args, **kwargs)
-            pieces = [slice(start, start + size) for start in range(0, shape[0], size)]
+            ends = np.linspace(0, shape[0], -(-shape[0] // size) + 1).astype(
+                int
+            )  # even: no piece of a few cases
+            pieces = [slice(*both) for both in pairwise(ends.tolist())]
             whole: R = _joined([_call(function, kwargs, shape, piece) for piece in pieces])
             return whole
 

@@ -157,3 +157,12 @@ def test_closed_forms_refuse_too():
         stage.class_b_heat(half_supply=30, peak=31, load_magnitude=8)
     with pytest.raises(ValueError, match=r"half_supply less the drop .* zero or more, got -2"):
         stage.no_signal_heat(half_supply=10, idle_current=12, emitter_resistor=1, conducting=1)
+
+
+def test_heat_of_known_currents_is_the_balance_of_powers():
+    # 2*n*(Vs*mean - Re*square) - Vp**2/|Z|*cos(phi)/2, by hand: 2*2*(30*0.9 - 0.22*1.7) - 20**2/8*0.5/2 = 94.004 W
+    currents = stage.MeanCurrents(mean=0.9, mean_square=1.7)
+    known = {"currents": currents, "half_supply": 30, "peak": 20, "load_magnitude": 8, "phase_angle": 60}
+    assert stage.heat_of_currents(**known, conducting=2, emitter_resistor=0.22) == pytest.approx(94.004)
+    with pytest.raises(ValueError, match="peak must be at most half_supply, got 31"):
+        stage.heat_of_currents(**known | {"peak": 31}, conducting=2, emitter_resistor=0.22)

@@ -9,6 +9,7 @@ from safeamp.physics.stage.class_b import (
 )
 from safeamp.physics.stage.heat import (
     MeanCurrents,
+    heat_of_currents,
     mean_currents,
     mean_rail_current,
     no_signal_heat,
@@ -31,6 +32,7 @@ __all__ = [
     "class_b_heat",
     "clipped_peak",
     "device_currents",
+    "heat_of_currents",
     "level_peak",
     "load_combination",
     "load_power",

@@ -6,12 +6,14 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from safeamp.physics._checks import Array, array, non_negative, positive, refuse, within
-from safeamp.physics._chunks import in_chunks
+from safeamp.physics._chunks import chunks_of
 from safeamp.physics.stage.law import THERMAL_VOLTAGE, Law, device_currents
 
 _NODES, _WEIGHTS = np.polynomial.legendre.leggauss(20)
 _SINES = np.sin((_NODES + 1.0) * np.pi / 4.0)
 _SHARES = _WEIGHTS / 2.0
+CHUNK = 2048
+"""Cases at a time: with twenty nodes each, one array takes 330 KiB."""
 
 
 class MeanCurrents(NamedTuple):
@@ -23,7 +25,7 @@ class MeanCurrents(NamedTuple):
     """A2."""
 
 
-@in_chunks
+@chunks_of(CHUNK)
 def mean_currents(
     *,
     peak_current: ArrayLike,
@@ -68,17 +70,20 @@ def mean_currents(
     """
     non_negative(peak_current=peak_current)
     refuse("conducting", conducting, array(conducting) < 1, "one or more")
-    parameter = transconductance_parameter
+    given = (peak_current, conducting, emitter_resistor, idle_current, transconductance_parameter)
+    axes = max(np.ndim(value) for value in given if value is not None)
+    # The nodes stand on the first axis, so that the inner loops run over the cases and not over twenty nodes.
+    sines, shares = (one.reshape(-1, *(1,) * axes) for one in (_SINES, _SHARES))
     larger, smaller = device_currents(
-        load_current=(array(peak_current) / array(conducting))[..., None] * _SINES,
-        idle_current=array(idle_current)[..., None],
-        emitter_resistor=array(emitter_resistor)[..., None],
+        load_current=array(peak_current) / array(conducting) * sines,
+        idle_current=array(idle_current),
+        emitter_resistor=array(emitter_resistor),
         law=law,
-        transconductance_parameter=None if parameter is None else array(parameter)[..., None],
+        transconductance_parameter=transconductance_parameter,
         thermal_voltage=thermal_voltage,
     )
-    total, squares = (larger + smaller) * _SHARES, (larger**2 + smaller**2) * _SHARES
-    return MeanCurrents(total.sum(axis=-1) / 2.0, squares.sum(axis=-1) / 2.0)
+    total, squares = (larger + smaller) * shares, (larger**2 + smaller**2) * shares
+    return MeanCurrents(total.sum(axis=0) / 2.0, squares.sum(axis=0) / 2.0)
 
 
 def mean_rail_current(
@@ -117,7 +122,7 @@ def mean_rail_current(
     return rail
 
 
-@in_chunks
+@chunks_of(CHUNK)
 def pair_heat(
     *,
     half_supply: ArrayLike,
@@ -163,12 +168,9 @@ def pair_heat(
     Balance of powers; derived. Without idle current and resistors it is class B of R. Boylestad,
     L. Nashelsky, Electronic Devices and Circuit Theory, Pearson, ch. 12.
     """
-    positive(half_supply=half_supply, load_magnitude=load_magnitude)
-    refuse("peak", peak, array(peak) > array(half_supply), "at most half_supply")
-    within(-90.0, 90.0, phase_angle=phase_angle)
-    peak_current = array(peak) / array(load_magnitude)
+    positive(load_magnitude=load_magnitude)
     currents = mean_currents(
-        peak_current=peak_current,
+        peak_current=array(peak) / array(load_magnitude),
         conducting=conducting,
         emitter_resistor=emitter_resistor,
         idle_current=idle_current,
@@ -176,8 +178,56 @@ def pair_heat(
         transconductance_parameter=transconductance_parameter,
         thermal_voltage=thermal_voltage,
     )
+    return heat_of_currents(
+        currents=currents,
+        half_supply=half_supply,
+        peak=peak,
+        load_magnitude=load_magnitude,
+        phase_angle=phase_angle,
+        conducting=conducting,
+        emitter_resistor=emitter_resistor,
+    )
+
+
+def heat_of_currents(
+    *,
+    currents: MeanCurrents,
+    half_supply: ArrayLike,
+    peak: ArrayLike,
+    load_magnitude: ArrayLike,
+    phase_angle: ArrayLike,
+    conducting: ArrayLike,
+    emitter_resistor: ArrayLike,
+) -> Array:
+    """Return the heat of all devices of a stage, as `pair_heat`, where the mean currents are known already.
+
+    Parameters
+    ----------
+    currents : MeanCurrents
+        As `mean_currents` returns them for the peak current of this load.
+    half_supply, peak, load_magnitude, phase_angle, conducting, emitter_resistor
+        As in `pair_heat`.
+
+    Returns
+    -------
+    numpy.ndarray
+        W, broadcast shape of the inputs.
+
+    Raises
+    ------
+    ValueError
+        If a value is outside its range.
+
+    References
+    ----------
+    Balance of powers; derived.
+    """
+    positive(half_supply=half_supply, load_magnitude=load_magnitude)
+    refuse("peak", peak, array(peak) > array(half_supply), "at most half_supply")
+    within(-90.0, 90.0, phase_angle=phase_angle)
     each = array(half_supply) * currents.mean - array(emitter_resistor) * currents.mean_square
-    load = array(peak) * peak_current * np.cos(np.deg2rad(array(phase_angle))) / 2.0
+    cosine = np.cos(np.deg2rad(array(phase_angle)))
+    load = array(peak) * array(peak) / array(load_magnitude) * cosine / 2.0
     heat: Array = 2.0 * array(conducting) * each - load
     return heat
 
