@@ -12,7 +12,7 @@ from tests.physics.formulas import FORMULAS
 
 TABLE = rows(section(read(DEVELOPERS), "Names and units of all parameters of physics"))
 UNITS = {
-    "1", "1/K", "1/s", "A", "A/K", "A/V2", "F", "H", "Hz", "J", "K", "K/W", "N/A", "V", "V/K", "V and A", "W",
+    "1", "1/K", "1/s", "A", "A/K", "A/V2", "A2", "F", "H", "Hz", "J", "K", "K/W", "N/A", "V", "V/K", "V and A", "W",
     "W/(m K)", "W/(m2 K)", "W/K", "any", "deg", "degC", "dB", "function", "kg", "m", "m/N", "m2", "ohm", "s", "word",
 }  # fmt: skip
 #: What the tests of dimensions write otherwise: temperatures enter there as kelvin.
@@ -41,13 +41,15 @@ def functions():
     }
 
 
+def taken(function) -> set[str]:
+    """Return the parameters that a function takes by their own names."""
+    found = inspect.signature(function).parameters.values()
+    return {parameter.name for parameter in found if parameter.kind is not parameter.VAR_KEYWORD}
+
+
 def parameters() -> dict[str, str]:
     """Return each parameter with one function that has it."""
-    return {
-        parameter: name
-        for name, function in functions().items()
-        for parameter in inspect.signature(function).parameters
-    }
+    return {parameter: name for name, function in functions().items() for parameter in taken(function)}
 
 
 def units(cell: str) -> set[str]:

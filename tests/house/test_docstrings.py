@@ -5,7 +5,7 @@ import re
 
 import pytest
 
-from tests.docs.test_parameters import functions
+from tests.docs.test_parameters import functions, taken
 
 FUNCTIONS = functions()
 #: Looked up in a table by one value: nothing could be mistaken for it.
@@ -44,7 +44,7 @@ def test_parameters_and_references(name):
     function = FUNCTIONS[name]
     found = sections(function)
     assert "References" in found, f"{name} does not say where its formula comes from"
-    parameters = set(inspect.signature(function).parameters)
+    parameters = taken(function)
     own = described(found.get("Parameters", ""))
     assert own <= parameters, f"{name} describes what it does not take"
     assert parameters <= own | borrowed(function), name
@@ -63,4 +63,4 @@ def test_arguments_are_given_by_name(name):
     if name in ALONE:
         return
     kinds = {parameter.kind for parameter in inspect.signature(FUNCTIONS[name]).parameters.values()}
-    assert kinds <= {inspect.Parameter.KEYWORD_ONLY}, name
+    assert kinds <= {inspect.Parameter.KEYWORD_ONLY, inspect.Parameter.VAR_KEYWORD}, name
