@@ -5,13 +5,14 @@ from __future__ import annotations
 import csv
 import io
 import json
-from collections.abc import Iterable, Sequence
+from collections.abc import Sequence
 from pathlib import PurePath
 from typing import Any
 
 from safeamp._version import __version__
 from safeamp.answers import Overview, OverviewRow
 from safeamp.findings import Verdict
+from safeamp.report.cells import harmless, markdown, table_row
 from safeamp.report.layout import clean, paragraph
 from safeamp.report.safety import SAFETY
 
@@ -20,7 +21,6 @@ HEADS = ("file", "title", "verdict", "first step not cleared", "decided by")
 NAME = 24
 NOT_READ = "not read"
 PAPER = "On paper: clears no power."
-_LED = ("=", "+", "-", "@")
 
 
 def render_overview(overview: Overview, *, width: int = 80) -> str:
@@ -88,37 +88,19 @@ def overview_csv(overview: Overview) -> str:
     writer = csv.writer(text, lineterminator="\r\n")
     writer.writerow(HEADS)
     for row in overview.rows:
-        writer.writerow([_harmless(cell) for cell in _cells(row)])
+        writer.writerow([harmless(cell) for cell in _cells(row)])
     return text.getvalue()
-
-
-def _harmless(cell: str) -> str:
-    """Return a cell that no spreadsheet takes for a formula."""
-    text = clean(cell)
-    return f"'{text}" if text.startswith(_LED) else text
 
 
 def overview_markdown(overview: Overview) -> str:
     """Return the table in Markdown."""
     lines = [
-        _line(HEADS),
-        _line("---" for _ in HEADS),
-        *(_line(map(_plain, _cells(r))) for r in overview.rows),
+        table_row(HEADS),
+        table_row("---" for _ in HEADS),
+        *(table_row(map(markdown, _cells(one))) for one in overview.rows),
     ]
     paper = [PAPER, ""] if overview.on_paper else []
     return "\n".join([*paper, *lines, "", _counts(overview)]) + "\n"
-
-
-def _plain(cell: str) -> str:
-    """Return a cell that Markdown prints as it stands."""
-    text = clean(cell)
-    for sign in "\\`*_[]<>|&":
-        text = text.replace(sign, f"\\{sign}")
-    return text
-
-
-def _line(cells: Iterable[str]) -> str:
-    return f"| {' | '.join(cells)} |"
 
 
 def overview_json(overview: Overview) -> str:
