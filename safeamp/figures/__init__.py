@@ -1,0 +1,17 @@
+"""Figures: nouns in, pictures out. They read no file, judge nothing, and open no window."""
+
+from safeamp.figures.gallery import Gallery, LeftOut, histograms_of, pictures_of
+from safeamp.figures.look import NotDrawnError, Picture, picture, rendered
+from safeamp.figures.svg import svg_text
+
+__all__ = [
+    "Gallery",
+    "LeftOut",
+    "NotDrawnError",
+    "Picture",
+    "histograms_of",
+    "picture",
+    "pictures_of",
+    "rendered",
+    "svg_text",
+]

@@ -1,0 +1,137 @@
+"""All pictures that a report can have; those whose inputs are missing are left out, and said so."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass
+from functools import partial
+
+import numpy as np
+from matplotlib.axes import Axes
+
+from safeamp.amplifier import Amplifier, Sheet
+from safeamp.answers import Report, Tolerance
+from safeamp.checks.trace import Trace, watched
+from safeamp.figures import chances, coil, driver, heat, look, overview, response, safe_area, temperatures
+from safeamp.figures.look import NotDrawnError, Picture
+from safeamp.findings import Bound, Finding
+from safeamp.limits import Limits
+
+
+@dataclass(frozen=True)
+class LeftOut:
+    """A picture that is not drawn, and why."""
+
+    name: str
+    because: str
+
+
+@dataclass(frozen=True)
+class Gallery:
+    """The pictures in the order in which they are shown, and those left out."""
+
+    pictures: tuple[Picture, ...]
+    left_out: tuple[LeftOut, ...] = ()
+
+
+@dataclass(frozen=True)
+class _Plan:
+    name: str
+    title: str
+    draw: Callable[[Axes, Amplifier], str]
+    height: float = look.HEIGHT
+
+
+def pictures_of(sheet: Sheet, report: Report, limits: Limits) -> Gallery:
+    """Return the pictures of a sheet and its report.
+
+    Parameters
+    ----------
+    sheet : Sheet
+        As read: nominal values and the ends of their tolerances.
+    report : Report
+        What was found on that sheet.
+    limits : Limits
+        What the findings were judged by.
+    """
+    return _gallery(_plans(sheet, report, limits), sheet.amplifier)
+
+
+def _plans(sheet: Sheet, report: Report, limits: Limits) -> list[_Plan]:
+    found = {finding.id: finding for finding in report.findings}
+    return [
+        _Plan(
+            "overview", overview.TITLE, lambda axes, _: overview.draw(axes, report.findings),
+            overview.height_of(report.findings),
+        ),
+        _Plan("safe-area", safe_area.TITLE, partial(_safe_area, found), safe_area.HEIGHT),
+        _Plan("temperatures", temperatures.TITLE, lambda axes, one: temperatures.draw(axes, one, limits)),
+        _Plan("heat", heat.TITLE, heat.draw),
+        _Plan("low-notes", response.TITLE, lambda axes, one: response.draw(axes, one, sheet.entries)),
+        _Plan("coil", coil.TITLE, lambda axes, one: coil.draw(axes, one, limits), coil.HEIGHT),
+        _Plan("impedance", driver.IMPEDANCE, driver.draw_impedance, driver.HEIGHT),
+        _Plan("cone-travel", driver.EXCURSION, driver.draw_excursion, driver.HEIGHT),
+    ]  # fmt: skip
+
+
+def _safe_area(found: Mapping[str, Finding], axes: Axes, amplifier: Amplifier) -> str:
+    plane = safe_area.plane_of(amplifier)
+    finding = found.get(plane.finding)
+    return safe_area.draw(axes, plane, None if finding is None else finding.worst)
+
+
+def histograms_of(tolerance: Tolerance, bounds: Mapping[str, Bound]) -> Gallery:
+    """Return one histogram for each finding that varies.
+
+    Parameters
+    ----------
+    tolerance : Tolerance
+        The answer over many samples.
+    bounds : mapping of str to Bound
+        Id of a finding -> its nominal limit, as a report has it.
+    """
+    plans = [
+        _Plan(
+            f"tolerance-{one.id.replace('.', '-').replace('_', '-')}",
+            chances.title_of(one),
+            partial(lambda one, axes, _: chances.draw(axes, one, bounds.get(one.id)), one),
+            chances.HEIGHT,
+        )
+        for one in tolerance.findings
+        if one.sampled
+    ]
+    return _gallery(plans, Amplifier())
+
+
+def _gallery(plans: list[_Plan], amplifier: Amplifier) -> Gallery:
+    pictures, left_out = [], []
+    for plan in plans:
+        try:
+            pictures.append(_drawn(plan, amplifier))
+        except NotDrawnError as reason:
+            left_out.append(LeftOut(plan.name, str(reason)))
+    return Gallery(tuple(pictures), tuple(left_out))
+
+
+def _drawn(plan: _Plan, amplifier: Amplifier) -> Picture:
+    """Return a picture; a missing input is noted while it is looked for, and its key is the better reason."""
+    trace = Trace()
+    try:
+        with np.errstate(all="ignore"):
+            found = look.picture(
+                plan.name,
+                plan.title,
+                lambda axes: plan.draw(axes, watched(amplifier, trace)),
+                height=plan.height,
+            )
+    except ValueError as problem:
+        if trace.missing:
+            raise NotDrawnError(_not_given(trace)) from problem
+        raise NotDrawnError(str(problem)) from problem
+    if trace.missing:
+        raise NotDrawnError(_not_given(trace))
+    return found
+
+
+def _not_given(trace: Trace) -> str:
+    return f"not given: {', '.join(trace.missing)}"
