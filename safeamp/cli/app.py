@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
+from dataclasses import dataclass
 from enum import StrEnum
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated
@@ -10,6 +11,13 @@ from typing import TYPE_CHECKING, Annotated
 import typer
 
 from safeamp.cli.capacitor import capacitor
+from safeamp.cli.figures import (
+    FigureFormat,
+    FigureFormatOption,
+    FiguresOption,
+    check_folder,
+    write_figures,
+)
 from safeamp.cli.heatsink import heatsink
 from safeamp.cli.loudspeaker import loudspeaker
 from safeamp.cli.offset import offset
@@ -22,8 +30,10 @@ from safeamp.cli.substitute import substitute
 from safeamp.cli.tolerance import tolerance
 
 if TYPE_CHECKING:
+    from safeamp.amplifier import Sheet
     from safeamp.answers import Report
     from safeamp.findings import Step
+    from safeamp.limits import Limits
 
 
 class Format(StrEnum):
@@ -77,21 +87,37 @@ def check(
     on_paper: Annotated[
         bool, typer.Option("--on-paper", help="Judge only what is computed; clears no power.")
     ] = False,
+    figures: FiguresOption = None,
+    figures_format: FigureFormatOption = FigureFormat.SVG,
 ) -> None:
     """Say whether the next step may be taken, what to read, and at which reading to switch off."""
     up_to = None if step is None else _step(step)
     read_only = (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
     if output is not None:
         check_output(output, read_only)
-    report = _judge(sheet, limits=limits, device_folder=device_folder, on_paper=on_paper, up_to=up_to)
-    _emit_report(report, format_, output, read_only)
-    raise typer.Exit(report.exit_status)
+    if figures is not None:
+        check_folder(figures)
+    judged = _judge(sheet, limits=limits, device_folder=device_folder, on_paper=on_paper, up_to=up_to)
+    if figures is not None:
+        _draw(judged, figures, figures_format, read_only)
+    _emit_report(judged.report, format_, output, read_only)
+    raise typer.Exit(judged.report.exit_status)
 
 
 @app.command()
-def demo(format_: FormatOption = Format.TEXT, output: OutputOption = None) -> None:
+def demo(
+    format_: FormatOption = Format.TEXT,
+    output: OutputOption = None,
+    figures: FiguresOption = None,
+    figures_format: FigureFormatOption = FigureFormat.SVG,
+) -> None:
     """Show a report on a built-in amplifier that is invented."""
-    _emit_report(_judge(Path(__file__).with_name("demo.toml"), demo=True), format_, output)
+    if figures is not None:
+        check_folder(figures)
+    judged = _judge(Path(__file__).with_name("demo.toml"), demo=True)
+    if figures is not None:
+        _draw(judged, figures, figures_format)
+    _emit_report(judged.report, format_, output)
 
 
 @app.command()
@@ -161,6 +187,15 @@ def _step(word: str) -> Step:
     return found
 
 
+@dataclass(frozen=True, eq=False)
+class _Judged:
+    """A report with what it was made from."""
+
+    sheet: Sheet
+    limits: Limits
+    report: Report
+
+
 def _judge(
     path: Path,
     *,
@@ -169,7 +204,7 @@ def _judge(
     on_paper: bool = False,
     up_to: Step | None = None,
     demo: bool = False,
-) -> Report:
+) -> _Judged:
     from safeamp.reading import load_sheet
     from safeamp.reading.limits import load_limits
     from safeamp.studies.verdict import verdict
@@ -177,7 +212,15 @@ def _judge(
     with complaining():
         rules = load_limits(limits)
         sheet = load_sheet(path, device_folder=device_folder, limits=rules)
-        return verdict(sheet, rules, on_paper=on_paper, up_to=up_to, demo=demo)
+        report = verdict(sheet, rules, on_paper=on_paper, up_to=up_to, demo=demo)
+    return _Judged(sheet, rules, report)
+
+
+def _draw(judged: _Judged, folder: Path, format_: FigureFormat, never: Iterable[Path | None] = ()) -> None:
+    from safeamp.figures import pictures_of
+
+    gallery = pictures_of(judged.sheet, judged.report, judged.limits)
+    write_figures(gallery, folder, format_, never=never)
 
 
 def _emit_report(

@@ -43,6 +43,11 @@ def fail(text: str) -> NoReturn:
     raise typer.Exit(WRONG)
 
 
+def note(text: str) -> None:
+    """Print on stderr what the result leaves out."""
+    sys.stderr.write(f"safeamp: {text}\n")
+
+
 @contextmanager
 def complaining() -> Iterator[None]:
     """Turn what reading complains of into lines on stderr and the status for wrong input."""

@@ -1,0 +1,99 @@
+"""Figures into a folder: whole or not at all, never over what is read, and only when asked for."""
+
+import os
+import re
+from pathlib import Path
+
+import pytest
+import typer
+
+from safeamp.cli import figures
+from tests.cli.test_commands import HEALTHY, run
+from tests.cli.test_processes import process
+
+SPLIT = HEALTHY.with_name("split_rail.toml")
+DRAWN = {"overview", "safe-area", "temperatures", "heat"}
+
+
+@pytest.fixture(scope="module")
+def drawn(tmp_path_factory):
+    folder = tmp_path_factory.mktemp("report") / "figures"
+    return run("check", SPLIT, "--figures", folder, "--format", "json"), folder
+
+
+def test_every_figure_is_a_file_and_the_report_is_as_ever(drawn):
+    done, folder = drawn
+    assert {path.name for path in folder.iterdir()} == {f"{name}.svg" for name in DRAWN}
+    assert all(path.read_bytes().startswith(b"<?xml") for path in folder.iterdir())
+    plain = run("check", SPLIT, "--format", "json")
+    assert (done.stdout, done.exit_code) == (plain.stdout, plain.exit_code)
+
+
+def test_what_is_left_out_is_said_beside_the_result(drawn):
+    said = drawn[0].stderr.splitlines()
+    assert (
+        'safeamp: figure low-notes is left out: stage.coupling = "direct": there is no output capacitor'
+        in said
+    )
+    left_out = {re.match(r"safeamp: figure ([\w-]+) is left out: ", line)[1] for line in said}
+    assert left_out == {"low-notes", "coil", "impedance", "cone-travel"}
+
+
+def test_figures_of_the_demo_as_png(tmp_path):
+    done = run("demo", "--figures", tmp_path, "--figures-format", "png")
+    assert done.exit_code == 0
+    assert {path.name for path in tmp_path.iterdir()} == {f"{name}.png" for name in {*DRAWN, "coil"}}
+    assert all(path.read_bytes().startswith(b"\x89PNG") for path in tmp_path.iterdir())
+
+
+def test_an_older_figure_that_is_no_longer_drawn_is_named(tmp_path):
+    (tmp_path / "coil.svg").write_text("old")
+    done = run("check", SPLIT, "--figures", tmp_path)
+    [line] = [line for line in done.stderr.splitlines() if "figure coil" in line]
+    assert line.endswith(f"; {tmp_path / 'coil.svg'} is an older one")
+    assert (tmp_path / "coil.svg").read_text() == "old"
+
+
+def refused(done, words):
+    assert (done.exit_code, done.stdout) == (2, "")
+    [line] = done.stderr.splitlines()
+    assert words in line
+
+
+def test_a_sheet_is_never_drawn_over(tmp_path):
+    sheet = tmp_path / "overview.svg"
+    sheet.write_bytes(SPLIT.read_bytes())
+    refused(run("check", sheet, "--figures", tmp_path), "overview.svg is a file that is read")
+    assert [path.name for path in tmp_path.iterdir()] == ["overview.svg"]
+    assert sheet.read_bytes() == SPLIT.read_bytes()
+
+
+def test_places_that_cannot_hold_figures_are_refused(tmp_path):
+    (tmp_path / "file").write_text("")
+    (tmp_path / "heat.svg").mkdir()
+    refused(run("check", SPLIT, "--figures", tmp_path / "file"), "is not a folder")
+    refused(
+        run("check", SPLIT, "--figures", tmp_path / "no" / "such"),
+        f"there is no folder {tmp_path / 'no'}",
+    )
+    refused(run("check", SPLIT, "--figures", tmp_path), "heat.svg is not a file")
+    assert {path.name for path in tmp_path.iterdir()} == {"file", "heat.svg"}
+
+
+def test_what_cannot_be_written_leaves_nothing_behind(tmp_path, monkeypatch, capsys):
+    def broken(self, target):
+        raise OSError(28, os.strerror(28))
+
+    monkeypatch.setattr(Path, "replace", broken)
+    with pytest.raises(typer.Exit) as ended:
+        figures._write({"a.svg": b"a", "b.svg": b"b"}, tmp_path / "figures")
+    assert ended.value.exit_code == 2
+    assert capsys.readouterr().err == f"safeamp: --figures {tmp_path / 'figures'}: {os.strerror(28)}\n"
+    assert list(tmp_path.iterdir()) == []
+
+
+def test_without_figures_no_figure_room_is_imported():
+    code = "import sys\nfrom safeamp.cli import main\ntry: main()\nexcept SystemExit: print(*sys.modules)"
+    found = process("check", HEALTHY, "--step", "cold-checks", code=code).stdout.split()
+    assert "safeamp.report.text" in found
+    assert not {"matplotlib", "safeamp.figures"} & set(found)
