@@ -10,7 +10,7 @@ from safeamp.findings import Verdict
 from safeamp.physics.safe_area import angle_use
 from safeamp.studies import corners
 from tests.checks.loads import RULES, curve_of, flat_curve, judged, wild_curve, with_curve, woofer
-from tests.scenarios.sheets import finding, report, sheet
+from tests.scenarios.sheets import GONE, finding, report, sheet
 
 TOLERANCED = {
     "split_rail": {
@@ -183,6 +183,24 @@ def test_heat_counts_the_worst_angle_of_the_curve_and_no_impedance_below_nominal
     assert 30.0 < abs(angle) < 60.0
     low = with_curve(amplifier, flat_curve(6.0, 70.0))
     assert curves.heating_load(low, curves.points_of(low), thermal.ONE_EIGHTH) == pytest.approx((8.0, 70.0))
+
+
+def test_a_lower_impedance_never_uses_less():
+    amplifier, curve = sheet("split_rail", RULES).amplifier, curve_of(woofer())
+    uses = []
+    for share in (1.2, 1.0, 0.8, 0.6, 0.4):
+        lower = type(curve)(curve.frequencies, tuple(share * z for z in curve.impedances), curve.phases)
+        uses.append(float(safe_area.worst_into_loudspeaker(with_curve(amplifier, lower)).use))
+    assert uses == sorted(uses)
+
+
+def test_what_is_missing_leaves_the_use_unknown(tmp_path):
+    one = finding(judged(tmp_path, curve_of(woofer()), "split_rail", {"stage.idle": GONE}), "soa.loudspeaker")
+    assert one.verdict is not Verdict.GO
+    unknown = with_curve(
+        sheet("split_rail", {**RULES, "heatsink.case_to_sink": GONE}).amplifier, flat_curve(8.0, 45.0)
+    )
+    assert np.isnan(safe_area.worst_into_loudspeaker(unknown).use)
 
 
 def test_one_case_of_an_amplifier():

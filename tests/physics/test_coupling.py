@@ -71,6 +71,27 @@ def test_a_larger_capacitor_never_costs_bass():
     assert np.all(np.diff(found) < 0)
 
 
+def test_no_driver_inside_the_tolerances_costs_more_bass_than_their_corners():
+    rng = np.random.default_rng(5)
+    spread = np.array([0.1, 0.2, 0.25, 0.25, 0.2])
+
+    def cutoff(given):
+        coil, resonance, mechanical, electrical, farads = given.T
+        parts = drivers.motional_elements(
+            dc_resistance=coil, resonance=resonance, q_mechanical=mechanical, q_electrical=electrical
+        )
+        return coupling.cutoff_frequency(driver=Driver(coil, parts, 0.4e-3), capacitance=farads)
+
+    for _ in range(40):
+        low, high = np.array([3.0, 20.0, 1.0, 0.2, 3e-4]), np.array([8.0, 120.0, 10.0, 2.0, 5e-3])
+        middle = low * (high / low) ** rng.uniform(0.0, 1.0, 5)
+        ends = np.array(np.meshgrid(*np.stack([middle * (1 - spread), middle * (1 + spread)]).T)).reshape(
+            5, -1
+        )
+        inside = middle * (1.0 + spread * rng.uniform(-1.0, 1.0, (500, 5)))
+        assert np.max(cutoff(inside)) <= 1.01 * np.max(cutoff(ends.T))
+
+
 def travel_in_time(driver, force, farads, midpoint, rise_time, resistor):
     """Return the largest travel by a simulation: states velocity, travel, capacitor; no inductance.
 
