@@ -26,18 +26,22 @@ def finding_lines(finding: Finding, width: int, ink: Ink) -> list[str]:
     word = f"  {finding.verdict.word:<11}"
     lines = paragraph(head, width, word)
     lines[0] = ink.verdict(word, finding.verdict) + lines[0][len(word) :]
-    for text in _details(finding):
+    for text in _shown(finding):
         lines += paragraph(text, width, _HANG, _HANG + "  ")
     return lines
 
 
-def _details(finding: Finding) -> Iterator[str]:
+def _shown(finding: Finding) -> Iterator[str]:
     if finding.says and finding.says != number_text(finding):
         yield finding.says
-    if finding.verdict is Verdict.GO:
-        return
+    if finding.verdict is not Verdict.GO:
+        yield from (f"{label}: {text}" for label, text in details_of(finding))
+
+
+def details_of(finding: Finding) -> Iterator[tuple[str, str]]:
+    """Yield what is to be said of a finding beside its number, each with its label."""
     for reason in finding.because:
-        yield f"because: {reason}"
+        yield "because", reason
     for label, text in (
         ("worst case at", place_text(finding)),
         ("there", at_text(finding)),
@@ -47,7 +51,7 @@ def _details(finding: Finding) -> Iterator[str]:
         ("next", finding.next),
     ):
         if text:
-            yield f"{label}: {text}"
+            yield label, text
 
 
 def _key_or_sentence(text: str) -> str:
