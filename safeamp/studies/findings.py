@@ -64,7 +64,7 @@ def _run(check: Check, amplifier: Amplifier, limits: Limits) -> Measure | NotApp
     try:
         with np.errstate(all="ignore"):
             return check.run(amplifier, limits)
-    except ValueError as problem:
+    except (ValueError, ArithmeticError) as problem:
         return Measure(np.nan, f"cannot be computed: {problem}", word=Verdict.UNVERIFIED)
 
 
