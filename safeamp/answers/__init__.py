@@ -2,10 +2,12 @@
 
 from safeamp.answers.chances import Chance, FindingChances, Histogram, StepChances, Tolerance
 from safeamp.answers.overview import Overview, OverviewRow
+from safeamp.answers.plane import Path, Plane
 from safeamp.answers.quick import Amount, Formula, PutIn, QuickAnswer
 from safeamp.answers.report import NotApplying, Report, StepVerdict
 from safeamp.answers.solution import Edge, Forbidding, Interval, Solution
 from safeamp.answers.substitute import AtWork, Compared, LoadLine, Pair, Range, Ratings, Substitute
+from safeamp.answers.working import Line, Working
 
 __all__ = [
     "Amount",
@@ -18,11 +20,14 @@ __all__ = [
     "Formula",
     "Histogram",
     "Interval",
+    "Line",
     "LoadLine",
     "NotApplying",
     "Overview",
     "OverviewRow",
     "Pair",
+    "Path",
+    "Plane",
     "PutIn",
     "QuickAnswer",
     "Range",
@@ -33,4 +38,5 @@ __all__ = [
     "StepVerdict",
     "Substitute",
     "Tolerance",
+    "Working",
 ]
