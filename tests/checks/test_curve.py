@@ -185,6 +185,25 @@ def test_heat_counts_the_worst_angle_of_the_curve_and_no_impedance_below_nominal
     assert curves.heating_load(low, curves.points_of(low), thermal.ONE_EIGHTH) == pytest.approx((8.0, 70.0))
 
 
+SHORT = {"device.fitted.safe_area": [["40 V", "3 A"], ["60 V", "1.3 A"]]}
+
+
+def test_one_point_that_enters_the_unknown_makes_the_use_unknown(tmp_path):
+    # 35 V rails: 60 V lie across a device while the output stands at -25 V; only the turned point carries current there
+    mostly = flat_curve(30.0, 0.0)
+    turned = type(mostly)(mostly.frequencies, (8.0, 100.0, 30.0), (0.0, 80.0, 0.0))
+    quiet = {**SHORT, "stage.idle": "0.1 mA", "stage.emitter_resistor": "none"}
+    assert not safe_area.worst_into_loudspeaker(
+        with_curve(sheet("split_rail", quiet).amplifier, mostly)
+    ).unknown
+    found = safe_area.worst_into_loudspeaker(with_curve(sheet("split_rail", quiet).amplifier, turned))
+    assert found.unknown
+    assert found.frequency == 20.0
+    one = finding(judged(tmp_path, turned, "split_rail", quiet), "soa.loudspeaker")
+    assert one.verdict is Verdict.UNVERIFIED
+    assert any("of which the data sheet says nothing" in because for because in one.because)
+
+
 def test_a_lower_impedance_never_uses_less():
     amplifier, curve = sheet("split_rail", RULES).amplifier, curve_of(woofer())
     uses = []

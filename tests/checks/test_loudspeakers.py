@@ -3,12 +3,14 @@
 import numpy as np
 import pytest
 
-from safeamp.checks import operating
+from safeamp.checks import CHECKS, operating
+from safeamp.checks.as_built import as_built
 from safeamp.findings import Verdict
 from safeamp.physics import any_signal, capacitor, coupling
 from safeamp.physics import driver as drivers
+from safeamp.studies.findings import Bench, look
 from tests.checks.loads import WOOFER, flat_curve, judged, woofer
-from tests.scenarios.sheets import GONE, beside, finding, report, sheet
+from tests.scenarios.sheets import GONE, beside, finding, limits, report, sheet
 
 INDUCTANCE = {"loudspeaker.inductance": "0.4 mH"}
 MECHANICS = {"loudspeaker.force_factor": "8 N/A", "loudspeaker.linear_excursion": "4 mm"}
@@ -256,3 +258,51 @@ def test_settling_and_emptying_of_the_output_capacitor():
     assert beside(plain, "output settles after switch-on in") == pytest.approx(5.0 * 8.0 * 680e-6)
     assert not has(plain, "capacitor empties")
     assert not has(plain, "peak across")
+
+
+def test_each_side_of_a_bridge_sees_half_and_the_loudspeaker_gets_both_peaks():
+    bridged = {**POWER, **WOOFER, **MECHANICS, "stage.bridged": True}
+    answer, amplifier = report("split_rail", bridged), sheet("split_rail", bridged).amplifier
+    side = operating.sides(amplifier)[0]
+    peak = float(operating.peak_into(amplifier, side.burst, side.loss, 4.0))
+    norm = float(any_signal.admittance_norm(driver=woofer(0.0).scaled(0.5)))
+    assert beside(finding(answer, "soa.loudspeaker"), ANY) == pytest.approx(peak * norm)
+    across = 2.0 * float(operating.clipping_peak(amplifier))
+    travel = drivers.largest_excursion(
+        driver=woofer(0.0), force_factor=8.0, peak=across, lowest=20.0, highest=90.0
+    )
+    at = "cone travel at clipping, sine from 20 Hz"
+    assert beside(finding(answer, "loudspeaker.power"), at) == pytest.approx(float(travel))
+
+
+def test_what_is_only_shown_is_read_aside():
+    sheet_of = sheet("split_rail", {**WOOFER, **INDUCTANCE})
+    _, trace = look(CHECKS["soa.loudspeaker"], Bench(sheet_of, limits()))
+    assert "loudspeaker.inductance" not in trace.reads
+    assert {"loudspeaker.inductance", "loudspeaker.resonance"} <= set(trace.shown)
+    assert trace.missing == {}
+
+
+def test_relay_contacts_open_the_whole_rail_though_two_in_series_share_it():
+    rails = {"supply.no_load": "40 V, measured", "supply.full_load": "37 V, measured"}
+    one = finding(report("healthy", {**rails, "loudspeaker.series": 2}), "loudspeaker.dc_fault")
+    assert any("relay contacts on more than 35 V DC" in because for because in one.because)
+
+
+def test_two_in_series_share_the_travel_at_switch_on():
+    both = {**WOOFER, **MECHANICS, **SWITCH_ON, "loudspeaker.series": 2}
+    one = finding(report("single_rail", both), "offset.midpoint")
+    moved = coupling.turn_on_displacement(
+        driver=woofer(0.0).scaled(2.0), force_factor=8.0, capacitance=680e-6, midpoint=30.4, rise_time=0.02
+    )
+    assert beside(one, "cone displacement at switch-on") == pytest.approx(moved / 2.0)
+
+
+def test_as_built_looks_at_all_loudspeakers_together():
+    rated = limits()["soa.loudspeaker"], limits()["loudspeaker.label"]
+    for changes, holds in (
+        ({"loudspeaker.parallel": 2}, False),
+        ({"loudspeaker.parallel": 2, "loudspeaker.series": 2}, True),
+    ):
+        amplifier = sheet("split_rail", {"stage.rated_load": "8 ohm", **changes}).amplifier
+        assert ("stage.rated_load" not in as_built(amplifier, *rated).missing) is holds
