@@ -168,7 +168,8 @@ class Protection:
     loudspeaker_fuse: Fuse | None = special("fuse", 'fuse in the loudspeaker line, or "none"', none="absent")
     vi_limiter: tuple[tuple[Number, Number], ...] | None = number(
         (VOLTAGE, CURRENT),
-        'points of device voltage and device current at which the limiter acts, or "none"',
+        'points of device voltage and device current at which the limiter acts, or "none"; '
+        "only measured points cut the load's use of the safe area",
         shape="points",
         sign=Sign.MAGNITUDE,
         none="absent",

@@ -47,6 +47,11 @@ def test_left_of_the_first_point_its_current_or_the_dc_curve():
     assert float(allowed(5.0, pulse(10e-3))) == pytest.approx(12.0)  # the current limit
 
 
+def test_no_pulse_exceeds_the_current_limit():
+    brief = ((10e-3, ((10.0, 20.0), (100.0, 2.4))),)
+    assert float(allowed(10.0, pulse(10e-3, curves=brief))) == pytest.approx(12.0)
+
+
 def test_beyond_the_last_point_of_either_curve_the_dc_curve():
     dc = float(allowed_current(voltage=120.0, case_temperature=25.0, rating=DEVICE))
     assert float(allowed(120.0, pulse(25e-3))) == dc

@@ -115,8 +115,10 @@ WORST, WORST_HEAT = (
 @pytest.mark.parametrize("name", ["healthy", "split_rail", "old_mains", "single_rail", "class_a"])
 def test_no_level_of_a_sine_heats_more_than_the_worst(name):
     one, amplifier = finding(report(name), "heat.heatsink"), sheet(name).amplifier
-    dense = thermal.at_level(amplifier, np.linspace(1e-4, 1.0, 5001)).stage_power
-    assert beside(one, WORST_HEAT) == pytest.approx(np.max(dense), rel=1e-5)
+    levels_seen = np.linspace(1e-4, 1.0, 5001)
+    dense = thermal.at_level(amplifier, levels_seen).stage_power
+    assert beside(one, WORST_HEAT) == pytest.approx(np.max(dense), rel=1e-6)
+    assert beside(one, WORST) == pytest.approx(levels_seen[np.argmax(dense)], abs=3e-4)
     third = beside(one, "heat of the stage at one third of clipping power")
     assert beside(one, WORST_HEAT) >= third * (1.0 - 1e-6)
     assert beside(one, "heatsink at the worst level of a sine") >= one.nominal - 1e-6 or name == "class_a"
