@@ -1,6 +1,8 @@
 """The command that solves for one key."""
 
 import json
+import subprocess
+import sys
 from pathlib import Path
 
 import pytest
@@ -94,3 +96,13 @@ def test_the_answer_goes_whole_into_a_file(tmp_path):
     target = tmp_path / "answer.txt"
     assert run("readings.offset_warm", "--output", target).exit_code == 0
     assert "readings.offset_warm: from 14 mV to 50 mV" in target.read_text(encoding="utf-8")
+
+
+def test_no_heavy_library_is_imported():
+    code = (
+        "import sys; from typer.testing import CliRunner; from safeamp.cli.app import app; "
+        f"found = CliRunner().invoke(app, ['solve', {str(SHEET)!r}, 'readings.offset_warm']); "
+        "print(found.exit_code, sorted({'scipy', 'pandas', 'matplotlib'} & set(sys.modules)))"
+    )
+    found = subprocess.run([sys.executable, "-c", code], capture_output=True, text=True, check=True)
+    assert found.stdout.strip() == "0 []"

@@ -5,9 +5,12 @@ import tomllib
 
 import pytest
 
+from safeamp.checks import CHECKS
 from safeamp.complaints import ReadingError
 from safeamp.findings import Verdict
-from safeamp.studies.edges import next_value
+from safeamp.studies.edges import Asked, edge_at, next_value
+from safeamp.studies.findings import Bench
+from safeamp.studies.search import Trial
 from safeamp.studies.solve import solve
 from tests.scenarios.sheets import NAMES, changed, limits, tables
 from tests.studies.solving import held, number, solved, words, written_numbers
@@ -41,7 +44,8 @@ def test_the_smallest_capacitance_and_the_next_that_is_made():
     solution = solved("single_rail", "output_capacitor.capacitance", "capacitor.cutoff")
     assert (solution.now_holds, solution.outcome) == (False, "bounded")
     edge = only(solution).smallest
-    assert edge.value == pytest.approx(1.2434e-3, rel=1e-3)
+    # Rounded to four digits, to the side that holds.
+    assert edge.value == pytest.approx(1.244e-3, rel=1e-12)
     assert (edge.preferred, edge.series) == (pytest.approx(1.5e-3), "E6")
 
 
@@ -120,6 +124,31 @@ def test_an_unknown_finding_and_a_word_that_clears_nothing():
         solved("split_rail", "readings.offset_warm", "offset.outptu")
     with pytest.raises(ValueError, match="held at go or caution, not at stop"):
         solve(number("split_rail", "supply.no_load"), limits(), until=Verdict.STOP)
+
+
+def trials(moved, *values):
+    return [Trial(value, Bench(moved.at(value), limits())) for value in values]
+
+
+# Go up to 50 mV: what the trials said wrongly to hold is never handed on.
+def test_an_end_is_handed_on_only_when_the_whole_sheet_says_so():
+    moved = number("split_rail", "readings.offset_warm")
+    asked = Asked(moved, limits(), [CHECKS["offset.output"]], Verdict.GO, on_paper=False)
+    assert asked.judged(0.0501) is None
+    # Drift is go from 14 to 54 mV, so it would let this pass.
+    both = Asked(moved, limits(), [CHECKS["offset.drift"], *asked.checks], Verdict.GO, on_paper=False)
+    assert both.judged(0.0501) is None
+    assert asked.judged(0.05).verdict is Verdict.CAUTION
+    [bad] = trials(moved, 0.08)
+    edge = edge_at(asked, trials(moved, 0.07, 0.06, 0.04), [bad])
+    assert edge.value == 0.04
+    with pytest.raises(RuntimeError, match=r"readings\.offset_warm: values hold among the trials, but not"):
+        edge_at(asked, trials(moved, 0.07, 0.06), [bad])
+
+
+def test_a_value_the_sheet_refuses_is_not_handed_on():
+    asked = Asked(number("split_rail", "supply.no_load"), limits(), [], Verdict.GO, on_paper=False)
+    assert asked.judged(20.0) is None
 
 
 @pytest.mark.parametrize(
