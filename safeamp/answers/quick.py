@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
+from safeamp.answers.plane import Plane
 from safeamp.findings import Finding, Verdict
 from safeamp.quantities import Kind
 
@@ -48,6 +49,8 @@ class QuickAnswer:
         Everything among the results that has a limit; empty where nothing has.
     cautions : tuple of str
         What the numbers do not say.
+    plane : Plane or None
+        What can be drawn of it.
     """
 
     command: str
@@ -58,6 +61,7 @@ class QuickAnswer:
     holds_for: str = ""
     judged: tuple[Finding, ...] = ()
     cautions: tuple[str, ...] = ()
+    plane: Plane | None = None
 
     @property
     def verdict(self) -> Verdict | None:

@@ -2,10 +2,18 @@
 
 from __future__ import annotations
 
+from pathlib import Path
 from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from safeamp.cli.figures import (
+    FigureFormat,
+    FigureFormatOption,
+    FiguresOption,
+    check_folder,
+    write_figures,
+)
 from safeamp.cli.options import DeviceFolderOption, LimitsOption
 from safeamp.cli.output import complaining
 from safeamp.cli.quick import (
@@ -50,6 +58,8 @@ def soa(
     device_folder: DeviceFolderOption = None,
     format_: FormatOption = Format.TEXT,
     limits: LimitsOption = None,
+    figures: FiguresOption = None,
+    figures_format: FigureFormatOption = FigureFormat.SVG,
 ) -> None:
     """Say how much of its safe area a device uses into a load."""
 
@@ -59,7 +69,13 @@ def soa(
 
         with complaining():
             sheet = None if device is None else read_device(device, device_folder)
-        return safe_area_answer(desk, sheet)
+        answer = safe_area_answer(desk, sheet)
+        if figures is not None:
+            _draw(answer, figures, figures_format, limits, device_folder)
+        return answer
+
+    if figures is not None:
+        check_folder(figures)
 
     options = {
         "split_rail": split_rail,
@@ -74,3 +90,13 @@ def soa(
         "highest": highest,
     }
     run("soa", options, study, format_, limits)
+
+
+def _draw(
+    answer: QuickAnswer, folder: Path, format_: FigureFormat, limits: Path | None, device_folder: Path | None
+) -> None:
+    from safeamp.figures import plane_pictures
+
+    if answer.plane is not None:
+        read = (limits, *(device_folder.glob("*.toml") if device_folder else ()))
+        write_figures(plane_pictures(answer.plane), folder, format_, never=read)

@@ -10,11 +10,21 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from safeamp.cli.figures import (
+    FigureFormat,
+    FigureFormatOption,
+    FiguresOption,
+    check_folder,
+    write_figures,
+)
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, columns, complaining, emit
 
 if TYPE_CHECKING:
+    from safeamp.amplifier import Sheet
     from safeamp.answers import Tolerance
+    from safeamp.figures import Gallery
+    from safeamp.limits import Limits
 
 
 class Format(StrEnum):
@@ -44,6 +54,8 @@ def tolerance(
     output: OutputOption = None,
     limits: LimitsOption = None,
     device_folder: DeviceFolderOption = None,
+    figures: FiguresOption = None,
+    figures_format: FigureFormatOption = FigureFormat.SVG,
 ) -> None:
     """Say how likely each verdict is inside the tolerances, and which unknown matters most; clears nothing."""
     from safeamp.reading import load_sheet
@@ -53,6 +65,8 @@ def tolerance(
     read_only = (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
     if output is not None:
         check_output(output, read_only)
+    if figures is not None:
+        check_folder(figures)
     with complaining():
         rules = load_limits(limits)
         read = load_sheet(sheet, device_folder=device_folder, limits=rules)
@@ -60,7 +74,18 @@ def tolerance(
         answer = study(
             read, rules, samples=samples, seed=seed, distribution=distribution.value, progress=step
         )
+    if figures is not None:
+        write_figures(_histograms(answer, read, rules), figures, figures_format, never=read_only)
     emit(_text(answer, format_, 80 if output else columns()), output, never=read_only)
+
+
+def _histograms(answer: Tolerance, sheet: Sheet, limits: Limits) -> Gallery:
+    """Return the histograms with the limits that hold at the nominal values."""
+    from safeamp.figures import histograms_of
+    from safeamp.studies.verdict import verdict
+
+    judged = verdict(sheet, limits).findings
+    return histograms_of(answer, {one.id: one.bound for one in judged if one.bound is not None})
 
 
 def _text(answer: Tolerance, format_: Format, width: int) -> str:

@@ -1,6 +1,6 @@
 """Figures: nouns in, pictures out. They read no file, judge nothing, and open no window."""
 
-from safeamp.figures.gallery import Gallery, LeftOut, histograms_of, pictures_of
+from safeamp.figures.gallery import Gallery, LeftOut, histograms_of, pictures_of, plane_pictures
 from safeamp.figures.look import NotDrawnError, Picture, picture, rendered
 from safeamp.figures.svg import svg_text
 
@@ -12,6 +12,7 @@ __all__ = [
     "histograms_of",
     "picture",
     "pictures_of",
+    "plane_pictures",
     "rendered",
     "svg_text",
 ]

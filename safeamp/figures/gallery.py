@@ -10,10 +10,11 @@ import numpy as np
 from matplotlib.axes import Axes
 
 from safeamp.amplifier import Amplifier, Sheet
-from safeamp.answers import Report, Tolerance
+from safeamp.answers import Plane, Report, Tolerance
 from safeamp.checks.trace import Trace, watched
 from safeamp.figures import chances, coil, driver, heat, look, overview, response, safe_area, temperatures
 from safeamp.figures.look import NotDrawnError, Picture
+from safeamp.figures.plane import finding_of, plane_of
 from safeamp.findings import Bound, Finding
 from safeamp.limits import Limits
 
@@ -75,9 +76,14 @@ def _plans(sheet: Sheet, report: Report, limits: Limits) -> list[_Plan]:
 
 
 def _safe_area(found: Mapping[str, Finding], axes: Axes, amplifier: Amplifier) -> str:
-    plane = safe_area.plane_of(amplifier)
-    finding = found.get(plane.finding)
-    return safe_area.draw(axes, plane, None if finding is None else finding.worst)
+    finding = found.get(finding_of(amplifier))
+    return safe_area.draw(axes, plane_of(amplifier), None if finding is None else finding.worst)
+
+
+def plane_pictures(plane: Plane) -> Gallery:
+    """Return the picture of a safe area that was computed without a sheet."""
+    plan = _Plan("safe-area", safe_area.TITLE, lambda axes, _: safe_area.draw(axes, plane), safe_area.HEIGHT)
+    return _gallery([plan], Amplifier())
 
 
 def histograms_of(tolerance: Tolerance, bounds: Mapping[str, Bound]) -> Gallery:

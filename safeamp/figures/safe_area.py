@@ -3,94 +3,41 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass, replace
+from dataclasses import replace
 
 import numpy as np
 import numpy.typing as npt
 from matplotlib.axes import Axes
 
-from safeamp.amplifier import Amplifier
-from safeamp.checks import operating
-from safeamp.checks import safe_area as check
+from safeamp.answers import Plane
 from safeamp.checks.words import nominal, text
-from safeamp.figures.look import BELOW, BLACK, BLUE, GREY, PALE, VERMILLION, NotDrawnError, logarithmic
+from safeamp.figures.look import BELOW, BLACK, BLUE, GREY, PALE, VERMILLION, logarithmic
 from safeamp.physics.safe_area import ZONES, Rating, allowed_current, limiter_current
+from safeamp.physics.safe_area.boundary import boundary
+from safeamp.physics.safe_area.pulse import pulsed
 from safeamp.quantities import CURRENT, TEMPERATURE, VOLTAGE
 
 Values = npt.NDArray[np.float64]
 
 TITLE = "Safe area of the output device"
-ANGLES = np.linspace(-90.0, 90.0, 721)
-POINTS = 400
 HEIGHT = 5.2
-
-
-@dataclass(frozen=True, eq=False)
-class Plane:
-    """What is drawn: ratings, case temperature, and the loads with the worst one among them."""
-
-    amplifier: Amplifier
-    finding: str
-    rating: Rating
-    worst: check.Worst
-    loads: tuple[check.Load, ...]
-
-    @property
-    def use(self) -> float:
-        """Share of the safe area that is used, nominal."""
-        return nominal(self.worst.point.use)
-
-    @property
-    def case(self) -> float:
-        """Case temperature, degC."""
-        return nominal(self.worst.case)
-
-    def path(self, load: check.Load) -> tuple[Values, Values]:
-        """Return the path of a load, V and A."""
-        one_angle = load is self.worst.load and np.isfinite(self.worst.frequency)
-        voltage, current = check.path_of(
-            self.amplifier, self.worst.side, load, ANGLES, one_angle=bool(one_angle)
-        )
-        return np.asarray(voltage), np.asarray(current)
-
-
-def plane_of(amplifier: Amplifier) -> Plane:
-    """Return what is drawn of an amplifier: its loudspeaker, or the resistor where one is connected.
-
-    Raises
-    ------
-    NotDrawnError
-        If the use of the safe area cannot be computed.
-    """
-    resistor = check.resistors(amplifier)[0]
-    finding, worst, loads = _judged(amplifier)
-    if np.isnan(nominal(worst.point.use)):
-        raise NotDrawnError("the use of the safe area cannot be computed")
-    others = {load.name: load for load in (resistor, *loads) if load.name != worst.load.name}
-    rating = check.rating_of(amplifier, worst.side)
-    return Plane(amplifier, finding, rating, worst, (*others.values(), worst.load))
-
-
-def _judged(amplifier: Amplifier) -> tuple[str, check.Worst, tuple[check.Load, ...]]:
-    """Return the finding that is drawn, its worst point, and the loads that count besides."""
-    if amplifier.loudspeaker.load == "resistor":
-        return "soa.resistive_load", check.worst_into_resistor(amplifier), ()
-    worst = check.worst_into_loudspeaker(amplifier)
-    of_curve = amplifier.loudspeaker.impedance_curve is not None
-    loads = () if of_curve else check.loads(amplifier, operating.phase_angle(amplifier))[:2]
-    return "soa.loudspeaker", worst, loads
+POINTS = 400
+DASHES = ("--", "-.", (0, (1, 1)))
 
 
 def draw(axes: Axes, plane: Plane, corner: float | None = None) -> str:
     """Draw the plane; return in words what it shows. `corner` is the use at the worst corner of the tolerances."""
     low, high = _span(plane)
-    _boundaries(axes, plane, np.geomspace(low[0], nominal(plane.rating.voltage), POINTS))
-    for load, style in zip(plane.loads, ("--", "-.", (0, (1, 1)), "-"), strict=False):
-        worst = load is plane.worst.load
-        axes.plot(*plane.path(load), linestyle="-" if worst else style, color=BLUE if worst else GREY)
-        axes.lines[-1].set(label=load.name[0].upper() + load.name[1:], linewidth=2.0 if worst else 1.2)
+    voltage = np.geomspace(low[0], nominal(plane.rating.voltage), POINTS)
+    _boundaries(axes, plane, voltage)
+    *others, worst = plane.paths
+    for path, dashes in zip(others, DASHES, strict=False):
+        axes.plot(
+            path.voltage, path.current, linestyle=dashes, color=GREY, lw=1.2, label=_sentence(path.name)
+        )
+    axes.plot(worst.voltage, worst.current, color=BLUE, lw=2.0, label=_sentence(worst.name))
     _mark(axes, plane, corner)
-    _limiter(axes, plane, high[0])
+    _cuts(axes, plane, voltage)
     logarithmic(axes, "x", low[0], high[0])
     logarithmic(axes, "y", low[1], high[1])
     axes.set(xlabel="Voltage across the device (V)", ylabel="Current of the device (A)")
@@ -98,28 +45,21 @@ def draw(axes: Axes, plane: Plane, corner: float | None = None) -> str:
     return _words(plane)
 
 
-def _limiter(axes: Axes, plane: Plane, most: float) -> None:
-    points = plane.amplifier.protection.vi_limiter
-    if not points:
-        return
-    voltage = np.geomspace(0.5, most, POINTS)
-    current = limiter_current(voltage=voltage, points=points)
-    axes.plot(
-        voltage, current, color=BLACK, lw=1.2, linestyle=(0, (5, 1, 1, 1, 1, 1)), label="V-I limiter acts"
-    )
+def _sentence(name: str) -> str:
+    return name[0].upper() + name[1:]
 
 
 def _span(plane: Plane) -> tuple[tuple[float, float], tuple[float, float]]:
     """Return the lower left and the upper right corner of what is worth drawing, V and A."""
-    voltages, currents = zip(*(plane.path(load) for load in plane.loads), strict=True)
+    voltages = np.concatenate([path.voltage for path in plane.paths])
+    most = max(float(np.max(path.current)) for path in plane.paths)
     rated = nominal(plane.rating.voltage), nominal(plane.rating.current)
-    point = nominal(plane.worst.point.voltage), nominal(plane.worst.point.current)
-    least = max(0.8 * float(np.min(voltages)), rated[0] / 200.0)
     edge = nominal(allowed_current(voltage=rated[0], case_temperature=plane.case, rating=plane.rating))
-    lowest = min(0.5 * edge if edge > 0.0 else np.inf, 0.2 * float(np.max(currents)), 0.5 * point[1])
-    top = 1.6 * max(rated[1], float(np.max(currents)))
+    least = max(0.8 * float(np.min(voltages)), rated[0] / 200.0)
+    lowest = min(0.5 * edge if edge > 0.0 else np.inf, 0.2 * most, 0.5 * plane.current)
+    top = 1.6 * max(rated[1], most)
     right = 1.4 * max(rated[0], float(np.max(voltages)))
-    return (min(least, 0.8 * point[0]), max(lowest, top / 1e4)), (right, top)
+    return (min(least, 0.8 * plane.voltage), max(lowest, top / 1e4)), (right, top)
 
 
 def _boundaries(axes: Axes, plane: Plane, voltage: Values) -> None:
@@ -135,13 +75,12 @@ def _boundaries(axes: Axes, plane: Plane, voltage: Values) -> None:
         axes.plot(voltage[~known], current[~known], color=colour, lw=width, linestyle=":")
     if not known.all():
         axes.axvspan(voltage[known][-1], voltage[-1], facecolor="none", edgecolor=PALE, hatch="///", lw=0.0)
-    for name, at, current_at in _zones(plane, voltage, cold):
+    for name, at, current_at in _zones(rating, voltage, cold):
         axes.annotate(name, (at, current_at), (5, 3), textcoords="offset points", color=GREY, fontsize=8)
 
 
-def _zones(plane: Plane, voltage: Values, allowed: Values) -> Iterator[tuple[str, float, float]]:
+def _zones(rating: Rating, voltage: Values, allowed: Values) -> Iterator[tuple[str, float, float]]:
     """Yield the name of each zone and a point in the middle of its piece of the cold boundary."""
-    rating = plane.rating
     bare = allowed_current(
         voltage=voltage, case_temperature=nominal(rating.power_at), rating=replace(rating, points=())
     )
@@ -157,22 +96,36 @@ def _zones(plane: Plane, voltage: Values, allowed: Values) -> Iterator[tuple[str
 
 
 def _mark(axes: Axes, plane: Plane, corner: float | None) -> None:
-    voltage, current = nominal(plane.worst.point.voltage), nominal(plane.worst.point.current)
-    allowed = nominal(allowed_current(voltage=voltage, case_temperature=plane.case, rating=plane.rating))
+    allowed = nominal(
+        allowed_current(voltage=plane.voltage, case_temperature=plane.case, rating=plane.rating)
+    )
+    if allowed > 0.0 and plane.pulse is None:
+        axes.plot([plane.voltage] * 2, [plane.current, allowed], color=VERMILLION, lw=1.0, linestyle=":")
     used = f"{plane.use:.0%} used" if np.isfinite(plane.use) else "current where none is allowed"
-    if allowed > 0.0:
-        axes.plot([voltage, voltage], [current, allowed], color=VERMILLION, lw=1.0, linestyle=":")
-    axes.plot([voltage], [current], "D", color=VERMILLION, markeredgecolor=BLACK, markersize=7, zorder=5)
-    at = f"{text(voltage, VOLTAGE)}, {text(current, CURRENT)}"
+    at = f"{text(plane.voltage, VOLTAGE)}, {text(plane.current, CURRENT)}"
     further = "" if corner is None else f"; {corner:.0%} at the worst corner of the tolerances"
+    axes.plot([plane.voltage], [plane.current], "D", color=VERMILLION, markeredgecolor=BLACK, ms=7, zorder=5)
     axes.lines[-1].set_label(f"Worst point: {used} ({at}){further}")
 
 
+def _cuts(axes: Axes, plane: Plane, voltage: Values) -> None:
+    """Draw what else bounds the current: pulse curves, and a V-I limiter."""
+    if plane.pulse is not None:
+        area = pulsed(boundary(plane.rating, plane.case), plane.pulse, plane.steady)
+        axes.plot(voltage, area.pulse_allowed(voltage), color=BLACK, lw=1.2, linestyle=(0, (4, 2)))
+        axes.lines[-1].set_label(
+            "Allowed for half a cycle of the lowest note, beside what flows all the time"
+        )
+    if plane.limiter:
+        current = limiter_current(voltage=voltage, points=plane.limiter)
+        axes.plot(voltage, current, color=BLACK, lw=1.2, linestyle=(0, (5, 1, 1, 1, 1, 1)))
+        axes.lines[-1].set_label("V-I limiter acts")
+
+
 def _words(plane: Plane) -> str:
-    point, device = plane.worst.point, operating.device_of(plane.amplifier, plane.worst.side)
     used = f"{plane.use:.0%}" if np.isfinite(plane.use) else "more than all"
     return (
-        f"Voltage and current of the {plane.worst.side} device, a {device.kind}, on logarithmic scales. Into "
-        f"{plane.worst.load.name} the worst point is {text(point.voltage, VOLTAGE)} and "
-        f"{text(point.current, CURRENT)}: {used} of what is allowed with the case at {text(plane.case, TEMPERATURE)}."
+        f"Voltage and current of the {plane.device}, on logarithmic scales. Into {plane.paths[-1].name} the worst "
+        f"point is {text(plane.voltage, VOLTAGE)} and {text(plane.current, CURRENT)}: {used} of what is allowed with "
+        f"the case at {text(plane.case, TEMPERATURE)}."
     )

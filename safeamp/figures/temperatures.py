@@ -6,7 +6,8 @@ import numpy as np
 from matplotlib.axes import Axes
 
 from safeamp.amplifier import Amplifier
-from safeamp.checks import thermal
+from safeamp.checks import cycle, thermal
+from safeamp.checks.trace import needed
 from safeamp.checks.words import level, nominal, text
 from safeamp.figures.levels import Level, levels_of
 from safeamp.figures.look import BLACK, BLUE, GREY, VERMILLION, NotDrawnError, apart
@@ -17,18 +18,22 @@ TITLE = "Temperatures from junction to air"
 RUNG = 0.12
 #: Least distance of two labels, of the height drawn.
 LEAST = 0.048
-COLOURS = {"air": GREY, "heatsink": BLUE, "case": BLACK, "junction": VERMILLION}
-WIDTHS = {"air": 1.2, "heatsink": 2.6, "case": 1.2, "junction": 2.6}
+COLOURS = {"air": GREY, "heatsink": BLUE, "case": BLACK, "junction": VERMILLION, "junction, peak": VERMILLION}
+WIDTHS = {"air": 1.2, "heatsink": 2.6, "case": 1.2, "junction": 2.6, "junction, peak": 1.0}
 
 
 def ladder(amplifier: Amplifier, at: Level) -> dict[str, float]:
     """Return the temperatures of the hotter side at a level, degC, from air to junction."""
-    sides = [thermal.temperatures(amplifier, at.heat, side) for side in ("upper", "lower")]
-    hottest = max(sides, key=lambda side: nominal(side.junction))
-    (air,) = (nominal(amplifier.heatsink.air),) if amplifier.heatsink.air is not None else (np.nan,)
-    rungs = {"air": air, "heatsink": hottest.sink, "case": hottest.case, "junction": hottest.junction}
-    if np.isnan(nominal(hottest.sink)):  # in free air the device is its own heatsink
-        del rungs["heatsink"], rungs["case"]
+    sides = {side: thermal.temperatures(amplifier, at.heat, side) for side in ("upper", "lower")}
+    side = max(sides, key=lambda one: nominal(sides[one].junction))
+    hot = sides[side]
+    rungs = {"air": needed(amplifier, "heatsink.air")[0]}
+    if not np.isnan(nominal(hot.sink)):  # in free air the device is its own heatsink
+        rungs |= {"heatsink": hot.sink, "case": hot.case}
+    rungs["junction"] = hot.junction
+    lifted = cycle.peak_over_mean(amplifier, side, at.fraction, hot) if at.fraction else 0.0
+    if nominal(lifted) > 0.0:
+        rungs["junction, peak"] = hot.junction + lifted
     return {name: nominal(value) for name, value in rungs.items()}
 
 

@@ -54,6 +54,29 @@ def test_an_older_figure_that_is_no_longer_drawn_is_named(tmp_path):
     assert (tmp_path / "coil.svg").read_text() == "old"
 
 
+def test_the_safe_area_without_a_sheet(tmp_path):
+    line = ["soa", "--split-rail", "34 V", "--load", "8 ohm", "--case-temperature", "60 degC"]
+    device = run("devices").stdout.split()
+    name = next(word for word in device if run(*line, "--device", word).exit_code != 2)
+    done = run(*line, "--device", name, "--figures", tmp_path)
+    assert done.stdout == run(*line, "--device", name).stdout
+    assert [path.name for path in tmp_path.iterdir()] == ["safe-area.svg"]
+    use = re.search(r"use +(\d+\.\d+)", done.stdout)[1]
+    judged = re.search(r"Worst point: (\d+)% used", (tmp_path / "safe-area.svg").read_text(encoding="utf-8"))[
+        1
+    ]
+    assert int(judged) >= round(100 * float(use)) - 1
+
+
+def test_histograms_of_the_samples(tmp_path):
+    done = run("tolerance", SPLIT, "--samples", "200", "--figures", tmp_path)
+    assert done.exit_code == 0
+    names = {path.name for path in tmp_path.iterdir()}
+    assert {"tolerance-soa-loudspeaker.svg", "tolerance-heat-heatsink.svg"} <= names
+    assert "figure tolerance-bias-idle is left out: it has the same value" in done.stderr
+    assert "stop above 1<" in (tmp_path / "tolerance-soa-loudspeaker.svg").read_text(encoding="utf-8")
+
+
 def refused(done, words):
     assert (done.exit_code, done.stdout) == (2, "")
     [line] = done.stderr.splitlines()

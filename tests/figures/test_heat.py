@@ -23,6 +23,16 @@ def test_the_ladder_ends_in_the_air_and_in_the_junction_of_the_finding():
     assert list(rungs.values()) == sorted(rungs.values())
 
 
+def test_with_transient_data_the_peak_within_a_cycle_is_the_last_rung():
+    pairs = [["0.2 K/W", "1.5 ms"], ["0.35 K/W", "12 ms"], ["0.2833 K/W", "90 ms"]]
+    amplifier = sheet("split_rail", {"device.fitted.transient": pairs}).amplifier
+    quiet, _, third, _ = (ladder(amplifier, one) for one in levels_of(amplifier))
+    assert list(third)[-1] == "junction, peak"
+    judged = finding(report("split_rail", {"device.fitted.transient": pairs}), "heat.junction")
+    assert third["junction, peak"] == pytest.approx(judged.nominal)
+    assert list(quiet)[-1] == "junction"
+
+
 def test_in_free_air_there_is_no_heatsink_on_the_ladder():
     amplifier = sheet("bench_mockup").amplifier
     assert list(ladder(amplifier, levels_of(amplifier)[0])) == ["air", "junction"]

@@ -9,6 +9,7 @@ from safeamp.amplifier import Curve
 from safeamp.checks import safe_area as check
 from safeamp.figures import safe_area
 from safeamp.figures.look import picture as drawn
+from safeamp.figures.plane import finding_of, plane_of
 from safeamp.quantities import VOLTAGE, show
 from tests.figures.drawing import axes, full, gallery, labels, line, picture
 from tests.scenarios.sheets import GONE, finding, report, sheet
@@ -73,7 +74,7 @@ def test_zones_are_named_where_they_rule(plane):
 def test_where_the_data_sheet_says_nothing_the_boundary_is_dotted():
     changes = {"device.fitted.safe_area": [["40 V", "3.75 A"], ["80 V", "1.1 A"]]}
     amplifier = sheet("split_rail", changes).amplifier
-    shown = drawn("safe-area", "so", lambda one: safe_area.draw(one, safe_area.plane_of(amplifier)))
+    shown = drawn("safe-area", "so", lambda one: safe_area.draw(one, plane_of(amplifier)))
     plane = shown.figure.axes[0]
     dotted = [one for one in plane.lines if one.get_linestyle() == ":" and len(one.get_xdata()) > 2]
     assert all(one.get_xdata().min() > 80.0 for one in dotted[:2])
@@ -88,8 +89,8 @@ def test_a_limiter_is_drawn_where_it_acts():
 
 def test_a_bench_load_is_drawn_as_the_resistor_it_is():
     amplifier = sheet("bench_mockup").amplifier
-    plane = safe_area.plane_of(amplifier)
-    assert plane.finding == "soa.resistive_load"
+    plane = plane_of(amplifier)
+    assert finding_of(amplifier) == "soa.resistive_load"
     assert plane.use == pytest.approx(finding(report("bench_mockup"), "soa.resistive_load").nominal)
 
 
@@ -112,7 +113,7 @@ def test_current_where_none_is_allowed_is_said_in_words():
         "loudspeaker.phase_angle": "60 deg",
     }
     amplifier = sheet("split_rail", changes).amplifier
-    plane = safe_area.plane_of(amplifier)
+    plane = plane_of(amplifier)
     assert np.isinf(plane.use)
     shown = drawn("safe-area", "so", lambda one: safe_area.draw(one, plane))
     assert (
@@ -127,13 +128,37 @@ def test_of_a_measured_curve_the_path_is_that_of_its_worst_point():
     curve = Curve((20.0, 60.0, 200.0), (6.0, 7.0, 9.0), (40.0, -60.0, 20.0), "curve.csv")
     amplifier = sheet("split_rail").amplifier
     amplifier = replace(amplifier, loudspeaker=replace(amplifier.loudspeaker, impedance_curve=curve))
-    plane = safe_area.plane_of(amplifier)
+    plane = plane_of(amplifier)
     shown = drawn("safe-area", "so", lambda one: safe_area.draw(one, plane)).figure.axes[0]
     assert labels(shown)[2:4] == ["A resistor of 8 ohm", "7 ohm at -60 deg, 60 Hz of the curve"]
     voltage, current = line(shown, "7 ohm at -60 deg").get_data()
     worst = line(shown, "Worst point")
     at = np.interp(worst.get_xdata()[0], voltage[::-1], current[::-1])
     assert at == pytest.approx(worst.get_ydata()[0], rel=1e-3)
+
+
+def test_a_limiter_that_was_measured_cuts_the_path():
+    points = [["0 V, measured", "3 A, measured"], ["60 V, measured", "1 A, measured"]]
+    amplifier = sheet("split_rail", {"protection.vi_limiter": points}).amplifier
+    plane = plane_of(amplifier)
+    assert plane.paths[-1].name.endswith(", cut by the limiter")
+    assert np.all(plane.paths[-1].current <= 3.0 - 2.0 * plane.paths[-1].voltage / 60.0 + 1e-9)
+    voltage, current = plane.paths[-1].voltage, plane.paths[-1].current
+    assert np.interp(plane.voltage, voltage[::-1], current[::-1]) == pytest.approx(plane.current, rel=1e-3)
+
+
+def test_pulse_curves_are_drawn_above_the_dc_boundary():
+    pulse = [["10 ms", ["40 V", "9 A"], ["100 V", "2.4 A"]], ["100 ms", ["40 V", "5 A"], ["100 V", "1.2 A"]]]
+    amplifier = sheet("split_rail", {"device.fitted.pulse": pulse}).amplifier
+    shown = drawn("safe-area", "so", lambda one: safe_area.draw(one, plane_of(amplifier))).figure.axes[0]
+    for_pulse, warm = (
+        line(shown, "Allowed for half a cycle").get_data(),
+        line(shown, "Allowed, case at 60").get_data(),
+    )
+    at = np.array([20.0, 45.0, 60.0, 90.0])
+    above = np.interp(at, *for_pulse) / np.interp(at, *warm)
+    assert np.all(above >= 1.0 - 1e-9)
+    assert np.all(above[1:] > 1.2)
 
 
 def test_what_is_said_names_the_worst_point():

@@ -4,11 +4,12 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 from functools import reduce
+from typing import Any
 
 import numpy as np
 
 from safeamp.amplifier import Amplifier, Sheet, with_values
-from safeamp.answers import PutIn, QuickAnswer
+from safeamp.answers import Path, Plane, PutIn, QuickAnswer
 from safeamp.checks import operating, safe_area
 from safeamp.complaints import OptionsError
 from safeamp.findings import Measure, Remark, Verdict
@@ -24,6 +25,9 @@ CAUTIONS = (
     "A loudspeaker whose angle nobody has measured may reach 60 deg: put that in too.",
     "Both sides count: put in the device of the other side as well.",
 )
+
+#: Angles of the output voltage through which the paths of a picture are drawn, deg.
+ANGLES = np.linspace(-90.0, 90.0, 361)
 
 
 @dataclass(frozen=True, eq=False)
@@ -52,8 +56,10 @@ def safe_area_answer(desk: Desk, sheet: Sheet | None) -> QuickAnswer:
     loads = _loads(page.cases, angle, desk.limits)
     uses = [_use(page.cases, amplifier, rail, load) for load in loads]
     _add(page, rail, angle, uses)
-    _judge(page, amplifier, list(zip(loads, uses, strict=True)), class_b=class_b)
-    return page.answer("Safe area", _holds_for(page.cases, angle), CAUTIONS, _device_put_in(sheet))
+    judged = list(zip(loads, uses, strict=True))
+    _judge(page, amplifier, judged, class_b=class_b)
+    answer = page.answer("Safe area", _holds_for(page.cases, angle), CAUTIONS, _device_put_in(sheet))
+    return replace(answer, plane=_plane(page.cases, sheet, rail, judged))
 
 
 def _fill(desk: Desk, rail: str) -> None:
@@ -115,23 +121,52 @@ def _peak(cases: Cases, rail: str, magnitude: Number) -> Number:
     )
 
 
-def _use(cases: Cases, amplifier: Amplifier, rail: str, load: _Load) -> Use:
+def _drive(cases: Cases, amplifier: Amplifier, rail: str, load: _Load) -> dict[str, Any]:
+    """Return what drives the device into a load, and what it is."""
     device = operating.device_of(amplifier, "upper")
     single = bool(np.all(np.asarray(cases["pairs"]) <= 1))
-    return physics.envelope_use(
-        half_supply=half_supply(cases, rail),
-        peak=_peak(cases, rail, load.magnitude),
-        load_magnitude=load.magnitude,
-        phase_angle=load.angle,
-        conducting=cases["pairs"],
-        emitter_resistor=cases["emitter_resistor"],
-        idle_current=cases["idle"],
-        law=operating.law_of(device),
-        imbalance=0.0 if single else None,
-        case_temperature=cases["case_temperature"],
-        rating=safe_area.rating_of(amplifier, "upper"),
-        transconductance_parameter=device.transconductance_parameter,
+    return {
+        "half_supply": half_supply(cases, rail),
+        "peak": _peak(cases, rail, load.magnitude),
+        "load_magnitude": load.magnitude,
+        "phase_angle": load.angle,
+        "conducting": cases["pairs"],
+        "emitter_resistor": cases["emitter_resistor"],
+        "idle_current": cases["idle"],
+        "law": operating.law_of(device),
+        "imbalance": 0.0 if single else None,
+        "transconductance_parameter": device.transconductance_parameter,
+    }
+
+
+def _use(cases: Cases, amplifier: Amplifier, rail: str, load: _Load) -> Use:
+    rating = safe_area.rating_of(amplifier, "upper")
+    driven = _drive(cases, amplifier, rail, load)
+    return physics.envelope_use(**driven, case_temperature=cases["case_temperature"], rating=rating)
+
+
+def _plane(cases: Cases, sheet: Sheet, rail: str, judged: list[tuple[_Load, Use]]) -> Plane:
+    """Return what can be drawn: the nominal device, the load of the worst use last."""
+    ordered = sorted(judged, key=lambda one: _sortable(one[1].use))
+    use = ordered[-1][1]
+    return Plane(
+        device=f"device, a {operating.device_of(sheet.amplifier, 'upper').kind}",
+        rating=safe_area.rating_of(sheet.amplifier, "upper"),
+        case=_first(cases["case_temperature"]),
+        use=_first(use.use),
+        voltage=_first(use.voltage),
+        current=_first(use.current),
+        paths=tuple(_path(cases, sheet, rail, load) for load, _ in ordered),
     )
+
+
+def _path(cases: Cases, sheet: Sheet, rail: str, load: _Load) -> Path:
+    driven: dict[str, Any] = {
+        name: _first(value) if isinstance(value, np.ndarray) else value
+        for name, value in _drive(cases, sheet.amplifier, rail, load).items()
+    }
+    voltage, current = physics.envelope_path(output_angle=ANGLES, **driven)
+    return Path(f"{shown(load.magnitude, RESISTANCE)} at up to {load.angle:g} deg", voltage, current)
 
 
 def _first(value: Number) -> float:
