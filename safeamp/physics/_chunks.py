@@ -30,12 +30,17 @@ def _leaves(value: object) -> Iterator[Any]:
 
 
 def _changed(value: Any, change: Callable[[Any], Any]) -> Any:
-    """Return a copy of `value` with `change` made to every number and array inside."""
+    """Return `value` with `change` made to every number and array inside; itself where that changes nothing."""
     if isinstance(value, tuple):
         items = [_changed(item, change) for item in value]
+        if all(new is old for new, old in zip(items, value, strict=True)):
+            return value
         return type(value)(*items) if hasattr(value, "_fields") else tuple(items)
     if is_dataclass(value) and not isinstance(value, type):
-        return replace(value, **{f.name: _changed(getattr(value, f.name), change) for f in fields(value)})
+        given = {field.name: getattr(value, field.name) for field in fields(value)}
+        parts = {name: _changed(old, change) for name, old in given.items()}
+        # What is the same for all cases need not be checked anew for every piece of them.
+        return value if all(parts[name] is old for name, old in given.items()) else replace(value, **parts)
     return change(value)
 
 

@@ -12,11 +12,15 @@ from numpy.typing import NDArray
 
 from safeamp.physics._checks import Array
 from safeamp.physics.safe_area.boundary import LEAST_VOLTAGE, Boundary
-from safeamp.physics.safe_area.device import Device
+from safeamp.physics.safe_area.device import ROUGH, Device
 from safeamp.physics.safe_area.locus import Use, _counted, _ratio, _zone
 
-RISING = np.array([1, 2, 3.2, 4.6, 6.3, 8.4, 11, 14, 18, 23, 29, 35, 42, 49, 56, 63, 70, 77, 84, 90.0])
+RISING = np.array([1.5, 3, 5, 7.5, 10.5, 14, 19, 25, 32, 40, 48, 56, 64, 73, 82, 90.0])
 """deg of the load current; close together where a steep line has its worst point, so that a parabola fits there."""
+CLOSE = np.sort(np.concatenate([RISING, (RISING[1:] + RISING[:-1]) / 2.0]))
+"""The same for a stage of much idle current: while the partner lets go the current bends sharply."""
+LETS_GO = 15.0
+"""deg up to where the partner may let go without that."""
 _HALVINGS = 26  # of 180 deg: 3e-6 deg
 _AROUND = 1.0  # deg
 
@@ -61,7 +65,8 @@ def _peak(phases: Array, values: Array) -> Array:
 
 def _peaks(device: Device, boundary: Boundary, axes: int) -> Iterator[Array]:
     """Yield the phase that is worst against each line but the current limit, which the peak of the current uses."""
-    phases, voltage, current = device.over(RISING, axes)
+    early = np.all(device.alone(np.sin(np.deg2rad(LETS_GO)), ROUGH))
+    phases, voltage, current = device.over(RISING if early else CLOSE, axes)
     yield _peak(phases, current * voltage)
     if boundary.lines:
         with np.errstate(divide="ignore"):
