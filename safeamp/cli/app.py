@@ -95,8 +95,7 @@ def check(
     read_only = (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
     if output is not None:
         check_output(output, read_only)
-    if figures is not None:
-        check_folder(figures)
+    check_folder(figures)
     judged = _judge(sheet, limits=limits, device_folder=device_folder, on_paper=on_paper, up_to=up_to)
     if figures is not None:
         _draw(judged, figures, figures_format, read_only)
@@ -112,8 +111,7 @@ def demo(
     figures_format: FigureFormatOption = FigureFormat.SVG,
 ) -> None:
     """Show a report on a built-in amplifier that is invented."""
-    if figures is not None:
-        check_folder(figures)
+    check_folder(figures)
     judged = _judge(Path(__file__).with_name("demo.toml"), demo=True)
     if figures is not None:
         _draw(judged, figures, figures_format)

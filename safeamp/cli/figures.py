@@ -32,8 +32,10 @@ FigureFormatOption = Annotated[
 ]
 
 
-def check_folder(folder: Path) -> None:
-    """End with the status for wrong input where figures cannot be written."""
+def check_folder(folder: Path | None) -> None:
+    """End with the status for wrong input where figures are wanted and cannot be written."""
+    if folder is None:
+        return
     if folder.exists() and not folder.is_dir():
         fail(f"--figures {folder} is not a folder; name a folder to write into")
     if not folder.parent.is_dir():

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+from functools import partial
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated
 
@@ -62,21 +64,7 @@ def soa(
     figures_format: FigureFormatOption = FigureFormat.SVG,
 ) -> None:
     """Say how much of its safe area a device uses into a load."""
-
-    def study(desk: Desk) -> QuickAnswer:
-        from safeamp.reading.one_device import read_device
-        from safeamp.studies.quick.safe_area import safe_area_answer
-
-        with complaining():
-            sheet = None if device is None else read_device(device, device_folder)
-        answer = safe_area_answer(desk, sheet)
-        if figures is not None:
-            _draw(answer, figures, figures_format, limits, device_folder)
-        return answer
-
-    if figures is not None:
-        check_folder(figures)
-
+    drawn = partial(_draw, figures, figures_format, (limits, device_folder))
     options = {
         "split_rail": split_rail,
         "single_rail": single_rail,
@@ -89,14 +77,33 @@ def soa(
         "case_temperature": case_temperature,
         "highest": highest,
     }
-    run("soa", options, study, format_, limits)
+    check_folder(figures)
+    run("soa", options, partial(_answer, device, device_folder, drawn), format_, limits)
+
+
+def _answer(
+    device: str | None, device_folder: Path | None, drawn: Callable[[QuickAnswer], None], desk: Desk
+) -> QuickAnswer:
+    from safeamp.reading.one_device import read_device
+    from safeamp.studies.quick.safe_area import safe_area_answer
+
+    with complaining():
+        sheet = None if device is None else read_device(device, device_folder)
+    answer = safe_area_answer(desk, sheet)
+    drawn(answer)
+    return answer
 
 
 def _draw(
-    answer: QuickAnswer, folder: Path, format_: FigureFormat, limits: Path | None, device_folder: Path | None
+    folder: Path | None,
+    format_: FigureFormat,
+    read: tuple[Path | None, Path | None],
+    answer: QuickAnswer,
 ) -> None:
+    if folder is None or answer.plane is None:
+        return
     from safeamp.figures import plane_pictures
 
-    if answer.plane is not None:
-        read = (limits, *(device_folder.glob("*.toml") if device_folder else ()))
-        write_figures(plane_pictures(answer.plane), folder, format_, never=read)
+    limits, devices = read
+    never = (limits, *(devices.glob("*.toml") if devices else ()))
+    write_figures(plane_pictures(answer.plane), folder, format_, never=never)

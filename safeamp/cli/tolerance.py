@@ -65,8 +65,7 @@ def tolerance(
     read_only = (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
     if output is not None:
         check_output(output, read_only)
-    if figures is not None:
-        check_folder(figures)
+    check_folder(figures)
     with complaining():
         rules = load_limits(limits)
         read = load_sheet(sheet, device_folder=device_folder, limits=rules)
