@@ -76,7 +76,10 @@ def _boundaries(axes: Axes, plane: Plane, voltage: Values) -> None:
     if not known.all():
         axes.axvspan(voltage[known][-1], voltage[-1], facecolor="none", edgecolor=PALE, hatch="///", lw=0.0)
     for name, at, current_at in _zones(rating, voltage, cold):
-        axes.annotate(name, (at, current_at), (5, 3), textcoords="offset points", color=GREY, fontsize=8)
+        axes.annotate(
+            name, (at, current_at), (5, 4), textcoords="offset points", color=GREY, fontsize=8,
+            bbox={"facecolor": "white", "edgecolor": "none", "pad": 0.5, "alpha": 0.8},
+        )  # fmt: skip
 
 
 def _zones(rating: Rating, voltage: Values, allowed: Values) -> Iterator[tuple[str, float, float]]:

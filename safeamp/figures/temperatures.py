@@ -18,8 +18,8 @@ TITLE = "Temperatures from junction to air"
 RUNG = 0.12
 #: Least distance of two labels, of the height drawn.
 LEAST = 0.048
-COLOURS = {"air": GREY, "heatsink": BLUE, "case": BLACK, "junction": VERMILLION, "junction, peak": VERMILLION}
-WIDTHS = {"air": 1.2, "heatsink": 2.6, "case": 1.2, "junction": 2.6, "junction, peak": 1.0}
+COLOURS = {"air": GREY, "heatsink": BLUE, "case": BLACK, "junction": VERMILLION, "peak": VERMILLION}
+WIDTHS = {"air": 1.2, "heatsink": 2.6, "case": 1.2, "junction": 2.6, "peak": 1.0}
 
 
 def ladder(amplifier: Amplifier, at: Level) -> dict[str, float]:
@@ -33,7 +33,7 @@ def ladder(amplifier: Amplifier, at: Level) -> dict[str, float]:
     rungs["junction"] = hot.junction
     lifted = cycle.peak_over_mean(amplifier, side, at.fraction, hot) if at.fraction else 0.0
     if nominal(lifted) > 0.0:
-        rungs["junction, peak"] = hot.junction + lifted
+        rungs["peak"] = hot.junction + lifted
     return {name: nominal(value) for name, value in rungs.items()}
 
 
@@ -57,9 +57,7 @@ def draw(axes: Axes, amplifier: Amplifier, limits: Limits) -> str:
     axes.set(ylim=(min(lowest) - LEAST * height, max(values) + 2.0 * LEAST * height))
     for name, limit in lines.items():
         axes.axhline(limit, color=VERMILLION, linestyle=(0, (5, 3)), lw=1.0, zorder=1)
-        axes.annotate(
-            name, (len(levels) - 0.12, limit), (0, 3), textcoords="offset points", ha="right", fontsize=8
-        )
+        axes.annotate(name, (-0.32, limit), (0, 3), textcoords="offset points", fontsize=8)
     names = [f"{at.name}\n{text(at.heat.stage_power, POWER)}" for at in levels]
     axes.set_xticks(range(len(levels)), names)
     axes.grid(visible=False, axis="x")
