@@ -17,6 +17,7 @@ from safeamp.studies.tolerance import BATCH, tolerance
 
 PHASES = 256
 CASES = BATCH + 1
+SAMPLES = 100_000
 UNIT = "two logarithms of 256 phases"
 GOALS = {UNIT: None, "use of the safe area": 3.5, "every finding, with chances": 15.0}
 
@@ -58,14 +59,14 @@ def chances() -> Callable[[], object]:
     """Return a pass of as many samples through every finding of a sheet with twelve toleranced inputs."""
     limits = load_limits()
     sheet = load_sheet(Path(__file__).with_name("twelve.toml"), limits=limits)
-    return lambda: tolerance(sheet, limits, samples=4 * BATCH)
+    return lambda: tolerance(sheet, limits, samples=SAMPLES)
 
 
 def measured(rounds: int) -> dict[str, float]:
     """Return the median processor time of each per sample, s, over interleaved rounds; the first is dropped."""
     runs = {UNIT: (logarithms, CASES)}
     names = list(GOALS)
-    runs |= {names[1]: (safe_area(), CASES), names[2]: (chances(), 4 * BATCH)}
+    runs |= {names[1]: (safe_area(), CASES), names[2]: (chances(), SAMPLES)}
     found: dict[str, list[float]] = {name: [] for name in runs}
     for number in range(rounds + 1):
         for name, (run, samples) in runs.items():
