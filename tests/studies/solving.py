@@ -32,7 +32,6 @@ def words(sheet):
     return {one.id: one.verdict for one in safeamp.check(sheet, limits=limits()).findings}
 
 
-def held(sheet, solution):
-    """Whether the findings that a solution speaks of hold in a full check."""
-    found = words(sheet)
+def held(found, solution):
+    """Whether the findings that a solution speaks of hold, by the words of a whole report."""
     return all(found.get(id, Verdict.GO) <= solution.until for id in solution.findings)
