@@ -12,6 +12,7 @@ from numpy.typing import ArrayLike, NDArray
 
 from safeamp.physics._checks import Array, array, non_negative, refuse
 from safeamp.physics.stage import Law, carrying_current, device_currents, worst_device_current
+from safeamp.physics.stage.law import carries_alone
 
 Marks = NDArray[np.bool_]
 NEGLIGIBLE = 1e-6
@@ -144,21 +145,15 @@ class Device:
         return found
 
     def alone(self, sine: ArrayLike, error: float = NEGLIGIBLE) -> Marks:
-        """Whether the device carries the load current alone, but for a relative error, at a sine in every case.
-
-        Exponential law: the partner carries less than idle**2/load * exp(-resistor*(load - 2*idle)/voltage).
-        Square law: it is off from four times the idle current on.
-        """
-        most, least = np.max(self.idle), np.min(self.each) * sine
-        if self.law is Law.MOSFET:
-            off: Marks = (least >= 4.0 * most) & (least >= 0.0)
-            return off
-        drop = least - 2.0 * most
-        slope = np.where(drop > 0.0, np.min(self.resistor), np.max(self.resistor))
-        with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
-            left = (most / least) ** 2 * np.exp(-slope * drop / (self.law.value * self.thermal_voltage))
-        small: Marks = (least > 0.0) & (left < error) | (least >= 0.0) & (most == 0.0)
-        return small
+        """Tell whether the device carries the load current alone at a sine, in every case."""
+        return carries_alone(
+            load_current=np.min(self.each) * sine,
+            idle_current=self.idle,
+            emitter_resistor=self.resistor,
+            law=self.law,
+            error=error,
+            thermal_voltage=self.thermal_voltage,
+        )
 
 
 def device_of(

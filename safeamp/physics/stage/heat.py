@@ -7,11 +7,13 @@ from numpy.typing import ArrayLike
 
 from safeamp.physics._checks import Array, array, non_negative, positive, refuse, within
 from safeamp.physics._chunks import chunks_of
-from safeamp.physics.stage.law import THERMAL_VOLTAGE, Law, device_currents
+from safeamp.physics.stage.law import THERMAL_VOLTAGE, Law, carries_alone, device_currents
 
 _NODES, _WEIGHTS = np.polynomial.legendre.leggauss(20)
 _SINES = np.sin((_NODES + 1.0) * np.pi / 4.0)
 _SHARES = _WEIGHTS / 2.0
+NEGLIGIBLE = 1e-6
+"""Relative error of a current below which the current of the partner device is left out."""
 CHUNK = 2048
 """Cases at a time: with twenty nodes each, one array takes 330 KiB."""
 
@@ -70,20 +72,34 @@ def mean_currents(
     """
     non_negative(peak_current=peak_current)
     refuse("conducting", conducting, array(conducting) < 1, "one or more")
-    given = (peak_current, conducting, emitter_resistor, idle_current, transconductance_parameter)
+    each = array(peak_current) / array(conducting)
+    alone = carries_alone(
+        load_current=np.min(each) * _SINES,
+        idle_current=idle_current,
+        emitter_resistor=emitter_resistor,
+        law=law,
+        error=NEGLIGIBLE,
+        thermal_voltage=thermal_voltage,
+    )
+    shared = int(np.sum(~alone))
+    # From there on the mean of a power of the load current is that power of its peak times a mean of sines.
+    mean = each * np.sum((_SINES * _SHARES)[shared:])
+    square = each**2 * np.sum((_SINES**2 * _SHARES)[shared:])
+    given = (each, emitter_resistor, idle_current, transconductance_parameter)
     axes = max(np.ndim(value) for value in given if value is not None)
     # The nodes stand on the first axis, so that the inner loops run over the cases and not over twenty nodes.
-    sines, shares = (one.reshape(-1, *(1,) * axes) for one in (_SINES, _SHARES))
+    sines, shares = (one[:shared].reshape(-1, *(1,) * axes) for one in (_SINES, _SHARES))
     larger, smaller = device_currents(
-        load_current=array(peak_current) / array(conducting) * sines,
+        load_current=each * sines,
         idle_current=array(idle_current),
         emitter_resistor=array(emitter_resistor),
         law=law,
         transconductance_parameter=transconductance_parameter,
         thermal_voltage=thermal_voltage,
     )
-    total, squares = (larger + smaller) * shares, (larger**2 + smaller**2) * shares
-    return MeanCurrents(total.sum(axis=0) / 2.0, squares.sum(axis=0) / 2.0)
+    mean = mean + np.sum((larger + smaller) * shares, axis=0)
+    square = square + np.sum((larger**2 + smaller**2) * shares, axis=0)
+    return MeanCurrents(mean / 2.0, square / 2.0)
 
 
 def mean_rail_current(

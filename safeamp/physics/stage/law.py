@@ -3,9 +3,11 @@
 from enum import Enum
 
 import numpy as np
-from numpy.typing import ArrayLike
+from numpy.typing import ArrayLike, NDArray
 
 from safeamp.physics._checks import Array, array, non_negative, positive, refuse
+
+Mask = NDArray[np.bool_]
 
 THERMAL_VOLTAGE = 1.380649e-23 * 298.15 / 1.602176634e-19
 """V, kT/q at 25 degC (exact constants of the SI, 2019)."""
@@ -194,6 +196,54 @@ def carrying_current(
         thermal_voltage=thermal_voltage,
     )
     return np.where(array(load_current) < 0, smaller, larger)
+
+
+def carries_alone(
+    *,
+    load_current: ArrayLike,
+    idle_current: ArrayLike,
+    emitter_resistor: ArrayLike,
+    law: Law,
+    error: float,
+    thermal_voltage: float = THERMAL_VOLTAGE,
+) -> Mask:
+    """Tell from which load current of each device on its partner matters less than a relative error, in every case.
+
+    Exponential law: the partner carries less than idle**2/load * exp(-resistor*(load - 2*idle)/voltage).
+    Square law: it is off from four times the idle current on. Nothing is said of a value that is nan.
+
+    Parameters
+    ----------
+    load_current : array_like
+        A, one or several, each the least of all cases.
+    idle_current, emitter_resistor : array_like
+        A and ohm of each device, of every case.
+    law : Law
+        Law of both devices.
+    error : float
+        Relative error of the current that is left aside.
+    thermal_voltage : float, optional
+        V of one junction.
+
+    Returns
+    -------
+    numpy.ndarray
+        Of the shape of `load_current`.
+
+    References
+    ----------
+    The sum of both currents is at least the load current, put into the law of `carrying_current`; derived.
+    """
+    least, most = array(load_current), np.max(array(idle_current))
+    if law is Law.MOSFET:
+        off: Mask = (least >= 4.0 * most) & (least >= 0)
+        return off
+    drop = least - 2.0 * most
+    resistor = np.where(drop > 0, np.min(emitter_resistor), np.max(emitter_resistor))
+    with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
+        left = (most / least) ** 2 * np.exp(-resistor * drop / (law.value * thermal_voltage))
+    small: Mask = ((least > 0) & (left < error)) | ((least >= 0) & (most == 0))
+    return small
 
 
 def worst_device_current(
