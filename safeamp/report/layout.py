@@ -23,10 +23,15 @@ def clean(text: str) -> str:
     return " ".join("".join(kept).split())
 
 
+def held(text: str) -> str:
+    """Return a text whose numbers stay on one line with their units."""
+    return _BEFORE_UNIT.sub(_HELD, text)
+
+
 def paragraph(text: str, width: int, first: str = "", rest: str | None = None) -> list[str]:
     """Return lines no longer than the width; the first starts with `first`, the others with `rest`."""
     lines = textwrap.wrap(
-        _BEFORE_UNIT.sub(_HELD, clean(text)),
+        held(clean(text)),
         width,
         initial_indent=first,
         subsequent_indent=" " * len(first) if rest is None else rest,

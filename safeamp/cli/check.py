@@ -1,0 +1,114 @@
+"""The main job: a sheet judged, as text for people or for programs; and the same on a built-in example."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from enum import StrEnum
+from pathlib import Path
+from typing import Annotated
+
+import typer
+
+from safeamp.cli.figures import (
+    FigureFormat,
+    FigureFormatOption,
+    FiguresOption,
+    check_folder,
+    write_figures,
+)
+from safeamp.cli.judged import Judged, files_read, judged, step_of
+from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
+from safeamp.cli.output import check_output, colourful, columns, emit
+
+
+class Format(StrEnum):
+    """How a report is printed."""
+
+    TEXT = "text"
+    JSON = "json"
+    MARKDOWN = "markdown"
+    HTML = "html"
+    CSV = "csv"
+
+
+FormatOption = Annotated[Format, typer.Option("--format", help="How the report is printed.")]
+
+
+def check(
+    sheet: SheetArgument,
+    format_: FormatOption = Format.TEXT,
+    output: OutputOption = None,
+    step: Annotated[
+        str | None, typer.Option("--step", help="Judge up to and including this step, such as cold-checks.")
+    ] = None,
+    limits: LimitsOption = None,
+    device_folder: DeviceFolderOption = None,
+    on_paper: Annotated[
+        bool, typer.Option("--on-paper", help="Judge only what is computed; clears no power.")
+    ] = False,
+    figures: FiguresOption = None,
+    figures_format: FigureFormatOption = FigureFormat.SVG,
+) -> None:
+    """Say whether the next step may be taken, what to read, and at which reading to switch off."""
+    up_to = None if step is None else step_of(step)
+    never = tuple(files_read(sheet, limits, device_folder))
+    if output is not None:
+        check_output(output, never)
+    check_folder(figures)
+    found = judged(sheet, limits=limits, device_folder=device_folder, on_paper=on_paper, up_to=up_to)
+    if figures is not None:
+        write_figures(found.gallery(), figures, figures_format, never=never)
+    _emit(found, format_, output, never)
+    raise typer.Exit(found.report.exit_status)
+
+
+def demo(
+    format_: FormatOption = Format.TEXT,
+    output: OutputOption = None,
+    figures: FiguresOption = None,
+    figures_format: FigureFormatOption = FigureFormat.SVG,
+) -> None:
+    """Show a report on a built-in amplifier that is invented."""
+    check_folder(figures)
+    found = judged(Path(__file__).with_name("demo.toml"), demo=True)
+    if figures is not None:
+        write_figures(found.gallery(), figures, figures_format)
+    _emit(found, format_, output)
+
+
+def _emit(found: Judged, format_: Format, output: Path | None, never: Iterable[Path | None] = ()) -> None:
+    emit(_text(found, format_, on_terminal=output is None), output, never=never)
+
+
+def _text(found: Judged, format_: Format, *, on_terminal: bool) -> str:
+    if format_ is Format.JSON:
+        from safeamp.report.json_ import as_json
+
+        return as_json(found.report)
+    if format_ is Format.CSV:
+        from safeamp.report.csv_ import as_csv
+
+        return as_csv(found.report)
+    if format_ is Format.MARKDOWN:
+        from safeamp.report.markdown import as_markdown
+
+        return as_markdown(found.report)
+    if format_ is Format.HTML:
+        return _html(found)
+    from safeamp.report.text import render
+
+    width = columns() if on_terminal else 80
+    return render(found.report, width=width, colour=on_terminal and colourful())
+
+
+def _html(found: Judged) -> str:
+    from safeamp.figures import svg_text
+    from safeamp.report.html import Drawing, as_html
+
+    gallery = found.gallery()
+    drawings = [
+        Drawing(one.title, one.says, svg_text(one.figure, f"figure-{one.name}", one.title, one.says))
+        for one in gallery.pictures
+    ]
+    left_out = [f"{one.name}: {one.because}" for one in gallery.left_out]
+    return as_html(found.report, {}, drawings, left_out)

@@ -1,0 +1,71 @@
+"""A sheet read and judged: what several commands start from."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from safeamp.cli.output import complaining, fail
+
+if TYPE_CHECKING:
+    from safeamp.amplifier import Sheet
+    from safeamp.answers import Report
+    from safeamp.figures import Gallery
+    from safeamp.findings import Step
+    from safeamp.limits import Limits
+
+
+@dataclass(frozen=True, eq=False)
+class Judged:
+    """A report with what it was made from."""
+
+    sheet: Sheet
+    limits: Limits
+    report: Report
+
+    def gallery(self) -> Gallery:
+        """Return its figures."""
+        from safeamp.figures import pictures_of
+
+        return pictures_of(self.sheet, self.report, self.limits)
+
+
+def judged(
+    path: Path,
+    *,
+    limits: Path | None = None,
+    device_folder: Path | None = None,
+    on_paper: bool = False,
+    up_to: Step | None = None,
+    demo: bool = False,
+) -> Judged:
+    """Return a sheet with its report; ends with the status for wrong input where it cannot be read."""
+    from safeamp.reading import load_sheet
+    from safeamp.reading.limits import load_limits
+    from safeamp.studies.verdict import verdict
+
+    with complaining():
+        rules = load_limits(limits)
+        sheet = load_sheet(path, device_folder=device_folder, limits=rules)
+        report = verdict(sheet, rules, on_paper=on_paper, up_to=up_to, demo=demo)
+    return Judged(sheet, rules, report)
+
+
+def files_read(sheet: Path, limits: Path | None, device_folder: Path | None) -> Iterable[Path | None]:
+    """Return the files that a result is never written over."""
+    return (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
+
+
+def step_of(word: str) -> Step:
+    """Return the step that a user names, with hyphens or blanks."""
+    from safeamp.findings import Step
+    from safeamp.limits import nearest, plain
+
+    steps = {plain(step.value): step for step in Step}
+    found = steps.get(plain(word))
+    if found is None:
+        words = ", ".join(step.value for step in Step)
+        fail(f"--step {word} is not a step{nearest(plain(word), steps)}; the steps are {words}")
+    return found
