@@ -124,6 +124,14 @@ def picture(
     return Picture(name, title, draw(axes), figure)
 
 
+def laid_out(figure: Figure) -> None:
+    """Lay a figure out once and for all: left to the saving, the layout would cost a drawing of its own."""
+    engine = figure.get_layout_engine()
+    if engine is not None:
+        engine.execute(figure)
+        figure.set_layout_engine(None)
+
+
 @quiet
 def rendered(figure: Figure, format_: Format = "svg") -> bytes:
     """Return a figure as the bytes of a file: the same ones for the same figure."""
@@ -132,6 +140,7 @@ def rendered(figure: Figure, format_: Format = "svg") -> bytes:
         metadata: dict[str, Any] = {"Date": None, "Creator": f"safeamp {__version__}"}
     else:
         metadata = {"Software": f"safeamp {__version__}"}
+    laid_out(figure)
     figure.savefig(file, format=format_, metadata=metadata, dpi=RESOLUTION)
     return file.getvalue()
 
