@@ -113,6 +113,9 @@ def test_what_cannot_be_written_leaves_nothing_behind(tmp_path, monkeypatch, cap
     assert ended.value.exit_code == 2
     assert capsys.readouterr().err == f"safeamp: --figures {tmp_path / 'figures'}: {os.strerror(28)}\n"
     assert list(tmp_path.iterdir()) == []
+    with pytest.raises(typer.Exit):
+        figures._write({"a.svg": b"a"}, tmp_path)
+    assert list(tmp_path.iterdir()) == []  # and a folder that was there stays
 
 
 def test_without_figures_no_figure_room_is_imported():

@@ -2,10 +2,12 @@
 
 import re
 import xml.etree.ElementTree as ET
+from dataclasses import replace
 
 import matplotlib as mpl
 import pytest
 
+from safeamp.amplifier import with_values
 from safeamp.figures import pictures_of, rendered, svg_text
 from safeamp.studies.verdict import verdict
 from tests.figures.drawing import DRIVER, NAMES, UNIT, full, gallery, picture, why
@@ -101,3 +103,12 @@ def test_a_part_of_a_page_shares_no_name_with_another(name):
 def test_a_prefix_that_cannot_stand_in_a_name_is_refused(prefix):
     with pytest.raises(ValueError, match=f"not {re.escape(repr(prefix))}"):
         svg_text(picture("heat").figure, prefix)
+
+
+def test_values_that_no_amplifier_can_have_leave_a_picture_out_in_words():
+    read = sheet("split_rail")
+    report = verdict(read, limits())
+    broken = replace(read, amplifier=with_values(read.amplifier, {"stage.emitter_resistor": -1.0}))
+    found = pictures_of(broken, report, limits())
+    assert [one.name for one in found.pictures] == ["overview"]
+    assert "emitter_resistor must be zero or more, got -1" in why("safe-area", found)

@@ -6,7 +6,9 @@ import numpy as np
 import pytest
 
 from safeamp.amplifier import Curve
-from safeamp.figures.driver import draw_impedance
+from safeamp.figures import coil, response
+from safeamp.figures.driver import draw_excursion, draw_impedance
+from safeamp.figures.look import NotDrawnError
 from safeamp.figures.look import picture as drawn
 from safeamp.figures.response import HALF_POWER
 from safeamp.studies.verdict import verdict
@@ -108,3 +110,51 @@ def test_the_travel_is_that_of_the_finding_with_its_limit(judged):
         1e3 * most, rel=5e-3
     )  # the finding leaves the coil's inductance out
     assert line(plane, "Linear up to 5 mm").get_ydata()[0] == 5.0
+
+
+def with_driver(**changes):
+    return sheet(
+        "single_rail", {**DRIVER, **{key.replace("__", "."): value for key, value in changes.items()}}
+    )
+
+
+@pytest.mark.parametrize(
+    ("fitted", "said"),
+    [
+        ({"protection__loudspeaker_fuse": "none"}, ["Relay opens after 100 ms"]),
+        ({"protection__trip_delay": "none"}, ["Fuse at the latest after 120 s", "Fuse may act"]),
+        ({"protection__trip_delay": "none", "protection__loudspeaker_fuse": "none"}, []),
+    ],
+)
+def test_only_what_is_fitted_is_drawn(fitted, said):
+    amplifier = with_driver(**fitted).amplifier
+    shown = drawn("coil", "so", lambda one: coil.draw(one, amplifier, limits()))
+    assert labels(shown.figure.axes[0])[3:] == said
+    assert shown.says.endswith("nothing stops it.") is (said == [])
+
+
+def test_without_a_target_or_a_linear_travel_none_is_drawn():
+    amplifier = with_driver().amplifier
+    bare = replace(
+        amplifier,
+        loudspeaker=replace(amplifier.loudspeaker, linear_excursion=None),
+        output_capacitor=replace(amplifier.output_capacitor, target_cutoff=None),
+    )
+    travel = drawn("cone-travel", "so", lambda one: draw_excursion(one, bare)).figure.axes[0]
+    assert len(labels(travel)) == 2
+    notes = drawn("low-notes", "so", lambda one: response.draw(one, bare, {})).figure.axes[0]
+    assert "Target: 20 Hz" not in labels(notes)
+
+
+@pytest.mark.parametrize(
+    ("table", "name", "draw", "reason"),
+    [
+        ("output_capacitor", "capacitance", lambda one, of: response.draw(one, of, {}), "its cutoff cannot"),
+        ("stage", "swing_loss_up", draw_excursion, "the clipped peak cannot be computed"),
+    ],
+)
+def test_a_value_that_is_no_number_is_not_drawn(table, name, draw, reason):
+    amplifier = with_driver().amplifier
+    broken = replace(amplifier, **{table: replace(getattr(amplifier, table), **{name: np.nan})})
+    with pytest.raises(NotDrawnError, match=reason):
+        drawn("so", "so", lambda one: draw(one, broken))
