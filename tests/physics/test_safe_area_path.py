@@ -31,7 +31,9 @@ def test_a_resistor_runs_along_its_load_line():
 
 def test_an_angle_lets_the_peak_current_flow_before_the_peak_voltage():
     """Derived: within 45 deg the current 3 A sin(min(90, t + 45)) is whole from t = 45 deg on."""
-    voltage, current = envelope_path(output_angle=np.array([-45.0, 0.0, 45.0, 90.0]), phase_angle=-45.0, **STAGE)
+    voltage, current = envelope_path(
+        output_angle=np.array([-45.0, 0.0, 45.0, 90.0]), phase_angle=-45.0, **STAGE
+    )
     root = np.sqrt(0.5)
     np.testing.assert_allclose(voltage, [30 + 24 * root, 30.0, 30 - 24 * root, 6.0], rtol=1e-12)
     np.testing.assert_allclose(current, [0.0, 3 * root, 3.0, 3.0], atol=1e-12)
