@@ -10,9 +10,12 @@ import typer
 
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, complaining, emit, fail
+from safeamp.complaints import ReadingError
 
 if TYPE_CHECKING:
+    from safeamp.amplifier import Sheet
     from safeamp.answers import Substitute
+    from safeamp.reading.sheets import Source
 
 
 class Format(StrEnum):
@@ -54,17 +57,29 @@ def _compare(
 ) -> Substitute:
     from safeamp.reading import open_sheet
     from safeamp.reading.limits import load_limits
-    from safeamp.studies.substitute import SameDeviceError, changes
+    from safeamp.studies.substitute import SameDeviceError
     from safeamp.studies.substitute import substitute as study
 
     with complaining():
         rules = load_limits(limits)
         source = open_sheet(path, device_folder=device_folder, limits=rules)
-        fitted, other = source.sheet(), source.sheet(changes(device, side.value))
+        fitted, other = source.sheet(), _with_other(source, device, side)
     try:
         return study(fitted, other, rules)
     except SameDeviceError as trouble:
         fail(str(trouble))
+
+
+def _with_other(source: Source, device: str, side: Side) -> Sheet:
+    """Return the sheet with the other device; that it is not known is said of the command, not of the sheet."""
+    from safeamp.studies.substitute import changes
+
+    try:
+        return source.sheet(changes(device, side.value))
+    except ReadingError as trouble:
+        if any(complaint.key not in ("stage.upper", "stage.lower") for complaint in trouble.complaints):
+            raise
+        fail(f"{trouble.complaints[0].text}; safeamp devices lists those that are known by name")
 
 
 def _text(answer: Substitute, format_: Format, output: Path | None) -> str:

@@ -98,6 +98,20 @@ def test_wrong_words_end_with_two(sheet, words, message):
     assert "Traceback" not in result.stderr
 
 
+def test_an_unknown_device_is_a_wrong_word_and_no_problem_of_the_sheet(sheet):
+    result = run("substitute", sheet, "weka")
+    assert result.stderr.startswith('safeamp: "weka" is not a known device')
+    assert "line " not in result.stderr
+
+
+def test_what_is_wrong_in_the_sheet_stands_on_its_line(tmp_path):
+    broken = tmp_path / "amp.toml"
+    broken.write_text(HEALTHY.read_text(encoding="utf-8").replace("no_load", "noload"), encoding="utf-8")
+    result = run("substitute", broken, "to3-npn-140v-150w")
+    assert result.exit_code == 2
+    assert result.stderr.startswith(f"{broken}: ")
+
+
 def test_the_folder_of_devices_is_searched(tmp_path):
     (tmp_path / "mine.toml").write_text(WEAK, encoding="utf-8")
     result = run("substitute", SPLIT_RAIL, "weak", "--device-folder", tmp_path)
