@@ -93,13 +93,29 @@ def _room(draft: Draft, given: list[str]) -> None:
     rails = draft.numbers("supply.no_load")
     if not rails:
         return
-    side = max(rails) / (2 if draft.word("supply.rails") == "single" else 1)
+    single = draft.word("supply.rails") == "single"
+    side = max(rails) / (2 if single else 1)
+    # A peak may stand above half the rail when the midpoint is off, and above a rail read at lower mains.
+    most = {"clipped_peak": 1.5 if single else 1.1}
     for name in given:
         volts = draft.number(f"stage.{name}") or 0.0
-        # A peak may stand above half the rail when the midpoint is off.
-        if volts >= side * (1.5 if name == "clipped_peak" else 1.0):
+        if volts >= side * most.get(name, 1.0):
             text = f"{show(volts, VOLTAGE)} leaves nothing of {show(side, VOLTAGE)} from rail to midpoint"
             draft.complain(f"stage.{name}", f"{text}; read both again")
+
+
+def _coupling(draft: Draft) -> None:
+    """Complain of an output that would stand on half the rail, and of a capacitor that has nothing to hold."""
+    rails, coupling = draft.word("supply.rails"), draft.word("stage.coupling")
+    if rails == "single" and coupling == "direct" and draft.values.get("stage.bridged") is False:
+        text = "a single rail, no output capacitor and no bridge put half the rail across the loudspeaker"
+        write = 'write coupling = "capacitor", bridged = true, or supply.rails = "split", whichever it is'
+        draft.complain("stage.coupling", f"{text}; {write}")
+    elif rails == "split" and coupling == "capacitor":
+        text = "an output capacitor holds half of a single rail; between split rails it has nothing to hold"
+        draft.complain(
+            "stage.coupling", f'{text}; write "direct", or supply.rails = "single" with the whole rail'
+        )
 
 
 def _pairs(draft: Draft) -> None:
@@ -180,6 +196,7 @@ QUESTIONS: tuple[Callable[[Draft], None], ...] = (
     _rails,
     _sag,
     _swing,
+    _coupling,
     _pairs,
     _idle,
     _capacitor,
