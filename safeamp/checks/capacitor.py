@@ -9,7 +9,7 @@ from safeamp.checks import operating, thermal
 from safeamp.checks.driver import in_series, is_started, parameters_of, seen_driver
 from safeamp.checks.offset import DIRECT
 from safeamp.checks.registry import finding
-from safeamp.checks.trace import miss, needed
+from safeamp.checks.trace import aside, miss, needed
 from safeamp.checks.words import level, nominal, text
 from safeamp.findings import Also, Measure, NotApplicable, Remark, Step, Verdict
 from safeamp.limits import Limits
@@ -42,7 +42,7 @@ def check_wear(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicable:
         amplifier, "output_capacitor.capacitance", "output_capacitor.marked_capacitance"
     )
     if amplifier.origin("output_capacitor.capacitance") not in (Origin.MEASURED, Origin.EXAMPLE):
-        miss(amplifier, "output_capacitor.capacitance (measured)")
+        miss(amplifier, "output_capacitor.capacitance")
         measured = np.nan
     return Measure(
         measured / marked,
@@ -226,7 +226,7 @@ def _trend_remarks(trend: str | None) -> tuple[Remark, ...]:
 
 
 def _leakage_also(amplifier: Amplifier, current: Number, drop: Number) -> tuple[Also, ...]:
-    standing = operating.midpoint(amplifier) - drop
+    standing = operating.midpoint(aside(amplifier)) - drop
     found = [
         Also("leakage current", nominal(current), CURRENT),
         Also("heat in the capacitor", nominal(current * standing), POWER),

@@ -21,6 +21,8 @@ from safeamp.physics.fuse import Gates, slowest_time
 from safeamp.quantities import CURRENT, ENERGY, POWER, RATIO, RESISTANCE, TIME, VOLTAGE, Number
 
 COPPER = 0.00393
+#: Letter of the fuse that no other is slower than.
+SLOWEST = "TT"
 THERMAL = (
     "loudspeaker.coil_to_magnet",
     "loudspeaker.coil_time_constant",
@@ -61,10 +63,8 @@ def _label_text(amplifier: Amplifier, ratio: Number) -> str:
 @finding("loudspeaker.power", Step.LOUDSPEAKER, RATIO)
 def check_power(amplifier: Amplifier, limits: Limits) -> Measure:
     """Power at clipping into the nominal impedance over the rated noise power."""
-    rated, share, parallel = needed(
-        amplifier, "loudspeaker.rated_power", "loudspeaker.power_share", "loudspeaker.parallel"
-    )
-    each = operating.output_power(amplifier) / parallel / needed(amplifier, "loudspeaker.series")[0]
+    rated, share = needed(amplifier, "loudspeaker.rated_power", "loudspeaker.power_share")
+    each = operating.loudspeaker_power(amplifier)
     noise = rated * share
     return Measure(
         each / noise,
@@ -192,9 +192,7 @@ def _nothing_fitted(amplifier: Amplifier) -> bool:
 def heating(amplifier: Amplifier, fault: Fault) -> dict[str, Number]:
     """Return what heats the coil of one loudspeaker, from where one eighth of clipping power has warmed it."""
     coil, to_magnet, fast, to_air, slow, limit = needed(amplifier, "loudspeaker.dc_resistance", *THERMAL)
-    parallel, series = needed(amplifier, "loudspeaker.parallel", "loudspeaker.series")
-    each = operating.output_power(amplifier) / parallel / series
-    start = ROOM + each / 8.0 * (to_magnet + to_air)
+    start = ROOM + operating.loudspeaker_power(amplifier) / 8.0 * (to_magnet + to_air)
     return {
         "voltage": fault.volts,
         "dc_resistance": coil,
@@ -238,8 +236,11 @@ def fuse_time(amplifier: Amplifier, fault: Fault, limits: Limits) -> Number:
 
 
 def gates_of(fuse: Fuse, limits: Limits) -> Gates:
-    """Return the gates of a fuse's letter; without a table of its own the slower one's."""
-    table = limits.fuse_gates.get(fuse.letter) or limits.fuse_gates["T"]
+    """Return the gates of a fuse's letter; without a table of its own the slower one's, and never acting if none is."""
+    table = limits.fuse_gates.get(fuse.letter)
+    if table is None and fuse.letter == SLOWEST:
+        return Gates(multiples=(1.0,), fastest=(0.0,), slowest=(np.inf,))
+    table = table or limits.fuse_gates["T"]
     return Gates(
         multiples=tuple(gate.times_rating for gate in table.gates),
         fastest=tuple(gate.shortest for gate in table.gates),

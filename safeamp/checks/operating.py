@@ -14,7 +14,7 @@ from safeamp.amplifier import Amplifier, Device
 from safeamp.checks.trace import miss, needed
 from safeamp.physics import bias, stage, supply
 from safeamp.physics.stage import Law
-from safeamp.quantities import Number
+from safeamp.quantities import Number, Origin
 
 #: Sources that hold the rails fixed, whatever the mains does.
 FIXED_SOURCES = ("regulated", "battery", "bench")
@@ -174,9 +174,17 @@ def _implied_loss(amplifier: Amplifier, loaded: Number) -> Number:
     """Return the loss that a clipped peak measured into the nominal load stands for, at the mains of its reading."""
     (peak,) = needed(amplifier, "stage.clipped_peak")
     magnitude, _ = nominal_load(amplifier)
-    at_reading = loaded / mains_factor(amplifier)
+    at_reading = loaded / _mains_since(amplifier, "stage.clipped_peak")
     shared = 1.0 + needed(amplifier, "stage.emitter_resistor")[0] / conducting(amplifier) / magnitude
     return np.maximum(at_reading - peak * shared, 0.0)
+
+
+def _mains_since(amplifier: Amplifier, path: str) -> Number:
+    """Return the present mains over that at a reading: today's where it was measured, else that of the rails."""
+    if is_fixed(amplifier) or amplifier.origin(path) is not Origin.MEASURED:
+        return mains_factor(amplifier)
+    present, actual = needed(amplifier, "mains.present", "mains.actual")
+    return present / actual
 
 
 def sides(amplifier: Amplifier) -> tuple[Side, Side]:
@@ -306,6 +314,16 @@ def clipping_power(amplifier: Amplifier) -> Number:
 def output_power(amplifier: Amplifier) -> Number:
     """Return the sine power at clipping into the loudspeaker, both bridged sides together, W."""
     return clipping_power(amplifier) * (2.0 if amplifier.stage.bridged else 1.0)
+
+
+def loudspeaker_power(amplifier: Amplifier) -> Number:
+    """Return the sine power at clipping into each loudspeaker, W; a series resistor takes its share of the output."""
+    parallel, series = needed(amplifier, "loudspeaker.parallel", "loudspeaker.series")
+    each = output_power(amplifier) / parallel / series
+    if amplifier.stage.series_resistor is None:
+        return each
+    whole = believed_nominal(amplifier) * together(amplifier)
+    return each * whole / (whole + amplifier.stage.series_resistor)
 
 
 def as_current(amplifier: Amplifier, value: Number, unit: str | None) -> Number:

@@ -6,8 +6,9 @@ import numpy as np
 
 from safeamp.amplifier import Amplifier, Fuse
 from safeamp.checks import operating, thermal
+from safeamp.checks.beside import plain
 from safeamp.checks.registry import finding
-from safeamp.checks.trace import miss, needed
+from safeamp.checks.trace import aside, miss, needed
 from safeamp.checks.words import nominal, text
 from safeamp.findings import Also, Measure, NotApplicable, Remark, Step, Verdict
 from safeamp.limits import Limits
@@ -151,8 +152,10 @@ def _ripple(amplifier: Amplifier) -> tuple[Also, ...]:
     table, frequency = amplifier.supply, amplifier.mains.frequency
     if table.reservoir is None or frequency is None or operating.is_fixed(amplifier):
         return ()
+    if plain(amplifier) is None:  # over the corners it would be work for nothing, and may have none
+        return ()
     pp = supply.ripple_peak_to_peak(
-        current=mean_rail_current(amplifier), capacitance=table.reservoir, frequency=frequency
+        current=mean_rail_current(aside(amplifier)), capacitance=table.reservoir, frequency=frequency
     )
     return (Also("ripple at clipping, peak to peak at most", nominal(pp), VOLTAGE),)
 

@@ -9,10 +9,13 @@ from safeamp.reading.draft import Draft
 #: Declared voltages of public supplies; the older 220 and 240 V count as 230 V, which is the nearest to both.
 DECLARED = (100.0, 120.0, 127.0, 230.0)
 
+#: Where the mains at a rail's reading stands, by whether the rail was measured.
+MAINS_OF = {True: "mains.actual", False: "mains.rated"}
+
 
 def declared_voltage(actual: float) -> float:
-    """Return the declared voltage of the public supply that lies nearest to a reading, V."""
-    return min(DECLARED, key=lambda declared: abs(declared - actual))
+    """Return the declared voltage of the public supply that lies nearest to a reading, V; of two the higher."""
+    return min(DECLARED, key=lambda declared: (abs(declared - actual), -declared))
 
 
 def fill_supply(draft: Draft, limits: Limits) -> None:
@@ -67,11 +70,15 @@ def _present(draft: Draft) -> None:
 def _at_mains(draft: Draft) -> None:
     if "supply.at_mains" in draft.written or not draft.has("supply.no_load"):
         return
-    measured = draft.origins["supply.no_load"] is Origin.MEASURED
-    source = "mains.actual" if measured else "mains.rated"
-    volts = draft.number(source)
-    if volts is None:
+    rails = range(len(draft.numbers("supply.no_load")))
+    measured = {draft.origins[f"supply.no_load.{place}"] is Origin.MEASURED for place in rails}
+    found = {name: draft.number(name) for name in (MAINS_OF[one] for one in measured)}
+    volts = min((one for one in found.values() if one is not None), default=None)
+    if volts is None or None in found.values():
         return
+    # Of two rails read at different mains the lower mains makes both the larger.
+    source = next(name for name, one in found.items() if one == volts)
+    measured_today = source == MAINS_OF[True]
     draft.fill("supply.at_mains", volts, VOLTAGE, text=show(volts, VOLTAGE, digits=4))
-    why = "the rail was measured today" if measured else "the rail is that of the plate's mains"
+    why = "the rail was measured today" if measured_today else "the rail is that of the plate's mains"
     draft.assume("supply.at_mains", f"{source}, {show(volts, VOLTAGE, digits=4)}", why)

@@ -17,6 +17,9 @@ from safeamp.quantities import Kind, Origin, show
 from safeamp.studies import corners
 from safeamp.studies.corners import Design
 
+#: Keys without which no rail is known at the mains of today.
+MAINS = frozenset({"mains.actual", "mains.highest", "supply.at_mains"})
+
 
 @dataclass
 class Bench:
@@ -125,11 +128,8 @@ def again(check: Check, measure: Measure, amplifier: Amplifier, bench: Bench) ->
     if not isinstance(found, Measure):
         raise TypeError(f"{check.id} differs in structure between its cases")
     if found.word is not None and measure.word is None:
-        return replace(
-            measure,
-            word=Verdict.UNVERIFIED,
-            remarks=(Remark(Verdict.UNVERIFIED, found.says), *measure.remarks),
-        )
+        # The nominal values stand: what is a stop by them stays one, whatever its corners would say.
+        return replace(measure, remarks=(Remark(Verdict.UNVERIFIED, found.says), *measure.remarks))
     return replace(
         measure,
         value=found.value,
@@ -182,12 +182,18 @@ def _bound(measure: Measure, limit: Limit) -> Bound:
     )
 
 
+def _missing_word(measure: Measure, limit: Limit, trace: Trace) -> Verdict:
+    """Return the word of a finding whose input is missing; all that scales with an unknown mains is unverified."""
+    word = missing_word(measure, limit)
+    return max(word, Verdict.UNVERIFIED) if MAINS & trace.missing.keys() else word
+
+
 def _unsettled(check: Check, measure: Measure, limit: Limit, bench: Bench, trace: Trace) -> Finding:
     """Return the finding of a check whose input is missing."""
     return Finding(
         id=check.id,
         step=check.step,
-        verdict=missing_word(measure, limit),
+        verdict=_missing_word(measure, limit, trace),
         kind=measure.kind or check.kind,
         says=measure.says,
         nominal=_at(measure.value, 0),
