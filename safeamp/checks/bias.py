@@ -43,6 +43,14 @@ def bench_idle(amplifier: Amplifier) -> Number:
     return np.nan
 
 
+def _warm_idle(amplifier: Amplifier) -> Number:
+    """Return the idle current as read warm, A: one that was set and read cold says nothing of a drift."""
+    if operating.read_idle(amplifier) is None and amplifier.stage.idle_at == "cold":
+        miss(amplifier, "readings.idle_upper", "readings.idle_lower")
+        return np.nan
+    return bench_idle(amplifier)
+
+
 def _shown(amplifier: Amplifier, current: Number) -> Number:
     """Return a current as volts across one emitter resistor, or as it is where there is none."""
     return current * needed(amplifier, "stage.emitter_resistor")[0] if _has_resistor(amplifier) else current
@@ -195,7 +203,7 @@ def check_balance(amplifier: Amplifier, limits: Limits) -> Measure:
 def check_drift(amplifier: Amplifier, limits: Limits) -> Measure:
     """Idle warm over cold."""
     (cold,) = needed(amplifier, "readings.idle_cold")
-    warm = _shown(amplifier, bench_idle(amplifier))
+    warm = _shown(amplifier, _warm_idle(amplifier))
     return Measure(
         warm / np.where(np.asarray(cold) > 0.0, cold, np.nan),
         f"idle {text(cold, VOLTAGE)} just after switch-on, {text(warm, VOLTAGE)} warm",

@@ -15,7 +15,7 @@ from safeamp.checks.beside import bridge_remarks, limiter_remarks, one_open_also
 from safeamp.checks.driver import any_signal_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import needed
-from safeamp.checks.words import idle_remarks, nominal, sharing_remarks, text
+from safeamp.checks.words import free_air_remarks, idle_remarks, nominal, sharing_remarks, text
 from safeamp.findings import Also, Measure, Remark, Step, Verdict
 from safeamp.limits import Limits
 from safeamp.physics import safe_area
@@ -190,7 +190,7 @@ def _sortable(use: Number) -> float:
 
 def device_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
     """Return what keeps every finding of the safe area from being judged: idle, sharing, typical data, no curve."""
-    found = [*idle_remarks(amplifier), *sharing_remarks(amplifier, limits)]
+    found = [*idle_remarks(amplifier), *sharing_remarks(amplifier, limits), *free_air_remarks(amplifier)]
     for side in dict.fromkeys((amplifier.stage.upper, amplifier.stage.lower)):
         found += _remarks_on(amplifier, str(side))
     return tuple(found)

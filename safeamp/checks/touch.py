@@ -41,9 +41,11 @@ def check_mains(amplifier: Amplifier, limits: Limits) -> Measure:
         (earth,) = needed(amplifier, "readings.earth_resistance")
         said = f"protective earth {text(earth, RESISTANCE)}"
     return Measure(
-        np.where(np.isnan(earth), np.nan, insulation),
+        insulation,
         f"{text(insulation, RESISTANCE)} from mains to metal; {said}",
-        go=np.where(_above(earth, earth_limit, "go"), np.inf, level(limit, "go")),
+        go=np.where(
+            np.isnan(earth), np.nan, np.where(_above(earth, earth_limit, "go"), np.inf, level(limit, "go"))
+        ),
         stop=np.where(_above(earth, earth_limit, "stop"), np.inf, level(limit, "stop")),
         next="test insulation and earth by your local rules; a licensed person's measurement decides",
         method="readings against levels; local code outranks them",

@@ -13,6 +13,9 @@ from safeamp.quantities import Kind, Number, Origin, show
 #: How far the thermal resistance of fins by ruler may be off, and for what it is computed.
 RULER = "-30/+70 %, for fins that stand upright in free air"
 
+#: A printed power this much above what free air carries away is that of a cooled case; sheets round by less.
+AT_A_CASE = 1.15
+
 
 def nominal(value: Number) -> float:
     """Return the nominal of a value over the cases: its first."""
@@ -60,6 +63,22 @@ def sharing_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
                 )
             )
     return tuple(found)
+
+
+def free_air_remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
+    """Return what keeps a safe area in free air from being judged: a power that holds at a cooled case alone."""
+    found = []
+    for side in ("upper", "lower"):
+        device = operating.device_of(amplifier, side)
+        ratings = (device.power, device.power_at, device.junction_limit, device.junction_to_ambient)
+        if not thermal.in_free_air(amplifier, device) or any(one is None for one in ratings):
+            continue
+        power, at, most, to_air = (nominal(one) for one in ratings if one is not None)
+        if power > AT_A_CASE * (most - at) / to_air:
+            name = amplifier.stage.upper if side == "upper" else amplifier.stage.lower
+            because = f"device.{name}.power holds at a cooled case: in free air {(most - at) / to_air:.3g} W are left"
+            found.append(Remark(Verdict.UNVERIFIED, because))
+    return tuple(dict.fromkeys(found))
 
 
 def level(limit: Limit, name: str) -> float:
