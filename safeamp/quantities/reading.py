@@ -122,7 +122,9 @@ def _finish(
     nominal, low, high = (-ends.nominal, -ends.high, -ends.low) if dropped else ends
     widened = written is not None and toleranced and written.low is None and written.minus is None
     reach = f"{name}, widened as a guess," if widened else name
-    check_sign(name, reach, nominal, low, sign, kind)
+    # A magnitude that is never believed to be zero cannot reach zero either.
+    above = sign is Sign.MAGNITUDE and believable is not None and believable[0] > 0
+    check_sign(name, reach, nominal, low, Sign.POSITIVE if above else sign, kind)
     check_possible(reach, low, high, kind)
     number = None if written is None else abs(written.number) if dropped else written.number
     check_believable(name, nominal, number, kind, believable)

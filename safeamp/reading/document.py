@@ -98,8 +98,8 @@ def parse_document(text: str, path: str, digest: str = "") -> Document:
         return Document(path, text, tomllib.loads(text), digest)
     except tomllib.TOMLDecodeError as trouble:
         where = _AT.search(str(trouble))
-        line = int(where[1]) if where and where[1] else None
-        what = _AT.sub("", str(trouble))
+        line = int(where[1]) if where and where[1] else len(text.rstrip().split("\n"))
+        what = _AT.sub("" if where and where[1] else ", at the end of the file", str(trouble))
         raise _refusal(path, line, f"is not valid TOML here ({what}); {_hint(text, line)}") from trouble
     except RecursionError as trouble:
         raise _refusal(path, None, "is nested too deeply; write plain tables and lists") from trouble

@@ -21,15 +21,17 @@ def ask_readings(draft: Draft) -> None:
 
 
 def _offset(draft: Draft) -> None:
-    given = [path for path in (f"readings.{name}" for name in OFFSETS) if draft.number(path) is not None]
-    relay = draft.has("protection.trip_voltage") or draft.has("protection.trip_delay")
-    if not given or not relay or any(path in draft.toleranced for path in given):
+    """Ask of each reading alone: a relay may open between two of them."""
+    if not (draft.has("protection.trip_voltage") or draft.has("protection.trip_delay")):
         return
-    if all(abs(draft.values[path]) <= NEXT_TO_NOTHING for path in given):
-        text = f"{show(draft.values[given[0]], VOLTAGE)} with protection fitted"
+    for path in (f"readings.{name}" for name in OFFSETS):
+        volts = draft.number(path)
+        if volts is None or path in draft.toleranced or abs(volts) > NEXT_TO_NOTHING:
+            continue
+        text = f"{show(volts, VOLTAGE)} with protection fitted"
         ask = "was it read before or behind the relay, and did it close?"
         write = 'read before the relay; what stays is written with its tolerance, "0.3 mV ±0.1 mV, measured"'
-        draft.complain(given[0], f"{text}: {ask} {write}")
+        draft.complain(path, f"{text}: {ask} {write}")
 
 
 def _midpoint(draft: Draft) -> None:

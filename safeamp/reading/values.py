@@ -150,7 +150,14 @@ def _reading(draft: Draft, key: Key, value: Any) -> Reading:
         return read_any(value, key.kinds, sign=sign, allow_si=draft.allow_si)
     if key.whole and not _whole(value):
         raise QuantityError(f"{_shown(value)} is not a whole number", "write a bare whole number, such as 1")
-    return read(value, key.kinds[0], sign=sign, believable=key.believable, allow_si=draft.allow_si)
+    try:
+        return read(value, key.kinds[0], sign=sign, believable=key.believable, allow_si=draft.allow_si)
+    except QuantityError as trouble:
+        if not key.whole:
+            raise
+        raise QuantityError(
+            trouble.found, trouble.write.replace(RATIO.article, "a whole number")
+        ) from trouble
 
 
 def _whole(value: object) -> bool:

@@ -28,7 +28,7 @@ from tests.reading.desk import SCENARIOS, change, scenario
         (b"title = 'x'\ntitle = 'y'\n", 2, "is not valid TOML here (Cannot overwrite a value)"),
         (b"[stage]\n[stage]\n", 2, "is not valid TOML here (Cannot declare ('stage',) twice)"),
         (b"title = 'x\n", 1, "write text and every value with a unit in quotes"),
-        (b"title", None, "is not valid TOML here"),
+        (b"title", 1, "is not valid TOML here"),
         (b"x = " + b"[" * 5000, None, "is nested too deeply"),
         (b"x = " + b"1" * 5000, None, "is not valid TOML ("),
     ],

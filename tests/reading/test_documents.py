@@ -18,7 +18,7 @@ def test_line_of_a_key_or_of_the_table_around_it():
     ("text", "line", "said"),
     [
         ("[mains]\nnominal = 230 V\n", 2, "in quotes"),
-        ("title = ", None, "not valid TOML"),
+        ("title = ", 1, "not valid TOML here (Invalid value, at the end of the file)"),
         ("a = 1\na = 2\n", 2, "overwrite"),
         ('a = "x\n', 1, "not valid TOML"),
     ],
