@@ -8,7 +8,7 @@ from typing import Any, cast
 import numpy as np
 
 from safeamp.amplifier import Amplifier, with_values
-from safeamp.checks import cycle, operating
+from safeamp.checks import curve, cycle, operating
 from safeamp.checks.words import nominal
 from safeamp.findings import Also, Remark, Verdict
 from safeamp.physics.safe_area import Rating, Use, limiter_use
@@ -83,8 +83,10 @@ def limiter_remarks(
     return (acts, Remark(Verdict.UNVERIFIED, because))
 
 
-def bridge_remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
-    """Return what to mind before a loudspeaker hangs between two outputs; it holds nothing back."""
+def load_remarks(amplifier: Amplifier) -> tuple[Remark, ...]:
+    """Return what to mind of a load: a curve with gaps holds back; that a bridge needs both terminals free does not."""
+    gap = curve.gap(amplifier)
+    found = () if not gap else (Remark(Verdict.UNVERIFIED, gap),)
     if not amplifier.stage.bridged:
-        return ()
-    return (Remark(Verdict.GO, "bridged: neither loudspeaker terminal may touch chassis or 0 V"),)
+        return found
+    return (*found, Remark(Verdict.GO, "bridged: neither loudspeaker terminal may touch chassis or 0 V"))

@@ -18,7 +18,7 @@ from safeamp.checks import operating
 from safeamp.checks.trace import needed
 from safeamp.physics import stage
 from safeamp.physics.safe_area import Use
-from safeamp.quantities import Number
+from safeamp.quantities import FREQUENCY, Number, show
 
 Cases = npt.NDArray[np.float64]
 Marks = npt.NDArray[np.bool_]
@@ -35,6 +35,10 @@ NEAR = 0.95
 SLACK = 1e-4
 #: Looks at further corners after the ranking, and corners of each.
 ROUNDS, LOOKS = 6, 10
+
+#: A curve may begin a third of an octave above the lowest note, must reach voices, and leaves out no whole decade
+#: (common practice): a dip that nobody measured clears nothing.
+NEIGHBOUR, UP_TO, DECADE = 1.27, 1e3, 10.0 * (1.0 + 1e-9)
 
 UseInto = Callable[[Amplifier, Number, Number, Number], Use]
 """Amplifier, magnitude (ohm), angle (deg), case temperature -> use; of many points or of many corners."""
@@ -69,6 +73,30 @@ def points_of(amplifier: Amplifier) -> Points | None:
     if not isinstance(curve, Curve):
         return None
     return Points(np.array(curve.frequencies), np.array(curve.impedances), np.array(curve.phases))
+
+
+def gap(amplifier: Amplifier) -> str:
+    """Return between which notes a curve leaves the loudspeaker unknown; an empty text when it leaves none."""
+    points = points_of(amplifier)
+    if points is None:
+        return ""
+    notes, lowest = (
+        points.frequency,
+        float(np.asarray(needed(amplifier, "loudspeaker.lowest_note")[0]).flat[0]),
+    )
+    if notes[0] > NEIGHBOUR * lowest:
+        text = f"the curve begins at {show(notes[0], FREQUENCY)}, loudspeaker.lowest_note is"
+        return (
+            f"{text} {show(lowest, FREQUENCY)}: measure further down, or write the lowest note that is played"
+        )
+    if notes[-1] < UP_TO:
+        return f"the curve ends at {show(notes[-1], FREQUENCY)}: above it the loudspeaker is not known"
+    wide = notes[1:] > DECADE * notes[:-1]
+    if not np.any(wide):
+        return ""
+    place = int(np.argmax(wide))
+    between = f"{show(notes[place], FREQUENCY)} and {show(notes[place + 1], FREQUENCY)}"
+    return f"the curve has no point between {between}: a dip in between is not seen"
 
 
 def seen(amplifier: Amplifier, points: Points) -> tuple[Number, Number]:

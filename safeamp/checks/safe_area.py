@@ -11,7 +11,7 @@ import numpy as np
 from safeamp.amplifier import Amplifier
 from safeamp.checks import curve, cycle, operating, thermal
 from safeamp.checks.as_built import as_built
-from safeamp.checks.beside import bridge_remarks, limiter_remarks, one_open_also, uncut_also
+from safeamp.checks.beside import limiter_remarks, load_remarks, one_open_also, uncut_also
 from safeamp.checks.driver import any_signal_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import needed
@@ -321,7 +321,7 @@ def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
             *device_remarks(amplifier, limits),
             *_open_remarks(open_load),
             *_limiter_remarks(amplifier, worst, uncut),
-            *bridge_remarks(amplifier),
+            *load_remarks(amplifier),
         ),
         unknown=worst.unknown,
         needs=_needs(amplifier),
