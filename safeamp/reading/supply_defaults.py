@@ -51,10 +51,16 @@ def _highest(draft: Draft, limits: Limits) -> None:
     highest = max(band.high * nominal, actual or 0.0)
     text = show(highest, VOLTAGE, digits=4)
     # A public supply does reach this voltage: it is a fact to be borne, not a guess to be settled.
-    draft.fill("mains.highest", highest, VOLTAGE, origin=Origin.STATED, text=text)
+    origin = _unless_example(draft, "mains.nominal", Origin.STATED)
+    draft.fill("mains.highest", highest, VOLTAGE, origin=origin, text=text)
     draft.assume(
         "mains.highest", text, f"{band.high:g} times nominal ({band.source}), never below mains.actual"
     )
+
+
+def _unless_example(draft: Draft, source: str, origin: Origin) -> Origin:
+    """Return the origin of a number that follows from another: from an example follows an example."""
+    return Origin.EXAMPLE if draft.origins.get(source) is Origin.EXAMPLE else origin
 
 
 def _present(draft: Draft) -> None:
@@ -79,6 +85,7 @@ def _at_mains(draft: Draft) -> None:
     # Of two rails read at different mains the lower mains makes both the larger.
     source = next(name for name, one in found.items() if one == volts)
     measured_today = source == MAINS_OF[True]
-    draft.fill("supply.at_mains", volts, VOLTAGE, text=show(volts, VOLTAGE, digits=4))
+    origin = _unless_example(draft, source, Origin.ASSUMED)
+    draft.fill("supply.at_mains", volts, VOLTAGE, origin=origin, text=show(volts, VOLTAGE, digits=4))
     why = "the rail was measured today" if measured_today else "the rail is that of the plate's mains"
     draft.assume("supply.at_mains", f"{source}, {show(volts, VOLTAGE, digits=4)}", why)

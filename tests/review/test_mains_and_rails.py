@@ -79,3 +79,17 @@ def test_a_peak_of_the_manual_belongs_to_the_mains_of_the_rails():
     peak = (32.0 * 234.0 / 220.0 - (32.0 - 25.2 * shared)) / shared
     volts = found(SPLIT, changes, without=["supply.at_mains"])["touch.voltage"].nominal
     assert volts == pytest.approx(peak / math.sqrt(2.0), rel=1e-9)
+
+
+@pytest.mark.parametrize(
+    ("key", "ids"),
+    [
+        ("mains.nominal", ("supply.rail_to_rail", "supply.reservoir_voltage", "touch.rails")),
+        ("mains.rated", ("supply.mains", "touch.rails", "heat.heatsink", "soa.loudspeaker")),
+    ],
+)
+def test_what_follows_from_an_example_is_an_example(key, ids):
+    """The highest mains follows from the nominal one, the mains of a rail that nobody measured from the plate."""
+    changes = {key: "230 V, example", "supply.no_load": "33 V, manual"}
+    words = found(SPLIT, changes, without=["supply.at_mains"])
+    assert {words[id].verdict for id in ids} == {Verdict.UNVERIFIED}
