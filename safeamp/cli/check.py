@@ -2,10 +2,10 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Mapping
 from enum import StrEnum
 from pathlib import Path
-from typing import Annotated
+from typing import TYPE_CHECKING, Annotated
 
 import typer
 
@@ -18,7 +18,10 @@ from safeamp.cli.figures import (
 )
 from safeamp.cli.judged import Judged, files_read, judged, step_of
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
-from safeamp.cli.output import check_output, colourful, columns, emit
+from safeamp.cli.output import check_output, colourful, columns, emit, fail
+
+if TYPE_CHECKING:
+    from safeamp.answers import Working
 
 
 class Format(StrEnum):
@@ -46,11 +49,17 @@ def check(
     on_paper: Annotated[
         bool, typer.Option("--on-paper", help="Judge only what is computed; clears no power.")
     ] = False,
+    explain: Annotated[
+        list[str] | None,
+        typer.Option("--explain", help="Show how a finding comes about, by its id; may be repeated."),
+    ] = None,
     figures: FiguresOption = None,
     figures_format: FigureFormatOption = FigureFormat.SVG,
 ) -> None:
     """Say whether the next step may be taken, what to read, and at which reading to switch off."""
     up_to = None if step is None else step_of(step)
+    if explain and format_ is Format.CSV:
+        fail("--explain: a row of csv has no room for a calculation; take text, json, markdown or html")
     never = tuple(files_read(sheet, limits, device_folder))
     if output is not None:
         check_output(output, never)
@@ -58,7 +67,7 @@ def check(
     found = judged(sheet, limits=limits, device_folder=device_folder, on_paper=on_paper, up_to=up_to)
     if figures is not None:
         write_figures(found.gallery(), figures, figures_format, never=never)
-    _emit(found, format_, output, never)
+    emit(_text(found, format_, explain, on_terminal=output is None), output, never=never)
     raise typer.Exit(found.report.exit_status)
 
 
@@ -73,18 +82,18 @@ def demo(
     found = judged(Path(__file__).with_name("demo.toml"), demo=True)
     if figures is not None:
         write_figures(found.gallery(), figures, figures_format)
-    _emit(found, format_, output)
+    emit(_text(found, format_, None, on_terminal=output is None), output)
 
 
-def _emit(found: Judged, format_: Format, output: Path | None, never: Iterable[Path | None] = ()) -> None:
-    emit(_text(found, format_, on_terminal=output is None), output, never=never)
-
-
-def _text(found: Judged, format_: Format, *, on_terminal: bool) -> str:
+def _text(found: Judged, format_: Format, explain: list[str] | None, *, on_terminal: bool) -> str:
+    """Return the report as text; a page holds every calculation anyway, folded."""
+    if format_ is Format.HTML:
+        return _html(found, found.workings())
+    workings = found.workings(explain) if explain else {}
     if format_ is Format.JSON:
         from safeamp.report.json_ import as_json
 
-        return as_json(found.report)
+        return as_json(found.report, workings)
     if format_ is Format.CSV:
         from safeamp.report.csv_ import as_csv
 
@@ -92,16 +101,14 @@ def _text(found: Judged, format_: Format, *, on_terminal: bool) -> str:
     if format_ is Format.MARKDOWN:
         from safeamp.report.markdown import as_markdown
 
-        return as_markdown(found.report)
-    if format_ is Format.HTML:
-        return _html(found)
+        return as_markdown(found.report, workings)
     from safeamp.report.text import render
 
     width = columns() if on_terminal else 80
-    return render(found.report, width=width, colour=on_terminal and colourful())
+    return render(found.report, width=width, colour=on_terminal and colourful(), workings=workings)
 
 
-def _html(found: Judged) -> str:
+def _html(found: Judged, workings: Mapping[str, Working]) -> str:
     from safeamp.figures import svg_text
     from safeamp.report.html import Drawing, as_html
 
@@ -111,4 +118,4 @@ def _html(found: Judged) -> str:
         for one in gallery.pictures
     ]
     left_out = [f"{one.name}: {one.because}" for one in gallery.left_out]
-    return as_html(found.report, {}, drawings, left_out)
+    return as_html(found.report, workings, drawings, left_out)

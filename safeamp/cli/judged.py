@@ -11,7 +11,7 @@ from safeamp.cli.output import complaining, fail
 
 if TYPE_CHECKING:
     from safeamp.amplifier import Sheet
-    from safeamp.answers import Report
+    from safeamp.answers import Report, Working
     from safeamp.figures import Gallery
     from safeamp.findings import Step
     from safeamp.limits import Limits
@@ -24,6 +24,15 @@ class Judged:
     sheet: Sheet
     limits: Limits
     report: Report
+
+    def workings(self, ids: Iterable[str] | None = None) -> dict[str, Working]:
+        """Return how some of its findings come about, or all; ends with the status for wrong input for no finding."""
+        from safeamp.studies.explain import explained
+
+        try:
+            return explained(self.sheet, self.limits, self.report, ids)
+        except KeyError as trouble:
+            fail(f"--explain: {trouble.args[0]}")
 
     def gallery(self) -> Gallery:
         """Return its figures."""

@@ -4,28 +4,33 @@ from __future__ import annotations
 
 import json
 import math
+from collections.abc import Mapping
 from typing import Any
 
 from safeamp._version import __version__
-from safeamp.answers import Report, StepVerdict
+from safeamp.answers import Report, StepVerdict, Working
 from safeamp.findings import Bound, Finding
 from safeamp.report.safety import SAFETY
+from safeamp.report.working import NO_WORKINGS, line_mapping
 
 
-def as_json(report: Report) -> str:
+def as_json(report: Report, workings: Mapping[str, Working] = NO_WORKINGS) -> str:
     """Return the report as a JSON text that ends with a line feed; never nan or infinity."""
-    return json.dumps(as_mapping(report), indent=2, allow_nan=False) + "\n"
+    return json.dumps(as_mapping(report, workings), indent=2, allow_nan=False) + "\n"
 
 
-def as_mapping(report: Report) -> dict[str, Any]:
-    """Return the report as nested dicts and lists of text, finite numbers, flags and None."""
+def as_mapping(report: Report, workings: Mapping[str, Working] = NO_WORKINGS) -> dict[str, Any]:
+    """Return the report as nested dicts and lists of text, finite numbers, flags and None.
+
+    A finding that is explained has its calculation besides, under "working".
+    """
     return {
         "safeamp": __version__,
         "title": report.title,
         "scope": report.scope,
         "verdict": report.verdict.word,
         "steps": [_step(entry) for entry in report.steps],
-        "findings": [finding_mapping(finding) for finding in report.findings],
+        "findings": [_explained(finding, workings.get(finding.id)) for finding in report.findings],
         "not_applicable": [{"id": entry.id, "because": entry.because} for entry in report.not_applicable],
         "assumptions": [
             {"key": entry.key, "value": entry.value, "why": entry.why} for entry in report.assumptions
@@ -45,6 +50,11 @@ def as_mapping(report: Report) -> dict[str, Any]:
 def _step(entry: StepVerdict) -> dict[str, Any]:
     word = None if entry.verdict is None else entry.verdict.word
     return {"step": entry.step.value, "verdict": word, "reached": entry.reached}
+
+
+def _explained(finding: Finding, working: Working | None) -> dict[str, Any]:
+    found = finding_mapping(finding)
+    return found if working is None else {**found, "working": [line_mapping(one) for one in working.lines]}
 
 
 def finding_mapping(finding: Finding) -> dict[str, Any]:

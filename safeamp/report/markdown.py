@@ -7,9 +7,7 @@ from collections.abc import Iterator, Mapping
 from safeamp.answers import Report, Working
 from safeamp.report.cells import markdown, table_row
 from safeamp.report.page import Entry, Page, StepLine, page_of
-from safeamp.report.working import working_texts
-
-NO_WORKINGS: Mapping[str, Working] = {}
+from safeamp.report.working import HOW, NO_WORKINGS, working_texts
 
 
 def as_markdown(report: Report, workings: Mapping[str, Working] = NO_WORKINGS) -> str:
@@ -69,7 +67,14 @@ def _finding(entry: Entry, working: Working | None) -> Iterator[str]:
         yield "- from:"
         yield from (f"    - {markdown(f'{one.key} = {one.value} ({one.origin})')}" for one in entry.inputs)
     if working is not None:
-        yield from ("", "```text", *working_texts(working), "```")
+        yield from (
+            "",
+            f"How it comes about, line by line. {HOW}",
+            "",
+            "```text",
+            *working_texts(working),
+            "```",
+        )
 
 
 def _said(entry: Entry) -> Iterator[tuple[str, str]]:

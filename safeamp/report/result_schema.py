@@ -88,8 +88,15 @@ def _finding() -> dict[str, Any]:
             "overturned_by": TEXT,
             "explanation": TEXT,
             "to_be_read": FLAG,
-        }
+            "working": _list(_working_line()),
+        },
+        optional=("working",),
     )
+
+
+def _working_line() -> dict[str, Any]:
+    words = dict.fromkeys(("symbol", "words", "origin", "formula", "put_in"), TEXT)
+    return _object({**words, "value": NUMBER, "unit": UNIT})
 
 
 def result_schema() -> dict[str, Any]:

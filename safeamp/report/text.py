@@ -2,18 +2,25 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 
-from safeamp.answers import Report
+from safeamp.answers import Report, Working
 from safeamp.report.finding_text import finding_lines
 from safeamp.report.layout import Ink, block, paragraph, points
 from safeamp.report.page import Note, Page, Section, StepLine, blocking, page_of
+from safeamp.report.working import HOW, NO_WORKINGS, wrapped
 
 #: Findings named in the head; the others stand below.
 MANY = 6
 
 
-def render(report: Report, *, width: int = 80, colour: bool = False) -> str:
+def render(
+    report: Report,
+    *,
+    width: int = 80,
+    colour: bool = False,
+    workings: Mapping[str, Working] = NO_WORKINGS,
+) -> str:
     """Return the report as text.
 
     Parameters
@@ -22,6 +29,8 @@ def render(report: Report, *, width: int = 80, colour: bool = False) -> str:
         Columns; no line is longer. At least 80.
     colour : bool
         Whether verdicts are coloured; nothing is said by colour alone.
+    workings : mapping of str to Working
+        Id of a finding -> its calculation, for those that are explained.
 
     Raises
     ------
@@ -35,6 +44,7 @@ def render(report: Report, *, width: int = 80, colour: bool = False) -> str:
     lines += block("Steps, in their order", [_step_line(step, ink) for step in page.steps])
     for section in page.sections:
         lines += _findings(section, width, ink)
+    lines += _workings(page, workings, width)
     notes = [*page.notes, Note("Safety", page.safety), *([page.way_on] if page.way_on else [])]
     lines += [line for note in notes for line in block(note.head, points(note.texts, width))]
     lines += ["", *_last(report, page, width)]
@@ -70,6 +80,17 @@ def _step_line(step: StepLine, ink: Ink) -> str:
 def _findings(section: Section, width: int, ink: Ink) -> list[str]:
     lines = [line for entry in section.entries for line in finding_lines(entry.finding, width, ink)]
     return block(ink.strong(section.head), lines)
+
+
+def _workings(page: Page, workings: Mapping[str, Working], width: int) -> Iterator[str]:
+    """Yield each calculation that was asked for, and the limit that its value is held against."""
+    for entry in page.entries:
+        working = workings.get(entry.finding.id)
+        if working is not None:
+            held = [entry.limit, entry.source] if entry.limit else [entry.source or "no limit"]
+            lines = [*paragraph(HOW, width, "  "), "", *wrapped(working, width, "  ")]
+            lines += ["", *paragraph(f"held against: {'; '.join(held)}", width, "  ", "    ")]
+            yield from block(f"How {entry.finding.id} comes about", lines)
 
 
 def _as_many(ids: list[str], room: int) -> str:

@@ -4,15 +4,17 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
+from typing import Any, Final
 
 from safeamp.answers import Line, Working
 from safeamp.quantities import show
 from safeamp.report.layout import clean, paragraph
 
 #: Significant digits of every number, so that the next line can be redone from the printed ones.
-DIGITS = 6
-HOW = (
+DIGITS: Final = 6
+NO_WORKINGS: Final[Mapping[str, Working]] = {}
+HOW: Final = (
     "Numbers are in V, A, W, ohm, F, Hz, s, K/W, m, kg and N/A; temperatures in degC, angles in deg "
     "(sin and tan of degrees); ^ is a power, ln the natural logarithm, pi 3.14159."
 )
@@ -67,9 +69,23 @@ def line_texts(line: Line) -> Iterator[str]:
         yield f"{line.symbol} = {result(line)}: {line.words}{origin}"
         return
     yield f"{line.symbol} = {line.formula}: {line.words}"
-    for text in dict.fromkeys((put_in(line), result(line))):
-        if text != line.formula:
-            yield f"  = {text}"
+    if _SYMBOL.fullmatch(line.formula) is None:
+        yield f"  = {put_in(line)}"
+    yield f"  = {result(line)}"
+
+
+def line_mapping(line: Line) -> dict[str, Any]:
+    """Return one line as a dict for JSON: the same numbers, the value in full."""
+    known = line.value is not None and math.isfinite(line.value)
+    return {
+        "symbol": line.symbol,
+        "words": line.words,
+        "origin": line.origin,
+        "formula": line.formula,
+        "put_in": put_in(line) if line.formula else "",
+        "value": line.value if known else None,
+        "unit": line.kind.unit,
+    }
 
 
 def working_texts(working: Working) -> list[str]:

@@ -112,3 +112,43 @@ def test_templates_are_part_of_the_package():
         "style.css",
         "shapes.svg",
     }
+
+
+def test_explain_shows_the_calculation_and_changes_nothing_else(printed):
+    done = run("check", SPLIT, "--explain", "soa.loudspeaker", "--explain", "heat.heatsink")
+    assert done.exit_code == 3
+    assert re.findall(r"^How (\S+) comes about$", done.stdout, re.MULTILINE) == [
+        "heat.heatsink",
+        "soa.loudspeaker",
+    ]
+    start, end = done.stdout.index("\nHow "), done.stdout.index("\nDoes not apply")
+    assert done.stdout[:start] + done.stdout[end:] == printed["text"].stdout
+    assert max(map(len, done.stdout.splitlines())) <= 80
+
+
+def test_explain_adds_to_json_and_markdown(printed):
+    done = run("check", SPLIT, "--format", "json", "--explain", "touch.voltage")
+    explained = [one["id"] for one in json.loads(done.stdout)["findings"] if "working" in one]
+    assert explained == ["touch.voltage"]
+    assert "line by line" in run("check", SPLIT, "--format", "markdown", "--explain", "touch.voltage").stdout
+    assert printed["html"].stdout.count("line by line") == printed["html"].stdout.count("<article")
+
+
+@pytest.mark.parametrize(
+    ("words", "said"),
+    [
+        (("--explain", "soa.loudspaeker"), "soa.loudspaeker is not a finding; did you mean soa.loudspeaker?"),
+        (("--explain", "capacitor.wear"), "does not apply"),
+        (("--explain", "touch.voltage", "--format", "csv"), "a row of csv has no room"),
+    ],
+)
+def test_what_cannot_be_explained_is_wrong_input(words, said):
+    done = run("check", SPLIT, *words)
+    assert (done.exit_code, done.stdout) == (WRONG, "")
+    assert said in done.stderr
+
+
+def test_a_plain_check_imports_no_calculations():
+    found = imported_by("check", SPLIT)
+    assert not {name for name in found if name.startswith("safeamp.checks.working")}
+    assert "safeamp.studies.explain" not in found
