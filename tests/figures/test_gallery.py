@@ -65,6 +65,11 @@ def test_a_file_says_nothing_of_the_day_and_its_words_are_words(name):
         ("coil", "split_rail", {}, "not given: loudspeaker.coil_to_magnet, loudspeaker.coil_time_constant"),
         ("impedance", "split_rail", {}, "not given: loudspeaker.resonance, loudspeaker.q_mechanical"),
         ("cone-travel", "split_rail", {**DRIVER, "loudspeaker.force_factor": GONE}, "loudspeaker.force_factor"),
+        (
+            "coil", "split_rail",
+            {**DRIVER, "protection.trip_delay": GONE, "protection.loudspeaker_fuse": GONE},
+            "not given: protection.trip_delay, protection.loudspeaker_fuse",
+        ),
         ("safe-area", "split_rail", {"stage.idle": GONE}, "not given: stage.idle"),
         ("heat", "split_rail", {"stage.idle": GONE}, "not given: stage.idle"),
         ("temperatures", "split_rail", {"stage.idle": GONE}, "not given: stage.idle"),

@@ -135,6 +135,9 @@ def test_of_a_measured_curve_the_path_is_that_of_its_worst_point():
     worst = line(shown, "Worst point")
     at = np.interp(worst.get_xdata()[0], voltage[::-1], current[::-1])
     assert at == pytest.approx(worst.get_ydata()[0], rel=1e-3)
+    assert current[-1] == pytest.approx(
+        0.5 * current.max(), rel=0.03
+    )  # sin(90 + 60 deg) at the peak of the voltage
 
 
 def test_a_limiter_that_was_measured_cuts_the_path():
