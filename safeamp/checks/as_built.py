@@ -9,7 +9,16 @@ from safeamp.checks.trace import needed
 from safeamp.checks.words import nominal
 from safeamp.findings import AsBuilt
 from safeamp.limits import Limit
-from safeamp.quantities import Number
+from safeamp.quantities import Number, Origin
+
+#: What nobody read off the amplifier or measured is no rating of its maker.
+NOT_GIVEN = (Origin.GUESS, Origin.EXAMPLE)
+#: Condition -> keys that it rests on.
+RESTS_ON = {
+    "stage.rated_load": ("stage.rated_load",),
+    "loudspeaker.dc_resistance": ("loudspeaker.dc_resistance", "loudspeaker.nominal_impedance"),
+    "mains.rated": ("mains.rated", "mains.actual"),
+}
 
 
 def as_built(amplifier: Amplifier, limit: Limit, label: Limit) -> AsBuilt:
@@ -25,8 +34,12 @@ def as_built(amplifier: Amplifier, limit: Limit, label: Limit) -> AsBuilt:
         "mains.rated": _mains_within(mains.actual, mains.rated, most),
         "loudspeaker.impedance_curve": amplifier.loudspeaker.impedance_curve is None,
     }
-    failed = tuple(key for key, holds in conditions.items() if not holds)
+    failed = tuple(key for key, holds in conditions.items() if not (holds and _is_given(amplifier, key)))
     return AsBuilt(not failed, limit.extra["as_built_ceiling"], failed)
+
+
+def _is_given(amplifier: Amplifier, condition: str) -> bool:
+    return all(amplifier.origin(path) not in NOT_GIVEN for path in RESTS_ON.get(condition, ()))
 
 
 def _all_conduct(amplifier: Amplifier) -> bool:

@@ -216,8 +216,8 @@ def _as_built(as_built: AsBuilt | None, nominal: float) -> tuple[Verdict, tuple[
 def _from_corners(
     measure: Measure, value: Cases, bounds: Bounds, beyond: Marks, guessed: Marks, words: tuple[str, ...]
 ) -> tuple[Verdict, tuple[str, ...]]:
-    built = measure.as_built is not None and measure.as_built.holds
-    if np.any(beyond & ~guessed) or (np.any(beyond) and built):
+    excused = _without_excuse(measure.as_built, value) < Verdict.STOP
+    if np.any(beyond & ~guessed) or (np.any(beyond) and np.all(excused[beyond])):
         return Verdict.CAUTION, (
             "beyond the stop level at a corner of the tolerances or at the highest mains",
         )
