@@ -40,6 +40,7 @@ from safeamp.quantities import (
 from safeamp.reading.defaults import POWER_WORDS
 from safeamp.reading.draft import Draft
 from safeamp.reading.special import fuse
+from safeamp.reading.values import whole_number
 
 #: Options that are keys of the sheet: read by the same rule.
 SHEET_KEYS: Mapping[str, tuple[type[Any], str]] = {
@@ -133,7 +134,12 @@ def _entry(name: str, text: str) -> Entry:
         return Entry(name, 0.0, 0.0, 0.0, Origin.STATED, kind, "none")
     sign = None if key.sign is Sign.POSITIVE else key.sign
     value = _bare(text) if name == "tolerance" else text
-    reading = read(value, kind, sign=sign, believable=key.believable)
+    try:
+        reading = read(value, kind, sign=sign, believable=key.believable)
+    except QuantityError as trouble:
+        if not key.whole:
+            raise
+        raise whole_number(trouble) from trouble
     if key.whole and (reading.toleranced or not reading.nominal.is_integer()):
         raise QuantityError(f'"{text}" is not a whole number', "write a bare whole number, such as 1")
     return _of(name, reading)

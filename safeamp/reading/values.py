@@ -155,9 +155,13 @@ def _reading(draft: Draft, key: Key, value: Any) -> Reading:
     except QuantityError as trouble:
         if not key.whole:
             raise
-        raise QuantityError(
-            trouble.found, trouble.write.replace(RATIO.article, "a whole number")
-        ) from trouble
+        raise whole_number(trouble) from trouble
+
+
+def whole_number(trouble: QuantityError) -> QuantityError:
+    """Return what is wrong with a count, which is read as a ratio, in words of a count."""
+    write = trouble.write.replace(f'{RATIO.article}, such as "{RATIO.example}"', "a whole number, such as 1")
+    return QuantityError(trouble.found, write.replace(RATIO.article, "a whole number"))
 
 
 def _whole(value: object) -> bool:

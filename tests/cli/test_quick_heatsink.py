@@ -144,7 +144,7 @@ def test_fins_may_be_written_in_several_ways(written):
             "--fins and --sink-to-air contradict",
         ),
         ({**FINS, "air": "85 degC", "sink_temperature": "80 degC"}, "read --air again"),
-        ({**FINS, "count": "120", "air": "30 degC", "power": "9 W"}, "width less that of all fins"),
+        ({**FINS, "count": "120", "air": "30 degC", "power": "9 W"}, "--fins: 120 fins of 1 mm fill 120 mm"),
         ({**FINS, "count": "1.5", "air": "30 degC", "power": "9 W"}, "is not a whole number"),
         ({**FINS, "fins": "120x180 mm", "air": "30 degC", "power": "9 W"}, 'such as "150x75x35 mm"'),
         ({**FINS, "fins": "120x180x24", "air": "30 degC", "power": "9 W"}, 'such as "150x75x35 mm"'),

@@ -96,7 +96,15 @@ def test_a_label_that_the_coil_contradicts_is_not_believed():
             {"split_rail": "35 V", "load": "8 ohm", "coil_limit": "200 degC"},
             "--coil-limit says nothing alone",
         ),
-        ({"split_rail": "3 V", "load": "8 ohm", "swing_loss": "3 V"}, "no amplifier has such values"),
+        (
+            {"single_rail": "6 V", "load": "8 ohm", "swing_loss": "3 V"},
+            "--swing-loss: 3 V leaves nothing of 3 V from rail to midpoint; read both again",
+        ),
+        (
+            {"split_rail": "35 V", "load": "8 ohm", "pairs": "0"},
+            '"0" is not above zero; write a whole number',
+        ),
+        ({"split_rail": "35 V", "load": "8 ohm", "pairs": "true"}, "write a whole number, such as 1"),
     ],
 )
 def test_loudspeaker_says_what_to_add(options, says):

@@ -164,7 +164,7 @@ def test_where_the_data_end_nothing_is_go(tmp_path):
                 "device": "to3-npn-140v-150w",
                 "swing_loss": "10 V",
             },
-            "no amplifier has such values",
+            "--swing-loss: 10 V leaves nothing of 10 V from rail to midpoint",
         ),
     ],
 )

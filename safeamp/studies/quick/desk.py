@@ -16,7 +16,7 @@ from safeamp.checks.words import nominal
 from safeamp.complaints import OptionsError
 from safeamp.findings import Bound, Finding, Input, Measure, Remark, Verdict
 from safeamp.limits import Limits
-from safeamp.quantities import Kind, Number, Origin, show
+from safeamp.quantities import VOLTAGE, Kind, Number, Origin, show
 from safeamp.studies import corners
 from safeamp.studies.corners import Design
 
@@ -208,6 +208,21 @@ def _finite(value: float) -> float | None:
 def half_supply(cases: Cases, rail: str) -> Number:
     """Return half the supply: a rail of a split supply, half the rail of a single one, V."""
     return cases[rail] / 2.0 if rail == "single_rail" else cases[rail]
+
+
+def loss_of(cases: Cases, rail: str) -> Number:
+    """Return the swing loss, V.
+
+    Raises
+    ------
+    OptionsError
+        If it leaves nothing of the way from rail to midpoint.
+    """
+    half, loss = half_supply(cases, rail), cases["swing_loss"]
+    if np.any(np.asarray(loss) >= np.asarray(half)):
+        text = f"{shown(loss, VOLTAGE)} leaves nothing of {shown(half, VOLTAGE)} from rail to midpoint"
+        raise OptionsError(f"{dashed('swing_loss')}: {text}; read both again")
+    return loss
 
 
 @dataclass

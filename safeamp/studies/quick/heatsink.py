@@ -187,6 +187,10 @@ def _r(value: Number) -> str:
 
 
 def _geometry(cases: Cases) -> fins.Geometry:
+    width, thickness, count = cases["width"], cases["thickness"], cases["count"]
+    if np.any(np.asarray(count * thickness) >= np.asarray(width)):
+        filled = f"{shown(count, RATIO)} fins of {shown(thickness, LENGTH)} fill {shown(width, LENGTH)}"
+        raise OptionsError(f"--fins: {filled}; give the width across the fins first, and one fin alone")
     return fins.Geometry(**{name: cases[name] for name in thermal.FINS})
 
 

@@ -12,7 +12,7 @@ from safeamp.findings import Measure
 from safeamp.physics import loudspeaker, stage
 from safeamp.physics.fuse import slowest_time
 from safeamp.quantities import CURRENT, POWER, RATIO, RESISTANCE, TEMPERATURE, TIME, VOLTAGE, Number
-from safeamp.studies.quick.desk import Cases, Desk, Page, half_supply, shown
+from safeamp.studies.quick.desk import Cases, Desk, Page, half_supply, loss_of, shown
 
 #: The hotter the coil, the less current is left to open the fuse; no usual coil is hotter than this (memory), degC.
 HOT_COIL = 250.0
@@ -85,7 +85,7 @@ def _doubt(cases: Cases, load: Number) -> tuple[str, ...]:
 def _peak(cases: Cases, rail: str, load: Number) -> Number:
     return stage.clipped_peak(
         side_voltage=half_supply(cases, rail),
-        swing_loss=cases["swing_loss"],
+        swing_loss=loss_of(cases, rail),
         load_magnitude=load,
         emitter_resistor=cases["emitter_resistor"],
         conducting=cases["pairs"],

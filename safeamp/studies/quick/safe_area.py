@@ -18,7 +18,7 @@ from safeamp.physics import safe_area as physics
 from safeamp.physics import stage
 from safeamp.physics.safe_area import ZONES, Use
 from safeamp.quantities import ANGLE, CURRENT, POWER, RATIO, RESISTANCE, VOLTAGE, Number, Origin
-from safeamp.studies.quick.desk import Cases, Desk, Page, half_supply, shown
+from safeamp.studies.quick.desk import Cases, Desk, Page, half_supply, loss_of, shown
 
 CAUTIONS = (
     "Put in the rail without load, and the case as hot as one eighth of power makes it (a resistor: one third).",
@@ -114,7 +114,7 @@ def _loads(cases: Cases, angle: float, limits: Limits) -> tuple[_Load, ...]:
 def _peak(cases: Cases, rail: str, magnitude: Number) -> Number:
     return stage.clipped_peak(
         side_voltage=half_supply(cases, rail),
-        swing_loss=cases["swing_loss"],
+        swing_loss=loss_of(cases, rail),
         load_magnitude=magnitude,
         emitter_resistor=cases["emitter_resistor"],
         conducting=cases["pairs"],
