@@ -10,6 +10,7 @@ import typer
 from safeamp.cli.capacitor import capacitor
 from safeamp.cli.check import check, demo
 from safeamp.cli.heatsink import heatsink
+from safeamp.cli.jobsheet import jobsheet
 from safeamp.cli.loudspeaker import loudspeaker
 from safeamp.cli.offset import offset
 from safeamp.cli.options import DeviceFolderOption, LimitsOption
@@ -110,6 +111,7 @@ def devices(device_folder: DeviceFolderOption = None) -> None:
 
 
 app.command("schema")(schema)
+app.command("jobsheet")(jobsheet)
 app.command("tolerance")(tolerance)
 app.command("substitute")(substitute)
 app.command("capacitor")(capacitor)

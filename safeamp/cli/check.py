@@ -2,10 +2,9 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
 from enum import StrEnum
 from pathlib import Path
-from typing import TYPE_CHECKING, Annotated
+from typing import Annotated
 
 import typer
 
@@ -19,9 +18,6 @@ from safeamp.cli.figures import (
 from safeamp.cli.judged import Judged, files_read, judged, step_of
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, emit, fail
-
-if TYPE_CHECKING:
-    from safeamp.answers import Working
 
 
 class Format(StrEnum):
@@ -66,7 +62,7 @@ def check(
     check_folder(figures)
     found = judged(sheet, limits=limits, device_folder=device_folder, on_paper=on_paper, up_to=up_to)
     if figures is not None:
-        write_figures(found.gallery(), figures, figures_format, never=never)
+        write_figures(found.gallery, figures, figures_format, never=never)
     emit(_text(found, format_, explain, on_terminal=output is None), output, never=never)
     raise typer.Exit(found.report.exit_status)
 
@@ -81,14 +77,16 @@ def demo(
     check_folder(figures)
     found = judged(Path(__file__).with_name("demo.toml"), demo=True)
     if figures is not None:
-        write_figures(found.gallery(), figures, figures_format)
+        write_figures(found.gallery, figures, figures_format)
     emit(_text(found, format_, None, on_terminal=output is None), output)
 
 
 def _text(found: Judged, format_: Format, explain: list[str] | None, *, on_terminal: bool) -> str:
     """Return the report as text; a page holds every calculation anyway, folded."""
     if format_ is Format.HTML:
-        return _html(found, found.workings())
+        from safeamp.report.html import as_html
+
+        return as_html(found.report, found.workings(), found.drawings(), found.left_out())
     workings = found.workings(explain) if explain else {}
     if format_ is Format.JSON:
         from safeamp.report.json_ import as_json
@@ -106,16 +104,3 @@ def _text(found: Judged, format_: Format, explain: list[str] | None, *, on_termi
 
     width = columns() if on_terminal else 80
     return render(found.report, width=width, colour=on_terminal and colourful(), workings=workings)
-
-
-def _html(found: Judged, workings: Mapping[str, Working]) -> str:
-    from safeamp.figures import svg_text
-    from safeamp.report.html import Drawing, as_html
-
-    gallery = found.gallery()
-    drawings = [
-        Drawing(one.title, one.says, svg_text(one.figure, f"figure-{one.name}", one.title, one.says))
-        for one in gallery.pictures
-    ]
-    left_out = [f"{one.name}: {one.because}" for one in gallery.left_out]
-    return as_html(found.report, workings, drawings, left_out)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 from dataclasses import dataclass
+from functools import cached_property
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -15,6 +16,7 @@ if TYPE_CHECKING:
     from safeamp.figures import Gallery
     from safeamp.findings import Step
     from safeamp.limits import Limits
+    from safeamp.report.html import Drawing
 
 
 @dataclass(frozen=True, eq=False)
@@ -34,11 +36,26 @@ class Judged:
         except KeyError as trouble:
             fail(f"--explain: {trouble.args[0]}")
 
+    @cached_property
     def gallery(self) -> Gallery:
-        """Return its figures."""
+        """Its figures, drawn once."""
         from safeamp.figures import pictures_of
 
         return pictures_of(self.sheet, self.report, self.limits)
+
+    def drawings(self) -> list[Drawing]:
+        """Return its figures as parts of a page."""
+        from safeamp.figures import svg_text
+        from safeamp.report.html import Drawing
+
+        return [
+            Drawing(one.title, one.says, svg_text(one.figure, f"figure-{one.name}", one.title, one.says))
+            for one in self.gallery.pictures
+        ]
+
+    def left_out(self) -> list[str]:
+        """Return which figures are not drawn, and why."""
+        return [f"{one.name}: {one.because}" for one in self.gallery.left_out]
 
 
 def judged(

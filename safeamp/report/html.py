@@ -44,13 +44,26 @@ def as_html(
     left_out : sequence of str
         Which figures are not drawn, and why.
     """
+    return filled("report.html.j2", report, workings, drawings, left_out)
+
+
+def filled(
+    template: str,
+    report: Report,
+    workings: Mapping[str, Working],
+    drawings: Sequence[Drawing],
+    left_out: Sequence[str],
+    **more: Any,
+) -> str:
+    """Return a template filled in with a report, its calculations and figures, and more."""
     return rendered(
-        "report.html.j2",
+        template,
         page=page_of(report),
         workings={id: escape("\n".join(working_texts(one))) for id, one in workings.items()},
         how=HOW,
         figures=[{"title": one.title, "says": one.says, "svg": Markup(one.svg)} for one in drawings],
         left_out=left_out,
+        **more,
     )
 
 
