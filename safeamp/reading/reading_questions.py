@@ -34,6 +34,16 @@ def _offset(draft: Draft) -> None:
         draft.complain(path, f"{text}: {ask} {write}")
 
 
+def _bridge(draft: Draft) -> None:
+    """Complain of a second output that the stage does not have: a bridge halves the load of each side."""
+    path = "readings.offset_other_side"
+    if draft.number(path) is not None and draft.values.get("stage.bridged") is False:
+        text = "a second output was read, and stage.bridged is false"
+        draft.complain(
+            path, f"{text}; write bridged = true, or leave the key out: the other channel has its own sheet"
+        )
+
+
 def _midpoint(draft: Draft) -> None:
     midpoint, rails = draft.number("readings.midpoint"), draft.numbers("supply.no_load")
     if midpoint is None or draft.word("readings.taken_on") == "limiter":
@@ -108,6 +118,7 @@ def _drop(draft: Draft, path: str, volts: float, resistor: float | None) -> None
 #: Asked in this order; each looks at what is there and is silent about what is missing.
 READING_QUESTIONS: tuple[Callable[[Draft], None], ...] = (
     _offset,
+    _bridge,
     _midpoint,
     _leakage,
     _heatsink,

@@ -50,3 +50,9 @@ def test_a_peak_above_a_rail_of_33_volts_is_refused(peak, refused):
         return
     with pytest.raises(ReadingError, match="leaves nothing of 33 V from rail to midpoint"):
         report(tables)
+
+
+def test_the_second_output_of_a_stage_that_has_one_is_asked_about():
+    """Read as no bridge, each side would be judged on twice the load that it has."""
+    with pytest.raises(ReadingError, match="a second output was read"):
+        report(changed(SPLIT, {"readings.offset_other_side": "20 mV, measured"}))
