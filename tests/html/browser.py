@@ -14,7 +14,7 @@ from pathlib import Path
 import pytest
 import websocket
 
-NAMES = ("chromium", "chromium-browser", "google-chrome")
+NAMES = ("chromium", "chromium-browser")
 FLAGS = (
     "--headless",
     "--no-sandbox",
