@@ -57,11 +57,12 @@ def _shown(amplifier: Amplifier, current: Number) -> Number:
 
 
 def _is_class_ab_bipolar(amplifier: Amplifier, idle: Number, limits: Limits) -> bool:
+    """Return whether junctions carry the idle current and let go within a cycle; an unknown idle may be either."""
     kinds = {operating.device_of(amplifier, side).kind for side in ("upper", "lower")}
     peak = operating.clipping_peak(amplifier) / operating.nominal_load(amplifier)[0]
     share = limits["bias.idle"].extra["class_ab_share_of_peak"]
-    low = nominal(idle) < share * nominal(peak) / nominal(operating.conducting(amplifier))
-    return bool(low) and kinds <= {"bipolar", "darlington"}
+    high = nominal(idle) >= share * nominal(peak) / nominal(operating.conducting(amplifier))
+    return not high and kinds <= {"bipolar", "darlington"}
 
 
 @finding("bias.idle", Step.BIAS, VOLTAGE, at_bench=True)
@@ -77,7 +78,7 @@ def check_idle(amplifier: Amplifier, limits: Limits) -> Measure:
         stop=stop,
         without_stop=stop is None,
         remarks=remarks,
-        also=_idle_also(amplifier, idle),
+        also=_idle_also(amplifier, idle, limits),
         kind=VOLTAGE if _has_resistor(amplifier) else CURRENT,
         next=NEXT_IDLE,
         method="reading across one emitter resistor; the larger mean of the two sides",
@@ -113,19 +114,19 @@ def _idle_text(amplifier: Amplifier, idle: Number, limits: Limits) -> str:
         return f"{text(idle, CURRENT)} of each device"
     drop = _shown(amplifier, idle)
     said = f"{text(drop, VOLTAGE)} across one emitter resistor is {text(idle, CURRENT)} of each device"
-    if nominal(drop) < limits["bias.idle"].extra["dead_zone_below"]:
+    if _is_class_ab_bipolar(amplifier, idle, limits) and nominal(drop) < limits["bias.idle"].extra["dead_zone_below"]:
         return f"{said}; so little leaves a dead zone around zero: crossover distortion, no danger"
     return said
 
 
-def _idle_also(amplifier: Amplifier, idle: Number) -> tuple[Also, ...]:
+def _idle_also(amplifier: Amplifier, idle: Number, limits: Limits) -> tuple[Also, ...]:
     half = operating.half(amplifier, operating.no_load_rail(amplifier))
     resistor = needed(amplifier, "stage.emitter_resistor")[0]
     found = [
         Also("current of each device", nominal(idle), CURRENT),
         Also("heat of each device without signal", nominal(idle * (half - idle * resistor)), POWER),
     ]
-    if _has_resistor(amplifier):
+    if _has_resistor(amplifier) and _is_class_ab_bipolar(amplifier, idle, limits):
         best = bias.oliver_idle(emitter_resistor=resistor)
         found.append(Also("Oliver's optimum for this resistor", nominal(best), CURRENT))
     return tuple(found)
