@@ -11,8 +11,8 @@ from safeamp.amplifier import Amplifier, with_values
 from safeamp.checks import curve, cycle, operating
 from safeamp.checks.words import nominal
 from safeamp.findings import Also, Remark, Verdict
-from safeamp.physics.safe_area import Rating, Use, limiter_use
-from safeamp.quantities import RATIO, Kind, Number
+from safeamp.physics.safe_area import Rating, Use, derating, limiter_use, usable_power
+from safeamp.quantities import POWER, RATIO, Kind, Number
 
 ONE_OPEN = "with one device of each side open"
 BY_DC = "by the DC curve alone"
@@ -55,6 +55,18 @@ def uncut_also(
     if cut.limiter:
         found.append(Also(UNLIMITED, nominal(value(with_values(whole, {LIMITER: None}))), RATIO))
     return tuple(found)
+
+
+def usable_also(rating: Rating, case: Number) -> tuple[Also, ...]:
+    """Return the power that a device is allowed at a case temperature (degC)."""
+    left = derating(case_temperature=case, power_at=rating.power_at, junction_limit=rating.junction_limit)
+    power = usable_power(
+        power=rating.power,
+        power_at=rating.power_at,
+        junction_limit=rating.junction_limit,
+        junction_to_case=rating.junction_to_case,
+    )
+    return (Also("power allowed at this case temperature", nominal(left * power), POWER),)
 
 
 def limiter_remarks(

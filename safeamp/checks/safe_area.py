@@ -11,7 +11,7 @@ import numpy as np
 from safeamp.amplifier import Amplifier
 from safeamp.checks import curve, cycle, operating, thermal
 from safeamp.checks.as_built import as_built
-from safeamp.checks.beside import limiter_remarks, load_remarks, one_open_also, uncut_also
+from safeamp.checks.beside import limiter_remarks, load_remarks, one_open_also, uncut_also, usable_also
 from safeamp.checks.driver import any_signal_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import needed
@@ -23,7 +23,6 @@ from safeamp.physics.safe_area import ZONES, Rating, Use
 from safeamp.quantities import (
     CURRENT,
     FREQUENCY,
-    POWER,
     RATIO,
     RESISTANCE,
     TEMPERATURE,
@@ -258,11 +257,16 @@ def worst_into_resistor(amplifier: Amplifier) -> Worst:
     return _worst(amplifier, resistors(amplifier), thermal.ONE_THIRD, 0.0)
 
 
+def into_resistor(amplifier: Amplifier) -> Number:
+    """Return the worst use into a resistor of the nominal impedance as a number."""
+    return worst_into_resistor(amplifier).use
+
+
 @finding("soa.resistive_load", Step.LOAD_TEST, RATIO)
 def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
     """Use of the safe area into a resistor of the nominal impedance."""
     worst = worst_into_resistor(amplifier)
-    uncut = uncut_also(amplifier, worst.cut, lambda one: worst_into_resistor(one).use)
+    uncut = uncut_also(amplifier, worst.cut, into_resistor)
     return Measure(
         worst.use,
         _says(worst, worst.use),
@@ -270,7 +274,7 @@ def check_resistive_load(amplifier: Amplifier, limits: Limits) -> Measure:
         unknown=worst.unknown,
         needs=_needs(amplifier),
         at=_point(worst),
-        also=(*uncut, *_usable(amplifier, worst)),
+        also=(*uncut, *one_open_also(amplifier, into_resistor, RATIO), *_usable(amplifier, worst)),
         next="passing with a resistor says nothing about a loudspeaker",
         method=f"{METHOD}{cycle.method(worst.cut)}",
     )
@@ -281,17 +285,7 @@ def _limiter_remarks(amplifier: Amplifier, worst: Worst, uncut: tuple[Also, ...]
 
 
 def _usable(amplifier: Amplifier, worst: Worst) -> tuple[Also, ...]:
-    rating = rating_of(amplifier, worst.side)
-    left = safe_area.derating(
-        case_temperature=worst.case, power_at=rating.power_at, junction_limit=rating.junction_limit
-    )
-    power = safe_area.usable_power(
-        power=rating.power,
-        power_at=rating.power_at,
-        junction_limit=rating.junction_limit,
-        junction_to_case=rating.junction_to_case,
-    )
-    return (Also("power allowed at this case temperature", nominal(left * power), POWER),)
+    return usable_also(rating_of(amplifier, worst.side), worst.case)
 
 
 def worst_into_loudspeaker(amplifier: Amplifier) -> Worst:

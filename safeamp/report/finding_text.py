@@ -34,14 +34,21 @@ def finding_lines(finding: Finding, width: int, ink: Ink) -> list[str]:
 def _shown(finding: Finding) -> Iterator[str]:
     if finding.says and finding.says != number_text(finding):
         yield finding.says
-    if finding.verdict is not Verdict.GO:
+    if finding.verdict is Verdict.GO:
+        yield from (f"{label}: {text}" for label, text in _reasons(finding))
+    else:
         yield from (f"{label}: {text}" for label, text in details_of(finding))
+
+
+def _reasons(finding: Finding) -> Iterator[tuple[str, str]]:
+    """Return the reasons of a word; what is said beside a go takes nothing from it and is still to be heeded."""
+    label = "mind" if finding.verdict is Verdict.GO else "because"
+    return ((label, reason) for reason in finding.because)
 
 
 def details_of(finding: Finding) -> Iterator[tuple[str, str]]:
     """Yield what is to be said of a finding beside its number, each with its label."""
-    for reason in finding.because:
-        yield "because", reason
+    yield from _reasons(finding)
     for label, text in (
         ("worst case at", place_text(finding)),
         ("there", at_text(finding)),

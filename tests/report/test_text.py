@@ -213,10 +213,16 @@ def test_a_finding_shows_corner_place_reason_and_next_reading() -> None:
 
 
 def test_a_good_finding_takes_two_lines() -> None:
-    text = section(lines_of(replace(DEVICES, because=("x",), next="y", needs=("z",))), "Cold checks")
+    text = section(lines_of(replace(DEVICES, next="y", needs=("z",))), "Cold checks")
     assert text == (
         "go cold.devices: 180 kohm (go from 1 kohm, stop below 100 ohm) Lowest reading across outputs and drivers."
     )
+
+
+def test_what_is_to_be_minded_beside_a_go_is_never_left_out() -> None:
+    text = section(lines_of(replace(DEVICES, because=("no terminal may touch chassis",))), "Cold checks")
+    assert text.endswith("drivers. mind: no terminal may touch chassis")
+    assert "because:" not in text
 
 
 @pytest.mark.parametrize(

@@ -100,6 +100,15 @@ def test_one_open_device_of_two_is_the_amplifier_with_one_less():
     assert "with one device of each side open" not in shown(alone)
 
 
+@pytest.mark.parametrize("identity", ["soa.resistive_load", "soa.loudspeaker"])
+def test_one_open_device_of_two_leaves_more_of_the_safe_area_to_its_neighbour(identity):
+    one = finding(report("healthy", TWO), identity)
+    alone = finding(report("healthy", {**TWO, "stage.pairs_conducting": 1}), identity)
+    assert beside(one, "with one device of each side open") == pytest.approx(alone.nominal)
+    assert alone.nominal > one.nominal
+    assert "with one device of each side open" not in shown(alone)
+
+
 def test_a_bridge_says_what_each_side_gives():
     one = finding(report("healthy", {"stage.bridged": True, "heatsink.shared_by": 2}), "heat.heatsink")
     assert beside(one, POWER) == pytest.approx(2.0 * beside(one, "of that each side of the bridge"))
