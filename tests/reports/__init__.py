@@ -1,0 +1,1 @@
+"""Whole reports as they were once read and found right, word by word."""
