@@ -13,7 +13,7 @@ from safeamp.checks.levels import level_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
 from safeamp.checks.words import heat_remarks, idle_remarks, nominal, sharing_remarks, text
-from safeamp.findings import Also, Measure, NotApplicable, Step
+from safeamp.findings import Also, Measure, NotApplicable, Remark, Step, Verdict
 from safeamp.limits import Limits
 from safeamp.quantities import (
     FREQUENCY,
@@ -176,7 +176,19 @@ def check_reading(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicab
     return Measure(
         rise / np.where(np.asarray(expected) > 0.0, expected, np.nan),
         f"read {text(rise, TEMPERATURE_DIFFERENCE)} above air, computed {text(expected, TEMPERATURE_DIFFERENCE)}",
-        remarks=(*heat_remarks(amplifier), *idle_remarks(amplifier)),
+        remarks=(*heat_remarks(amplifier), *idle_remarks(amplifier), *_too_cool(rise, expected, limits)),
         next="read heatsink and air beside it once both have settled, and say at which level",
         method="read rise over computed rise at the same level",
     )
+
+
+def _too_cool(rise: Number, expected: Number, limits: Limits) -> tuple[Remark, ...]:
+    """Return what a heatsink that stays cool says: the heat of the devices does not reach it."""
+    extra = limits["heat.reading"].extra
+    worth = nominal(expected) >= extra["cool_from_computed"]
+    if not worth or not nominal(rise) < extra["cool_below"] * nominal(expected):
+        return ()
+    because = (
+        "the heatsink stays far cooler than computed: does the device touch it, is the stage at that level?"
+    )
+    return (Remark(Verdict.CAUTION, because),)

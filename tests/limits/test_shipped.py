@@ -68,6 +68,8 @@ EXTRA = {
     ("bias.imbalance", "small_reading_below"): 0.003,
     ("bias.runaway", "air_warmer_by"): 20,
     ("offset.output", "switch_off_above"): 1,
+    ("heat.reading", "cool_below"): 0.5,
+    ("heat.reading", "cool_from_computed"): 5,
     ("heat.junction", "span_from"): 25,
     ("heat.junction", "go_share_of_span"): 0.8,
     ("soa.loudspeaker", "as_built_ceiling"): 1.8,
