@@ -161,7 +161,7 @@ def _entry(finding: Finding) -> Entry:
         limit_text(finding),
         source_text(finding.bound),
         tuple(details_of(finding)),
-        tuple(_given(item) for item in finding.inputs),
+        tuple(dict.fromkeys(_given(item) for item in finding.inputs)),
     )
 
 

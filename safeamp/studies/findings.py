@@ -20,6 +20,9 @@ from safeamp.studies.corners import Design
 #: Keys without which no rail is known at the mains of today.
 MAINS = frozenset({"mains.actual", "mains.highest", "supply.at_mains"})
 
+#: In which unit a value was written: no key of the sheet, and said by the unit of the value itself.
+UNITS = ("stage.idle_unit", "stage.idle_specified_unit")
+
 
 @dataclass
 class Bench:
@@ -276,7 +279,7 @@ def _inputs(sheet: Sheet, trace: Trace) -> tuple[Input, ...]:
     found = []
     for path in _with_items(sheet, trace.inputs()):
         value = value_at(sheet.amplifier, path)
-        if value is None or isinstance(value, (tuple, frozenset)):
+        if value is None or isinstance(value, (tuple, frozenset)) or path in UNITS:
             continue
         if isinstance(value, (Curve, Fuse, Limiter)):
             value = value.text

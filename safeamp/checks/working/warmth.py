@@ -66,7 +66,7 @@ def mean_reading(paper: Paper) -> str:
             names = readings(paper, side)
             value = sum(group) / operating.carrying(group)
             carry = float(np.asarray(operating.carrying(group)).flat[0])
-            formula = f"({' + '.join(names)}) / {carry:g}"
+            formula = f"({' + '.join(names)}) / {carry:g}" if len(names) > 1 else names[0]
             words = f"mean reading of the {side} side, over the devices that carry current"
             means.append(paper.put(f"V_{side}_mean", words, formula, value, VOLTAGE))
     value = operating.read_idle(paper.amplifier)
