@@ -25,11 +25,11 @@ MULTIPLIER: Final = {
     "capacitance": {"u": "uF", "µ": "uF", "n": "nF", "p": "pF"},
 }
 """Kind -> letter of the code -> spelling of the unit it stands for."""
-_CODE: Final = re.compile(r"([0-9]{0,6})([RkKMunpµ])([0-9]{0,4})(?: ?([FGJKM]))?(?= ?±| ?[+-]|$)")
-LOOKS_LIKE_CODE: Final = re.compile(
+_CODE: Final = r"([0-9]{0,6})([RkKMunpµ])([0-9]{0,4})(?: ?([FGJKM]))?(?= ?±| ?[+-]|$)"
+LOOKS_LIKE_CODE: Final = (
     r"([0-9]{1,6}[RrkKMmunpµVv][0-9]{1,4}|R[0-9]{1,4}|[0-9]{1,6}[kKMunpµR])[FGJKM]?(?= |$)"
 )
-"""What a user may have meant as a code."""
+"""Pattern of what a user may have meant as a code."""
 
 
 def match_code(text: str, kind: Kind) -> tuple[Decimal, str, Decimal | None, int] | None:
@@ -42,7 +42,7 @@ def match_code(text: str, kind: Kind) -> tuple[Decimal, str, Decimal | None, int
     kind : Kind
         Codes are read for resistance and capacitance only.
     """
-    found = _CODE.match(text) if kind.iec60062 else None
+    found = re.match(_CODE, text) if kind.iec60062 else None
     if not found:
         return None
     whole, multiplier, part, letter = found.groups()

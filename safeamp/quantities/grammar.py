@@ -1,4 +1,7 @@
-"""The one grammar of a value: number, unit, tolerance, origin. No arithmetic, ASCII digits only."""
+"""The one grammar of a value: number, unit, tolerance, origin. No arithmetic, ASCII digits only.
+
+Patterns are compiled, and refusals worded, when a text first asks for them.
+"""
 
 import re
 from dataclasses import dataclass
@@ -6,8 +9,7 @@ from decimal import Decimal
 from typing import Final
 
 from safeamp.quantities.codes import match_code
-from safeamp.quantities.nouns import Kind, Origin, QuantityError
-from safeamp.quantities.refusals import refuse_shape, refuse_unit
+from safeamp.quantities.nouns import Kind, NotOfKindError, Origin, QuantityError
 from safeamp.quantities.text import clean, quote, split_origin
 
 _UNSIGNED: Final = r"(?:[0-9]+(?:\.[0-9]+)?|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?"
@@ -19,13 +21,9 @@ _TOLERANCE: Final = (
     rf" ?(?P<in>{_UNIT})"
 )
 # A third dot is refused: "0...5 V" would read as up to 0.5 V.
-_RANGE: Final = re.compile(
-    rf"(?P<low>{_NUMBER}) ?\.\.(?! ?\.) ?(?P<high>{_NUMBER}) ?(?P<unit>{_UNIT})", re.ASCII
-)
-_VALUE: Final = re.compile(
-    rf"(?P<number>{_NUMBER}) ?(?P<unit>{_UNIT}?) ?(?P<tolerance>{_TOLERANCE})?", re.ASCII
-)
-_AFTER_CODE: Final = re.compile(rf" ?(?P<tolerance>{_TOLERANCE})?", re.ASCII)
+_RANGE: Final = rf"(?P<low>{_NUMBER}) ?\.\.(?! ?\.) ?(?P<high>{_NUMBER}) ?(?P<unit>{_UNIT})"
+_VALUE: Final = rf"(?P<number>{_NUMBER}) ?(?P<unit>{_UNIT}?) ?(?P<tolerance>{_TOLERANCE})?"
+_AFTER_CODE: Final = rf" ?(?P<tolerance>{_TOLERANCE})?"
 
 
 @dataclass(frozen=True)
@@ -59,26 +57,38 @@ def parse(text: str, kind: Kind) -> Written:
     head, origin = split_origin(cleaned)
     if code := match_code(head, kind):
         return _code(text, head, code, origin, kind)
-    if found := _RANGE.fullmatch(head):
+    if found := _match_range(head):
         return _range(text, found, origin, kind)
-    found = _VALUE.fullmatch(head)
+    found = re.fullmatch(_VALUE, head, re.ASCII)
     if not found:
-        raise refuse_shape(head, kind, _reads)
+        raise _refused_shape(head, kind)
     unit = _known_unit(found["unit"], found["number"], head, kind)
     minus, plus = _distances(found, head)
     return Written(text, Decimal(found["number"]), unit, origin, minus, plus, (found["in"] or "").strip())
 
 
+def _match_range(head: str) -> re.Match[str] | None:
+    return re.fullmatch(_RANGE, head, re.ASCII) if ".." in head else None
+
+
+def _refused_shape(head: str, kind: Kind) -> NotOfKindError:
+    from safeamp.quantities.refusals import refuse_shape
+
+    return refuse_shape(head, kind, _reads)
+
+
 def _reads(text: str, kind: Kind) -> bool:
     """Return whether a suggestion would be read."""
     head = text.partition(",")[0]
-    found = _RANGE.fullmatch(head) or _VALUE.fullmatch(head)
+    found = _match_range(head) or re.fullmatch(_VALUE, head, re.ASCII)
     return found is not None and found["unit"].strip() in kind.spellings
 
 
 def _known_unit(unit: str, number: str, head: str, kind: Kind) -> str:
     unit = unit.strip()
     if unit not in kind.spellings:
+        from safeamp.quantities.refusals import refuse_unit
+
         raise refuse_unit(unit, number, head, kind, _reads)
     return unit
 
@@ -100,9 +110,9 @@ def _code(
     text: str, head: str, code: tuple[Decimal, str, Decimal | None, int], origin: Origin, kind: Kind
 ) -> Written:
     number, unit, percent, length = code
-    found = _AFTER_CODE.fullmatch(head, length)
+    found = re.fullmatch(_AFTER_CODE, head[length:], re.ASCII)
     if not found:
-        raise refuse_shape(head, kind, _reads)
+        raise _refused_shape(head, kind)
     minus, plus = _distances(found, head)
     if percent is None:
         return Written(text, number, unit, origin, minus, plus, (found["in"] or "").strip())

@@ -6,7 +6,6 @@ from collections.abc import Callable
 from safeamp.quantities.codes import LOOKS_LIKE_CODE, MULTIPLIER
 from safeamp.quantities.kinds import KINDS
 from safeamp.quantities.nouns import Kind, NotOfKindError
-from safeamp.quantities.shapes import SHAPES
 from safeamp.quantities.text import ORIGIN_WORDS, quote, such_as
 
 Reads = Callable[[str, Kind], bool]
@@ -22,8 +21,10 @@ def refuse_shape(head: str, kind: Kind, reads: Reads) -> NotOfKindError:
 
 
 def _shape(head: str, kind: Kind, reads: Reads) -> NotOfKindError | None:
+    from safeamp.quantities.shapes import SHAPES
+
     for shape in SHAPES:
-        match = shape.pattern.fullmatch(head)
+        match = re.fullmatch(shape.pattern, head)
         if not match:
             continue
         found = f"{quote(head)} {shape.found}"
@@ -100,7 +101,7 @@ def _no_comma(unit: str, number: str, head: str, kind: Kind) -> NotOfKindError |
 
 
 def _code(head: str, kind: Kind) -> NotOfKindError | None:
-    code = LOOKS_LIKE_CODE.match(head.lstrip("+-"))
+    code = re.match(LOOKS_LIKE_CODE, head.lstrip("+-"))
     if not code:
         return None
     if not kind.iec60062:

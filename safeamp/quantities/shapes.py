@@ -1,8 +1,6 @@
 """The shapes of text that people write and that are not read here."""
 
-import re
-from dataclasses import dataclass
-from typing import Final
+from typing import Final, NamedTuple
 
 _NUMBER: Final = r"(?:[0-9]+(?:\.[0-9]+)?|\.[0-9]+)(?:[eE][+-]?[0-9]+)?"
 _SIGNED: Final = rf"[+-]?{_NUMBER}"
@@ -10,11 +8,10 @@ _UNIT: Final = r" ?(?:[A-Za-zΩµ°%][A-Za-zΩµ°%²/]*)?"
 _WORD_BELOW: Final = r"(?:<|>|≤|≥|(?i:max|min|up to|under|over|less than|more than|at least|at most)\b)"
 
 
-@dataclass(frozen=True)
-class Shape:
+class Shape(NamedTuple):
     """A pattern of the whole text, what is found in it, what to write, and how to turn it into that."""
 
-    pattern: re.Pattern[str]
+    pattern: str
     found: str
     write: str
     rewrite: str = ""
@@ -22,8 +19,8 @@ class Shape:
 
 # Tried in this order; the first that matches is the one that is said.
 SHAPES: Final = tuple(
-    Shape(re.compile(pattern), *texts)
-    for pattern, *texts in (
+    Shape(*texts)
+    for texts in (
         (r"(?i:[+-]?(?:nan|inf|infinity))\b.*|[+-]?∞.*", "is no number",
          "write what was read, or leave the key out when it is not known"),
         (r"(?:~|≈|(?i:ca\b\.?|circa|about|approx\b\.?)) ?(.+)", "is only roughly a value",

@@ -1,4 +1,8 @@
-"""The only place that calls pint: one small registry, and the scale of each unit as exact decimals."""
+"""The only place that calls pint: one small registry, and the scale of each unit as exact decimals.
+
+pint is loaded by the first unit that is more than a prefix before the unit of its kind: it costs a start more than
+all else together, and a prefix is only a shift of the decimal point.
+"""
 
 from __future__ import annotations
 
@@ -13,6 +17,19 @@ from safeamp.quantities.nouns import Kind, NotOfKindError, QuantityError
 
 if TYPE_CHECKING:
     import pint
+
+#: Prefix -> places by which it shifts the decimal point; "percent" stands before no unit.
+_PLACES = {
+    "pico": -12,
+    "nano": -9,
+    "micro": -6,
+    "milli": -3,
+    "centi": -2,
+    "percent": -2,
+    "": 0,
+    "kilo": 3,
+    "mega": 6,
+}
 
 
 @cache
@@ -52,9 +69,14 @@ def _pint() -> Any:
 def scale(unit: str, base: str) -> tuple[Decimal, Decimal]:
     """Return factor and offset that turn a number in `unit` into one in `base`.
 
-    pint decides both; as decimals of 15 digits (1e-6, not its nearest float) they make the product
-    with the user's digits correctly rounded.
+    As decimals (1e-6, not its nearest float) they make the product with the user's digits correctly rounded.
     """
+    places = _PLACES.get(unit.removesuffix(base)) if unit.endswith(base) else None
+    return scale_of_pint(unit, base) if places is None else (Decimal(1).scaleb(places), Decimal(0))
+
+
+def scale_of_pint(unit: str, base: str) -> tuple[Decimal, Decimal]:
+    """Return factor and offset of `scale` as pint has them, to 15 digits."""
     ureg = registry()
     at_zero, at_one = (
         Decimal(f"{ureg.Quantity(number, unit).to(base).magnitude:.15g}") for number in (0.0, 1.0)
@@ -70,7 +92,8 @@ def to_base(number: Decimal, unit: str, kind: Kind) -> Decimal:
 
 def difference_to_base(number: Decimal, unit: str, kind: Kind) -> Decimal:
     """Return a difference of `number` of `unit` in the unit of `kind` (a temperature loses no zero point)."""
-    return number * scale(unit, kind.base)[0]
+    base = "kelvin" if kind.base == "degree_Celsius" else kind.base  # apart from the zero point they are one
+    return number * scale(unit, base)[0]
 
 
 def quantity(value: Any, kind: Kind) -> pint.Quantity[Any]:

@@ -9,7 +9,7 @@ import pytest
 
 from safeamp import quantities as q
 from safeamp.quantities import KINDS, QuantityError, Sign, convert, quantity, read, read_any, registry
-from safeamp.quantities.units import scale
+from safeamp.quantities.units import scale, scale_of_pint
 
 
 def test_registry_is_built_once():
@@ -40,6 +40,35 @@ def test_our_units_agree_with_the_full_registry_of_pint():
             factor, offset = (float(number) for number in scale(unit, kind.base))
             theirs = full.Quantity(7.0, unit).to(kind.base).magnitude
             assert 7.0 * factor + offset == pytest.approx(theirs, rel=1e-12)
+
+
+@pytest.mark.parametrize("kind", list(KINDS.values()), ids=list(KINDS))
+def test_a_shift_of_the_decimal_point_is_what_pint_says(kind):
+    printed = [unit for _, unit, _ in kind.shown]
+    for unit in [kind.base, *kind.spellings.values(), *printed]:
+        assert scale(unit, kind.base) == scale_of_pint(unit, kind.base), unit
+
+
+def test_differences_of_temperature_are_what_pint_says():
+    for unit in q.TEMPERATURE.difference.values():
+        assert scale(unit, "kelvin")[0] == scale_of_pint(unit, q.TEMPERATURE.base)[0]
+
+
+def test_a_prefix_alone_loads_no_pint():
+    code = (
+        "import sys; from safeamp import quantities as q\n"
+        "texts = (('22 mV', q.VOLTAGE), ('35 degC \u00b15 K', q.TEMPERATURE), ('20 %', q.PERCENT))\n"
+        "print(*(q.show_reading(q.read(text, kind)) for text, kind in texts), 'pint' in sys.modules, sep='; ')\n"
+        "q.read('5 min', q.TIME)\n"
+        "print('pint' in sys.modules)"
+    )
+    done = subprocess.run([sys.executable, "-X", "utf8", "-c", code], capture_output=True, check=False)
+    assert (done.returncode, done.stderr.decode()) == (0, "")
+    assert done.stdout.decode().split("\n") == [
+        "22 mV, stated; 35 °C ±5 K, stated; 20 %, stated; False",
+        "True",
+        "",
+    ]
 
 
 def test_derived_units_of_formulas():
