@@ -127,7 +127,10 @@ class Series:
 
 @dataclass(frozen=True)
 class Limits:
-    """Everything that the data files say; ``limits["offset.output"]`` is one `Limit`."""
+    """Everything that the data files say; ``limits["offset.output"]`` is one `Limit`.
+
+    `replaced` holds the ids of the limits that the user's own file replaced.
+    """
 
     entries: Mapping[str, Limit]
     defaults: Mapping[str, Default]
@@ -135,6 +138,7 @@ class Limits:
     fuse_gates: Mapping[str, FuseGates]
     series: Mapping[str, Series]
     levels: Mapping[str, Default]
+    replaced: tuple[str, ...] = ()
 
     def __getitem__(self, id: str) -> Limit:
         """Return the limit of one id; KeyError names the nearest known one."""
@@ -150,13 +154,13 @@ class Limits:
 
     def interface(self, name: str) -> Interface:
         """Return an interface, typed with hyphens or blanks; KeyError names the nearest known one."""
-        known = {plain(key): value for key, value in self.interfaces.items()}
-        return _find(known, plain(name), "interface between case and heatsink")
+        known = {plain(key): key for key in self.interfaces}
+        return self.interfaces[_find(known, plain(name), "interface between case and heatsink")]
 
     @property
     def overridden(self) -> tuple[Limit, ...]:
         """The limits that the user's own file replaced, for the report to name."""
-        return tuple(limit for limit in self.entries.values() if limit.overridden)
+        return tuple(self.entries[id] for id in self.replaced)
 
 
 def plain(name: str) -> str:

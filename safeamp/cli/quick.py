@@ -48,11 +48,11 @@ def run(
     from safeamp.reading.quick_options import read_options
     from safeamp.studies.quick.desk import Desk
 
-    with complaining():
-        rules = load_limits(limits)
-        entries = read_options(command, options)
     try:
-        answer = study(Desk(command, rules, entries))
+        with complaining():
+            rules = load_limits(limits)
+            entries = read_options(command, options)
+            answer = study(Desk(command, rules, entries))
     except OptionsError as trouble:
         fail(f"{command}: {trouble}")
     except ValueError as trouble:

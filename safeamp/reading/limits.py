@@ -1,13 +1,14 @@
 """The limits data that come with the program, and the user's own limits file, to nouns."""
 
-from collections.abc import Callable, Iterator, Mapping
+from collections.abc import Mapping
+from dataclasses import fields
 from functools import lru_cache, partial
 from math import inf
 from pathlib import Path
 from types import MappingProxyType
-from typing import Any, TypeVar
+from typing import Any
 
-from safeamp.complaints import Complaint, ReadingError
+from safeamp.complaints import ReadingError
 from safeamp.limits import (
     EVIDENCE,
     NOT_GIVEN,
@@ -22,19 +23,22 @@ from safeamp.limits import (
 )
 from safeamp.quantities import THERMAL_RESISTANCE, TIME, QuantityError
 from safeamp.reading.data import limits_folder
-from safeamp.reading.document import Document, read_document
+from safeamp.reading.document import read_document
 from safeamp.reading.levels import BY_UNIT, check_order, kind_of, level, number
 from safeamp.reading.overrides import apply_override
+from safeamp.reading.rows import Rows
 
 TABLE_FILES = ("defaults", "fuses", "interface", "levels", "preferred")
 """Files that hold other tables than limits."""
 
 _WORDS = frozenset({"unit", "sense", "go", "stop", "not_given", "source", "evidence", "says"})
-_Noun = TypeVar("_Noun")
 
 
 def load_limits(override: Path | None = None, *, folder: Path | None = None) -> Limits:
     """Return every limit, default and table.
+
+    What comes with the program is read when it is first asked for, as no answer needs all of it; with `override` or
+    `folder` all of it is read at once.
 
     Parameters
     ----------
@@ -49,64 +53,39 @@ def load_limits(override: Path | None = None, *, folder: Path | None = None) -> 
         With every problem of the files.
     """
     shipped = _shipped(folder or limits_folder())
+    if override is None and folder is None:
+        return shipped
+    check_all(shipped)
     return shipped if override is None else apply_override(shipped, read_document(override))
+
+
+def check_all(limits: Limits) -> None:
+    """Read every row of limits that were loaded.
+
+    Raises
+    ------
+    ReadingError
+        With every problem of the files.
+    """
+    tables = [getattr(limits, table.name) for table in fields(limits)]
+    found = [complaint for rows in tables if isinstance(rows, Rows) for complaint in rows.complaints()]
+    if found:
+        raise ReadingError(tuple(dict.fromkeys(found)))
 
 
 @lru_cache(maxsize=4)
 def _shipped(folder: Path) -> Limits:
-    tables = {stem: read_document(folder / f"{stem}.toml") for stem in TABLE_FILES}
-    topics = [path for path in sorted(folder.glob("*.toml")) if path.stem not in TABLE_FILES]
-    complaints: list[Complaint] = []
-    entries: dict[str, Limit] = {}
-    for path in topics:
-        entries |= _nouns(read_document(path), "sense", _limit, complaints)
-    defaults = _nouns(tables["defaults"], "value", _default, complaints)
-    spread = defaults.get("heatsink.insulator")
-    interface = partial(_interface, (spread.low, spread.high) if spread else (1.0, inf))
-    limits = Limits(
-        entries=MappingProxyType(entries),
-        defaults=MappingProxyType(defaults),
-        interfaces=_named(_nouns(tables["interface"], "resistance", interface, complaints)),
-        fuse_gates=_named(_nouns(tables["fuses"], "gates", _fuse, complaints)),
-        series=_named(_nouns(tables["preferred"], "values", _series, complaints)),
-        levels=MappingProxyType(_nouns(tables["levels"], "value", _default, complaints)),
+    topics = {path.stem: path for path in sorted(folder.glob("*.toml")) if path.stem not in TABLE_FILES}
+    defaults, fuses, interface, levels, preferred = ({"": folder / f"{stem}.toml"} for stem in TABLE_FILES)
+    spreads = Rows(defaults, "value", _default)
+    return Limits(
+        entries=Rows(topics, "sense", _limit),
+        defaults=spreads,
+        interfaces=Rows(interface, "resistance", partial(_interface, spreads), named=True),
+        fuse_gates=Rows(fuses, "gates", _fuse, named=True),
+        series=Rows(preferred, "values", _series, named=True),
+        levels=Rows(levels, "value", _default),
     )
-    if complaints:
-        raise ReadingError(tuple(complaints))
-    return limits
-
-
-def _nouns(
-    document: Document, mark: str, make: Callable[[str, dict[str, Any]], _Noun], complaints: list[Complaint]
-) -> dict[str, _Noun]:
-    """Make a noun of each row of a file; what cannot be made becomes a complaint."""
-    nouns: dict[str, _Noun] = {}
-    for path, row in _rows(document.data, mark):
-        id = ".".join(path)
-        try:
-            nouns[id] = make(id, row)
-        except QuantityError as trouble:
-            complaints.append(document.complaint(str(trouble), *path))
-        except KeyError as trouble:
-            complaints.append(document.complaint(f"{trouble.args[0]} is missing", *path))
-    return nouns
-
-
-def _rows(
-    table: Mapping[str, Any], mark: str, path: tuple[str, ...] = ()
-) -> Iterator[tuple[Any, dict[str, Any]]]:
-    """Walk to every table that holds the mark, and to every innermost one, so that none is passed over."""
-    inner = {key: value for key, value in table.items() if isinstance(value, dict)}
-    row = {key: value for key, value in table.items() if key not in inner}
-    if path and (mark in row or not inner):
-        yield path, row
-    for key, value in inner.items():
-        yield from _rows(value, mark, (*path, key))
-
-
-def _named(nouns: Mapping[str, _Noun]) -> Mapping[str, _Noun]:
-    """Drop the word that the rows of a table share."""
-    return MappingProxyType({id.partition(".")[2]: noun for id, noun in nouns.items()})
 
 
 def _limit(id: str, row: dict[str, Any]) -> Limit:
@@ -134,9 +113,10 @@ def _default(id: str, row: dict[str, Any]) -> Default:
     return Default(id, nominal, low, high, kind, *_words(row))
 
 
-def _interface(spread: tuple[float, float], id: str, row: dict[str, Any]) -> Interface:
+def _interface(defaults: Mapping[str, Default], id: str, row: dict[str, Any]) -> Interface:
     nominal = number(row["resistance"], THERMAL_RESISTANCE)
-    low, high = (nominal * factor for factor in spread)
+    spread = defaults.get("heatsink.insulator")
+    low, high = (nominal * factor for factor in ((spread.low, spread.high) if spread else (1.0, inf)))
     return Interface(
         id.partition(".")[2], nominal, low, high, row["source"], _choice(row["evidence"], EVIDENCE)
     )

@@ -34,10 +34,11 @@ def apply_override(limits: Limits, document: Document) -> Limits:
         another kind, levels that contradict each other.
     """
     override = _Override(limits, document)
-    entries = dict(limits.entries) | dict(override.changed())
+    changed = dict(override.changed())
     if override.complaints:
         raise ReadingError(tuple(override.complaints))
-    return replace(limits, entries=MappingProxyType(entries))
+    entries = MappingProxyType({**limits.entries, **changed})
+    return replace(limits, entries=entries, replaced=tuple(id for id in entries if id in changed))
 
 
 class _Override:

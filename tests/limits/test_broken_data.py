@@ -50,7 +50,7 @@ def broken(tmp_path):
         ("defaults.toml", "low      = 0.9", "low      = 1.05", "mains.present", "in rising order"),
         ("defaults.toml", "low      = 0.9", 'low      = "1 V"', "mains.present", "1 V"),
         ("interface.toml", '"0.1 K/W"', '"0.1 W"', "interface.to-3 greased", "power"),
-        ("fuses.toml", 'shortest = "60 min"', 'shortest = "60 mA"', "fuse.T", "current"),
+        ("fuses.toml", 'shortest = "3600 s"', 'shortest = "3600 mA"', "fuse.T", "current"),
         ("preferred.toml", "4.7]", "nan]", "series.E3", "nan"),
     ],
 )
