@@ -1,13 +1,19 @@
-"""What the studies return, one file a question."""
+"""What the studies return, one file a question; a file is imported by the first use of one of its names."""
 
-from safeamp.answers.chances import Chance, FindingChances, Histogram, StepChances, Tolerance
-from safeamp.answers.overview import Overview, OverviewRow
-from safeamp.answers.plane import Path, Plane
-from safeamp.answers.quick import Amount, Formula, PutIn, QuickAnswer
-from safeamp.answers.report import NotApplying, Report, StepVerdict
-from safeamp.answers.solution import Edge, Forbidding, Interval, Solution
-from safeamp.answers.substitute import AtWork, Compared, LoadLine, Pair, Range, Ratings, Substitute
-from safeamp.answers.working import Line, Working
+from __future__ import annotations
+
+from importlib import import_module
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from safeamp.answers.chances import Chance, FindingChances, Histogram, StepChances, Tolerance
+    from safeamp.answers.overview import Overview, OverviewRow
+    from safeamp.answers.plane import Path, Plane
+    from safeamp.answers.quick import Amount, Formula, PutIn, QuickAnswer
+    from safeamp.answers.report import NotApplying, Report, StepVerdict
+    from safeamp.answers.solution import Edge, Forbidding, Interval, Solution
+    from safeamp.answers.substitute import AtWork, Compared, LoadLine, Pair, Range, Ratings, Substitute
+    from safeamp.answers.working import Line, Working
 
 __all__ = [
     "Amount",
@@ -40,3 +46,21 @@ __all__ = [
     "Tolerance",
     "Working",
 ]
+
+_FILES = {
+    "chances": ("Chance", "FindingChances", "Histogram", "StepChances", "Tolerance"),
+    "overview": ("Overview", "OverviewRow"),
+    "plane": ("Path", "Plane"),
+    "quick": ("Amount", "Formula", "PutIn", "QuickAnswer"),
+    "report": ("NotApplying", "Report", "StepVerdict"),
+    "solution": ("Edge", "Forbidding", "Interval", "Solution"),
+    "substitute": ("AtWork", "Compared", "LoadLine", "Pair", "Range", "Ratings", "Substitute"),
+    "working": ("Line", "Working"),
+}
+
+
+def __getattr__(name: str) -> Any:
+    for file, names in _FILES.items():
+        if name in names:
+            return getattr(import_module(f"{__name__}.{file}"), name)
+    raise AttributeError(f"module {__name__!r} has no attribute {name!r}")
