@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
-from safeamp.physics.safe_area import Pulse, Rating
+if TYPE_CHECKING:
+    from safeamp.physics.safe_area import Pulse, Rating
 
 
 @dataclass(frozen=True, eq=False)

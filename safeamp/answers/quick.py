@@ -3,10 +3,13 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import TYPE_CHECKING
 
-from safeamp.answers.plane import Plane
 from safeamp.findings import Finding, Verdict
 from safeamp.quantities import Kind
+
+if TYPE_CHECKING:
+    from safeamp.answers.plane import Plane
 
 
 @dataclass(frozen=True)

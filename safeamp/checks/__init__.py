@@ -1,36 +1,67 @@
-"""Checks: an amplifier of cases and the limits in, measures out. They print nothing and judge nothing."""
+"""Checks: an amplifier of cases and the limits in, measures out. They print nothing and judge nothing.
 
-from safeamp.checks import (
-    bias,
-    capacitor,
-    cold,
-    heat,
-    loudspeaker,
-    offset,
-    power_up,
-    protection,
-    runaway,
-    safe_area,
-    stability,
-    supply,
-    touch,
+A topic is imported when one of its checks is asked for: an answer about one topic does not wait for all.
+"""
+
+from __future__ import annotations
+
+from functools import cache
+from importlib import import_module
+from types import ModuleType
+from typing import TYPE_CHECKING, Any
+
+from safeamp.checks import registry
+from safeamp.checks.registry import Check
+
+if TYPE_CHECKING:
+    CHECKS: dict[str, Check]
+    TOPICS: tuple[ModuleType, ...]
+
+__all__ = ["CHECKS", "TOPICS", "Check", "check_of"]
+
+# Findings of one step stand in this order.
+_TOPICS = (
+    "bias",
+    "offset",
+    "capacitor",
+    "cold",
+    "heat",
+    "loudspeaker",
+    "power_up",
+    "safe_area",
+    "protection",
+    "runaway",
+    "stability",
+    "supply",
+    "touch",
 )
-from safeamp.checks.registry import CHECKS, Check
+# Where the topic is not the first word of the id.
+_TOPIC_OF = {"bias.runaway": "runaway", "soa.loudspeaker": "safe_area", "soa.resistive_load": "safe_area"}
 
-TOPICS = (
-    bias,
-    capacitor,
-    cold,
-    heat,
-    loudspeaker,
-    offset,
-    power_up,
-    protection,
-    runaway,
-    safe_area,
-    stability,
-    supply,
-    touch,
-)
 
-__all__ = ["CHECKS", "TOPICS", "Check"]
+def check_of(identity: str) -> Check:
+    """Return the check of one finding, from its topic alone."""
+    import_module(f"{__name__}.{_TOPIC_OF.get(identity) or identity.partition('.')[0]}")
+    return registry.CHECKS[identity]
+
+
+@cache
+def _topics() -> tuple[ModuleType, ...]:
+    return tuple(import_module(f"{__name__}.{name}") for name in _TOPICS)
+
+
+@cache
+def _all() -> dict[str, Check]:
+    """Return every check, in an order that does not hang on what was imported first."""
+    places = {topic.__name__: place for place, topic in enumerate(_topics())}
+    return {
+        check.id: check
+        for check in sorted(registry.CHECKS.values(), key=lambda check: places[check.run.__module__])
+    }
+
+
+def __getattr__(name: str) -> Any:
+    found = {"CHECKS": _all, "TOPICS": _topics}.get(name)
+    if found is None:
+        raise AttributeError(f"module {__name__!r} has no attribute {name!r}")
+    return found()

@@ -1,8 +1,12 @@
-"""The driver of the sheet as a circuit, and the numbers that only a driver's parameters can tell."""
+"""The driver of the sheet as a circuit, and the numbers that only a driver's parameters can tell.
+
+Few sheets have such parameters: the formulas are imported by the first that does.
+"""
 
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import TYPE_CHECKING
 
 import numpy as np
 
@@ -11,9 +15,10 @@ from safeamp.checks import operating
 from safeamp.checks.trace import aside, needed
 from safeamp.checks.words import nominal
 from safeamp.findings import Also
-from safeamp.physics import any_signal, coupling, driver
-from safeamp.physics.driver import Driver
 from safeamp.quantities import CURRENT, LENGTH, PERCENT, Number
+
+if TYPE_CHECKING:
+    from safeamp.physics.driver import Driver
 
 #: Keys that stand for nothing but a driver as a circuit.
 STARTED = ("resonance", "q_mechanical", "q_electrical", "inductance", "moving_mass")
@@ -49,10 +54,14 @@ def parameters_of(amplifier: Amplifier) -> Parameters:
     electrical: Number = table.q_electrical
     mass, compliance, force = table.moving_mass, table.compliance, table.force_factor
     if resonance is None and mass is not None and compliance is not None:
-        resonance = driver.free_resonance(moving_mass=mass, compliance=compliance)
+        from safeamp.physics.driver import free_resonance
+
+        resonance = free_resonance(moving_mass=mass, compliance=compliance)
     known: tuple[Number, ...] = (table.dc_resistance, force, mass, resonance)
     if electrical is None and all(value is not None for value in known):
-        electrical = driver.electrical_q(
+        from safeamp.physics.driver import electrical_q
+
+        electrical = electrical_q(
             dc_resistance=known[0], force_factor=known[1], moving_mass=known[2], resonance=known[3]
         )
     return Parameters(table.dc_resistance, resonance, table.q_mechanical, electrical, table.inductance)
@@ -68,7 +77,9 @@ def driver_of(amplifier: Amplifier) -> Driver | None:
     found = parameters_of(amplifier)
     if found.missing():
         return None
-    parts = driver.motional_elements(
+    from safeamp.physics.driver import Driver, motional_elements
+
+    parts = motional_elements(
         dc_resistance=found.coil,
         resonance=found.resonance,
         q_mechanical=found.q_mechanical,
@@ -101,7 +112,9 @@ def any_signal_also(amplifier: Amplifier) -> tuple[Also, ...]:
         return ()
     coupled = operating.is_capacitor_coupled(amplifier)
     farads = needed(amplifier, "output_capacitor.capacitance")[0] if coupled else np.inf
-    norm = any_signal.admittance_norm(driver=seen, series_resistor=in_series(amplifier), capacitance=farads)
+    from safeamp.physics.any_signal import admittance_norm
+
+    norm = admittance_norm(driver=seen, series_resistor=in_series(amplifier), capacitance=farads)
     found = [_of_side(amplifier, place, norm) for place in (0, 1)]
     return (
         Also("largest current of a sine", max(sine for sine, _, _ in found), CURRENT),
@@ -129,7 +142,9 @@ def travel_also(amplifier: Amplifier) -> tuple[Also, ...]:
         return ()
     resonance = parameters_of(amplifier).resonance
     across = 2.0 if amplifier.stage.bridged else 1.0
-    travel = driver.largest_excursion(
+    from safeamp.physics.driver import largest_excursion
+
+    travel = largest_excursion(
         driver=one,
         force_factor=force,
         peak=operating.clipping_peak(amplifier) * across / needed(amplifier, "loudspeaker.series")[0],
@@ -160,7 +175,9 @@ def switch_on_travel(amplifier: Amplifier, static: Number) -> tuple[Also, ...]:
         return ()
     if seen is not None:
         rise, farads = needed(amplifier, "output_capacitor.rise_time", "output_capacitor.capacitance")
-        whole = coupling.turn_on_displacement(
+        from safeamp.physics.coupling import turn_on_displacement
+
+        whole = turn_on_displacement(
             driver=seen,
             force_factor=nominal(force),
             capacitance=nominal(farads),

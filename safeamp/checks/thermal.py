@@ -10,7 +10,7 @@ import numpy as np
 from safeamp.amplifier import Amplifier, Device
 from safeamp.checks import operating
 from safeamp.checks.trace import miss, needed
-from safeamp.physics import fins, heat, stage
+from safeamp.physics import heat, stage
 from safeamp.quantities import Number
 
 ONE_EIGHTH = 1.0 / 8.0
@@ -156,6 +156,8 @@ def by_ruler(amplifier: Amplifier) -> bool:
 
 def _ruled_rise(amplifier: Amplifier, whole: Number, air: Number) -> Number:
     """Return the rise above air, K, at which fins by ruler shed a heat, as far off as such a sum may be."""
+    from safeamp.physics import fins  # few sheets have a heatsink by ruler
+
     paths = [f"heatsink.fins.{name}" for name in FINS]
     geometry = fins.Geometry(**dict(zip(FINS, needed(amplifier, *paths), strict=True)))
     (share,) = needed(amplifier, "heatsink.fins_share")

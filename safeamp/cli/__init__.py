@@ -3,7 +3,7 @@
 import gc
 import os
 
-#: A start makes a hundred thousand objects that all stay: looking through them for garbage again and again is lost time.
+#: What a start makes stays: looking through it for garbage again and again is lost time.
 _OBJECTS_BETWEEN_LOOKS = 200_000
 
 

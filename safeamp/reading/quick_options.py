@@ -37,10 +37,6 @@ from safeamp.quantities import (
     Sign,
     read,
 )
-from safeamp.reading.defaults import POWER_WORDS
-from safeamp.reading.draft import Draft
-from safeamp.reading.special import fuse
-from safeamp.reading.values import whole_number
 
 #: Options that are keys of the sheet: read by the same rule.
 SHEET_KEYS: Mapping[str, tuple[type[Any], str]] = {
@@ -83,7 +79,7 @@ OWN_KEYS: Mapping[str, Key] = {
 }
 _FIN_NAMES = ("width", "height", "depth")
 _FIN_FORM = 'write width x height x depth, height upright, such as "150x75x35 mm"'
-_UNEVEN = re.compile(r"\s*-\s*([\d.]+)\s*/\s*\+\s*[\d.]+\s*%\s*")
+_UNEVEN = r"\s*-\s*([\d.]+)\s*/\s*\+\s*[\d.]+\s*%\s*"
 
 
 def read_options(command: str, texts: Mapping[str, str | None]) -> dict[str, Entry]:
@@ -139,6 +135,8 @@ def _entry(name: str, text: str) -> Entry:
     except QuantityError as trouble:
         if not key.whole:
             raise
+        from safeamp.reading.values import whole_number
+
         raise whole_number(trouble) from trouble
     if key.whole and (reading.toleranced or not reading.nominal.is_integer()):
         raise QuantityError(f'"{text}" is not a whole number', "write a bare whole number, such as 1")
@@ -151,7 +149,7 @@ def _of(name: str, reading: Reading) -> Entry:
 
 def _bare(text: str) -> str:
     """Return the low end of a tolerance as a percentage: ``±20 %``, ``-20 %`` and ``-20/+50 %`` are 20 %."""
-    uneven = _UNEVEN.fullmatch(text.replace("\u2212", "-"))
+    uneven = re.fullmatch(_UNEVEN, text.replace("\u2212", "-"))
     return f"{uneven[1]} %" if uneven else text.strip().removeprefix("+/-").lstrip("±-\u2212 ")
 
 
@@ -183,6 +181,9 @@ def read_fuse(command: str, text: str | None) -> Fuse | None:
     ReadingError
         If the text is not read.
     """
+    from safeamp.reading.draft import Draft
+    from safeamp.reading.special import fuse
+
     if text is None or text.strip().lower() == "none":
         return None
     try:
@@ -199,6 +200,8 @@ def read_power_word(command: str, text: str | None) -> str | None:
     ReadingError
         If the word is not one of those that are used.
     """
+    from safeamp.reading.defaults import POWER_WORDS
+
     if text is None or plain(text) in POWER_WORDS:
         return None if text is None else plain(text)
     known = " or ".join(f'"{word}"' for word in POWER_WORDS)

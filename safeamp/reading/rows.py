@@ -63,10 +63,13 @@ class Rows(Mapping[str, _Noun]):
     def _table(self, key: str) -> tuple[Document, dict[str, tuple[_Path, Row]]]:
         if key not in self._tables:
             document = read_document(self._files[key])
-            self._tables[key] = document, {
-                ".".join(path[1:] if self._named else path): (path, row)
-                for path, row in rows(document.data, self._mark)
-            }
+            self._tables[key] = (
+                document,
+                {
+                    ".".join(path[1:] if self._named else path): (path, row)
+                    for path, row in rows(document.data, self._mark)
+                },
+            )
         return self._tables[key]
 
     def _noun(self, document: Document, path: _Path, row: Row) -> _Noun:

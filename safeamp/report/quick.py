@@ -2,14 +2,12 @@
 
 from __future__ import annotations
 
-import json
 from collections.abc import Iterator
 from typing import Any
 
 from safeamp.answers import Amount, QuickAnswer
 from safeamp.quantities import show
 from safeamp.report.finding_text import finding_lines
-from safeamp.report.json_ import finding_mapping, plain
 from safeamp.report.layout import Ink, block, paragraph, points
 from safeamp.report.safety import SAFETY
 
@@ -72,11 +70,15 @@ def _verdict(answer: QuickAnswer, width: int, ink: Ink) -> Iterator[str]:
 
 def quick_json(answer: QuickAnswer) -> str:
     """Return a quick answer as a JSON text that ends with a line feed; never nan or infinity."""
+    import json
+
     return json.dumps(quick_mapping(answer), indent=2, allow_nan=False) + "\n"
 
 
 def quick_mapping(answer: QuickAnswer) -> dict[str, Any]:
     """Return a quick answer as nested dicts and lists."""
+    from safeamp.report.json_ import finding_mapping
+
     return {
         "command": answer.command,
         "results": {one.name: _result(one) for one in answer.results},
@@ -91,6 +93,8 @@ def quick_mapping(answer: QuickAnswer) -> dict[str, Any]:
 
 
 def _result(amount: Amount) -> dict[str, Any]:
+    from safeamp.report.json_ import plain
+
     value = amount.value if isinstance(amount.value, str) else plain(amount.value)
     found: dict[str, Any] = {"value": value, "unit": None if amount.kind is None else amount.kind.unit}
     if amount.low is not None:

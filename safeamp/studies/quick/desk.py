@@ -10,7 +10,7 @@ import numpy as np
 
 from safeamp.amplifier import Entry
 from safeamp.answers import Amount, Formula, PutIn, QuickAnswer
-from safeamp.checks import CHECKS
+from safeamp.checks import check_of
 from safeamp.checks.judging import bounds_of, judge, nominal_bound
 from safeamp.checks.words import nominal
 from safeamp.complaints import OptionsError
@@ -154,7 +154,7 @@ class Cases:
 
     def finding(self, identity: str, measure: Measure, used: tuple[str, ...]) -> Finding:
         """Return a judged measure, by the limit and the kind of the finding of the same id."""
-        check, limit = CHECKS[identity], self.desk.limits[identity]
+        check, limit = check_of(identity), self.desk.limits[identity]
         inputs = tuple(self._input(name) for name in used if self.desk.has(name))
         measure = replace(measure, remarks=(*measure.remarks, *self._invented(used)))
         judgement = judge(measure, limit, self.design.guessed, self._moved())
