@@ -1,5 +1,7 @@
 """A V-I limiter against the safe area and against the load."""
 
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
@@ -54,6 +56,29 @@ def test_use_agrees_with_a_dense_grid_over_cases() -> None:
             voltage=volts, case_temperature=case[place], rating=DEVICE
         )
         assert use.use[place] == pytest.approx(dense.max(), rel=2e-3)
+
+
+@pytest.mark.parametrize(
+    "name", ["current", "power", "power_at", "junction_limit", "junction_to_case", "voltage"]
+)
+def test_any_rating_alone_may_have_cases(name: str) -> None:
+    factors = np.array([1.0, 0.9, 0.95])
+    known = {"points": POINTS, "case_temperature": 60.0, "highest_voltage": 44.0}
+    rating = replace(DEVICE, **{name: getattr(DEVICE, name) * factors})
+    together = limiter_use(**known, rating=rating)
+    alone = [limiter_use(**known, rating=replace(rating, **{name: value})) for value in getattr(rating, name)]
+    assert together.use == pytest.approx([float(one.use) for one in alone])
+    assert together.voltage.shape == together.enters_unknown.shape == (3,)
+
+
+def test_the_points_of_the_limiter_may_have_cases() -> None:
+    points = ((0.0, np.array([6.0, 5.0, 7.0])), (50.0, 1.0))
+    use = limiter_use(points=points, case_temperature=25.0, rating=DEVICE, highest_voltage=44.0).use
+    for place, amperes in enumerate((6.0, 5.0, 7.0)):
+        alone = limiter_use(
+            points=((0.0, amperes), (50.0, 1.0)), case_temperature=25.0, rating=DEVICE, highest_voltage=44.0
+        )
+        assert use[place] == pytest.approx(float(alone.use))
 
 
 def test_current_above_the_voltage_rating_is_without_bound() -> None:

@@ -75,6 +75,13 @@ def _grid(points: Points, rating: Rating, highest: Array) -> Array:
     return volts
 
 
+def _shapes(points: Points, rating: Rating) -> list[tuple[int, ...]]:
+    """Return the cases of everything that describes limiter and device."""
+    ratings = (rating.current, rating.power, rating.power_at, rating.junction_limit, rating.junction_to_case)
+    pairs = (value for pair in (*points, *rating.points) for value in pair)
+    return [np.shape(value) for value in (*ratings, rating.voltage, *pairs)]
+
+
 def limiter_use(
     *, points: Points, case_temperature: ArrayLike, rating: Rating, highest_voltage: ArrayLike
 ) -> Use:
@@ -107,7 +114,9 @@ def limiter_use(
     Derived: limiter current over allowed current on a fine grid with the corners of both lines.
     """
     positive(highest_voltage=highest_voltage)
-    shape = np.broadcast_shapes(np.shape(case_temperature), np.shape(highest_voltage))
+    shape = np.broadcast_shapes(
+        np.shape(case_temperature), np.shape(highest_voltage), *_shapes(points, rating)
+    )
     highest = np.broadcast_to(array(highest_voltage), shape)
     volts = _grid(points, rating, highest)
     current = limiter_current(
