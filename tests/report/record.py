@@ -1,4 +1,4 @@
-"""Whole reports as they were last read; `python -m tests.report.record` writes them anew, to be read before use."""
+"""Whole reports in Markdown, CSV and HTML as they were last read; `python -m tests.reports` writes them anew."""
 
 import csv
 import io
@@ -10,7 +10,6 @@ import safeamp
 from safeamp.report.csv_ import as_csv
 from safeamp.report.html import as_html
 from safeamp.report.markdown import as_markdown
-from safeamp.report.text import render
 from safeamp.studies.verdict import verdict
 
 FOLDER = Path(__file__).parent / "recorded"
@@ -41,7 +40,7 @@ def _body(one):
     return as_html(one, {}).partition("</style>")[2]
 
 
-FORMS = {"txt": render, "md": as_markdown, "csv": _csv, "html": _body}
+FORMS = {"md": as_markdown, "csv": _csv, "html": _body}
 
 
 def path(name, form):
@@ -53,9 +52,7 @@ def main():
     """Write every report."""
     for name in NAMES:
         for form, printed in FORMS.items():
-            path(name, form).write_text(printed(report(name)), encoding="utf-8", newline="\n")
-            sys.stdout.write(f"{path(name, form)}\n")
-
-
-if __name__ == "__main__":
-    main()
+            kept, text = path(name, form), printed(report(name))
+            same = kept.exists() and kept.read_text(encoding="utf-8") == text
+            kept.write_text(text, encoding="utf-8", newline="\n")
+            sys.stdout.write(f"{kept.name}: {'as before' if same else 'written'}\n")

@@ -7,7 +7,7 @@ import pytest
 from tests.report.record import FOLDER, FORMS, NAMES, path, report
 
 CASES = [(name, form) for name in NAMES for form in FORMS]
-HOW = "read the difference; if it is meant, run python -m tests.report.record"
+HOW = "read the difference; if it is meant, run python -m tests.reports"
 
 
 @pytest.mark.parametrize(("name", "form"), CASES)

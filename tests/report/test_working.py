@@ -4,6 +4,7 @@ import math
 
 import pytest
 
+import safeamp
 from safeamp.amplifier import with_values
 from safeamp.answers import Working
 from safeamp.checks import CHECKS
@@ -12,9 +13,11 @@ from safeamp.checks.working.paper import Paper
 from safeamp.checks.working.register import working as register
 from safeamp.quantities import RATIO
 from safeamp.report.working import number, put_in
+from safeamp.studies.verdict import verdict
 from tests.amplifiers import sheets as healthy
 from tests.checks import loads
 from tests.report.arithmetic import evaluated, half_a_digit, uncertainty
+from tests.reports.recorded import SHEETS
 from tests.scenarios import sheets
 
 NAMES = (
@@ -161,6 +164,16 @@ def test_the_worst_point_of_a_curve_is_worked_out(name, changes, curve):
     assert checked(working) > 20
     value = CHECKS["soa.loudspeaker"].run(amplifier, sheets.limits()).value
     assert working.lines[-1].value == pytest.approx(float(value), rel=1e-12)
+
+
+@pytest.mark.parametrize("name", SHEETS)
+def test_every_way_of_building_a_stage_is_worked_out(name):
+    sheet = safeamp.load_sheet(SHEETS[name])
+    for finding in verdict(sheet, sheets.limits()).findings:
+        working = working_of(finding.id, sheet.amplifier, sheets.limits())
+        checked(working)
+        if finding.nominal is not None:
+            assert working.lines[-1].value == pytest.approx(finding.nominal, rel=1e-12), finding.id
 
 
 def test_every_finding_has_its_working_and_no_other():

@@ -2,6 +2,7 @@
 
 import sys
 
+from tests.report import record
 from tests.reports.recorded import SHEETS, printed, recording
 
 for name in sys.argv[1:] or SHEETS:
@@ -9,3 +10,5 @@ for name in sys.argv[1:] or SHEETS:
     same = path.exists() and path.read_text(encoding="utf-8") == text
     path.write_text(text, encoding="utf-8")
     sys.stdout.write(f"{path.name}: {'as before' if same else 'written'}\n")
+if not sys.argv[1:]:
+    record.main()
