@@ -29,12 +29,12 @@ def prepare(folder: Path, line: int) -> None:
 
 
 def change(text: str, lines: str) -> str:
-    """Return a text with each line behind a minus replaced by the one behind the plus that follows it."""
-    pairs = re.findall(r"(?m)^-(.*)\n\+(.*)$", lines)
-    assert len(pairs) * 2 == len(lines.splitlines())
+    """Return a text with each line behind a minus replaced by the ones behind a plus that follow it."""
+    pairs = re.findall(r"(?m)^-(.*)\n((?:\+.*\n)+)", lines)
+    assert "".join(f"-{old}\n{new}" for old, new in pairs) == lines
     for old, new in pairs:
         assert text.count(f"{old}\n") == 1, old
-        text = text.replace(f"{old}\n", f"{new}\n")
+        text = text.replace(f"{old}\n", re.sub(r"(?m)^\+", "", new))
     return text
 
 
@@ -142,5 +142,8 @@ def test_a_line_that_is_not_printed_is_noticed() -> None:
 
 def test_a_change_replaces_whole_lines_that_are_there() -> None:
     assert change("a = 1\nb = 2\n", "-b = 2\n+b = 3\n") == "a = 1\nb = 3\n"
+    assert change("a = 1\nb = 2\n", "-a = 1\n+a = 1\n+\n+c = 3\n") == "a = 1\n\nc = 3\nb = 2\n"
+    with pytest.raises(AssertionError, match="-b = 2"):
+        change("a = 1\nb = 2\n", "-b = 2\n")
     with pytest.raises(AssertionError, match="c = 1"):
         change("a = 1\n", "-c = 1\n+c = 2\n")
