@@ -9,7 +9,7 @@ if TYPE_CHECKING:
     from safeamp.answers.chances import Chance, FindingChances, Histogram, StepChances, Tolerance
     from safeamp.answers.overview import Overview, OverviewRow
     from safeamp.answers.plane import Path, Plane
-    from safeamp.answers.quick import Amount, Formula, PutIn, QuickAnswer
+    from safeamp.answers.quick import Amount, Bass, Formula, PutIn, QuickAnswer
     from safeamp.answers.report import NotApplying, Report, StepVerdict
     from safeamp.answers.solution import Edge, Forbidding, Interval, Solution
     from safeamp.answers.substitute import AtWork, Compared, LoadLine, Pair, Range, Ratings, Substitute
@@ -18,6 +18,7 @@ if TYPE_CHECKING:
 __all__ = [
     "Amount",
     "AtWork",
+    "Bass",
     "Chance",
     "Compared",
     "Edge",
@@ -51,7 +52,7 @@ _FILES = {
     "chances": ("Chance", "FindingChances", "Histogram", "StepChances", "Tolerance"),
     "overview": ("Overview", "OverviewRow"),
     "plane": ("Path", "Plane"),
-    "quick": ("Amount", "Formula", "PutIn", "QuickAnswer"),
+    "quick": ("Amount", "Bass", "Formula", "PutIn", "QuickAnswer"),
     "report": ("NotApplying", "Report", "StepVerdict"),
     "solution": ("Edge", "Forbidding", "Interval", "Solution"),
     "substitute": ("AtWork", "Compared", "LoadLine", "Pair", "Range", "Ratings", "Substitute"),

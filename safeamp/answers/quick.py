@@ -41,6 +41,17 @@ class Formula:
 
 
 @dataclass(frozen=True, kw_only=True)
+class Bass:
+    """An output capacitor into a load, with the ends of its tolerance: F, ohm; the cutoff aimed at, Hz, or None."""
+
+    capacitance: float
+    low: float
+    high: float
+    load: float
+    target: float | None = None
+
+
+@dataclass(frozen=True, kw_only=True)
 class QuickAnswer:
     """What a quick answer without a sheet says.
 
@@ -53,6 +64,7 @@ class QuickAnswer:
     cautions : tuple of str
         What the numbers do not say.
     plane : Plane or None
+    bass : Bass or None
         What can be drawn of it.
     """
 
@@ -65,6 +77,7 @@ class QuickAnswer:
     judged: tuple[Finding, ...] = ()
     cautions: tuple[str, ...] = ()
     plane: Plane | None = None
+    bass: Bass | None = None
 
     @property
     def verdict(self) -> Verdict | None:

@@ -2,12 +2,25 @@
 
 from __future__ import annotations
 
-from typing import Annotated
+from pathlib import Path
+from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from safeamp.cli.figures import (
+    FigureFormat,
+    FigureFormatOption,
+    FiguresOption,
+    check_folder,
+    write_figures,
+)
 from safeamp.cli.options import LimitsOption
+from safeamp.cli.output import note
 from safeamp.cli.quick import Format, FormatOption, Load, SingleRail, run
+
+if TYPE_CHECKING:
+    from safeamp.answers import QuickAnswer
+    from safeamp.studies.quick.desk import Desk
 
 
 def capacitor(
@@ -24,10 +37,19 @@ def capacitor(
     ] = None,
     format_: FormatOption = Format.TEXT,
     limits: LimitsOption = None,
+    figures: FiguresOption = None,
+    figures_format: FigureFormatOption = FigureFormat.SVG,
 ) -> None:
     """Size an output capacitor, or say where it cuts off; what is left out is solved for."""
-    from safeamp.studies.quick.capacitor import capacitor_answer
 
+    def study(desk: Desk) -> QuickAnswer:
+        from safeamp.studies.quick.capacitor import capacitor_answer
+
+        answer = capacitor_answer(desk)
+        _draw(figures, figures_format, limits, answer)
+        return answer
+
+    check_folder(figures)
     options = {
         "cutoff": cutoff,
         "load": load,
@@ -37,4 +59,15 @@ def capacitor(
         "highest": highest,
         "power": power,
     }
-    run("capacitor", options, capacitor_answer, format_, limits)
+    run("capacitor", options, study, format_, limits)
+
+
+def _draw(folder: Path | None, format_: FigureFormat, limits: Path | None, answer: QuickAnswer) -> None:
+    if folder is None:
+        return
+    if answer.bass is None:
+        note("no figure: neither a cutoff nor a capacitance was asked for")
+        return
+    from safeamp.figures import bass_pictures
+
+    write_figures(bass_pictures(answer.bass), folder, format_, never=(limits,))

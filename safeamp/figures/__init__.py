@@ -1,6 +1,13 @@
 """Figures: nouns in, pictures out. They read no file, judge nothing, and open no window."""
 
-from safeamp.figures.gallery import Gallery, LeftOut, histograms_of, pictures_of, plane_pictures
+from safeamp.figures.gallery import (
+    Gallery,
+    LeftOut,
+    bass_pictures,
+    histograms_of,
+    pictures_of,
+    plane_pictures,
+)
 from safeamp.figures.look import NotDrawnError, Picture, picture, rendered
 from safeamp.figures.svg import svg_text
 
@@ -9,6 +16,7 @@ __all__ = [
     "LeftOut",
     "NotDrawnError",
     "Picture",
+    "bass_pictures",
     "histograms_of",
     "picture",
     "pictures_of",

@@ -10,7 +10,7 @@ import numpy as np
 from matplotlib.axes import Axes
 
 from safeamp.amplifier import Amplifier, Sheet
-from safeamp.answers import Plane, Report, Tolerance
+from safeamp.answers import Bass, Plane, Report, Tolerance
 from safeamp.checks.trace import Trace, watched
 from safeamp.figures import chances, coil, driver, heat, look, overview, response, safe_area, temperatures
 from safeamp.figures.look import NotDrawnError, Picture
@@ -83,6 +83,12 @@ def _safe_area(found: Mapping[str, Finding], axes: Axes, amplifier: Amplifier) -
 def plane_pictures(plane: Plane) -> Gallery:
     """Return the picture of a safe area that was computed without a sheet."""
     plan = _Plan("safe-area", safe_area.TITLE, lambda axes, _: safe_area.draw(axes, plane), safe_area.HEIGHT)
+    return _gallery([plan], Amplifier())
+
+
+def bass_pictures(bass: Bass) -> Gallery:
+    """Return the picture of an output capacitor that was computed without a sheet."""
+    plan = _Plan("low-notes", response.TITLE, lambda axes, _: response.draw_bass(axes, bass))
     return _gallery([plan], Amplifier())
 
 

@@ -11,6 +11,7 @@ import numpy.typing as npt
 from matplotlib.axes import Axes
 
 from safeamp.amplifier import Amplifier, Entry
+from safeamp.answers import Bass
 from safeamp.checks import driver as circuit
 from safeamp.checks import operating
 from safeamp.checks.trace import needed
@@ -92,26 +93,43 @@ def draw(axes: Axes, amplifier: Amplifier, entries: Mapping[str, Entry]) -> str:
     middle = nominal(capacitor.cutoff_frequency(capacitance=farads, load_resistance=ohms))
     if np.isnan(middle):
         raise NotDrawnError("its cutoff cannot be computed")
-    hertz = np.geomspace(middle / 8.0, middle * 30.0, POINTS)
-    lines = list(lines_of(amplifier, entries, hertz))
+    hertz = _around(middle)
+    target = amplifier.output_capacitor.target_cutoff
+    return _drawn(axes, list(lines_of(amplifier, entries, hertz)), hertz, target)
+
+
+def draw_bass(axes: Axes, bass: Bass) -> str:
+    """Draw what was computed without a sheet: the response, and that at each end of the tolerance."""
+    cutoff = capacitor.cutoff_frequency(capacitance=bass.capacitance, load_resistance=bass.load)
+    hertz = _around(nominal(cutoff))
+    lines = [_into(bass.capacitance, bass.load, hertz)]
+    ends = {"low end": bass.low, "high end": bass.high}
+    lines += [_into(end, bass.load, hertz, which) for which, end in ends.items() if end != bass.capacitance]
+    return _drawn(axes, lines, hertz, bass.target)
+
+
+def _around(middle: float) -> Values:
+    return np.geomspace(middle / 8.0, middle * 30.0, POINTS)
+
+
+def _drawn(axes: Axes, lines: list[Line], hertz: Values, target: Any) -> str:
     for line in lines:
         style, colour, marker = STYLES[line.which]
         axes.plot(hertz, line.levels, linestyle=style, color=colour)
         axes.plot([line.cutoff], [HALF_POWER], marker, color=colour, markeredgecolor=BLACK, zorder=5)
         axes.plot([], [], linestyle=style, color=colour, marker=marker)
         axes.lines[-1].set_label(f"{line.name}: {text(line.cutoff, FREQUENCY)}")
-    _frame(axes, amplifier, hertz, max(float(line.levels.max()) for line in lines))
+    _frame(axes, target, hertz, max(float(line.levels.max()) for line in lines))
     said = "; ".join(f"{line.name}: {text(line.cutoff, FREQUENCY)}" for line in lines)
     return f"Level at the load against frequency through the output capacitor. -3 dB at: {said}."
 
 
-def _frame(axes: Axes, amplifier: Amplifier, hertz: Values, top: float) -> None:
+def _frame(axes: Axes, target: Any, hertz: Values, top: float) -> None:
     logarithmic(axes, "x", float(hertz[0]), float(hertz[-1]))
     axes.axhline(HALF_POWER, color=GREY, lw=0.8, zorder=1)
     axes.annotate(
         "−3 dB", (hertz[-1], HALF_POWER), (0, -10), textcoords="offset points", ha="right", color=GREY
     )
-    target = amplifier.output_capacitor.target_cutoff
     if target is not None:
         wanted = nominal(target)
         axes.axvline(wanted, color=GREY, lw=1.0, linestyle=(0, (5, 3)), zorder=1)

@@ -123,3 +123,26 @@ def test_without_figures_no_figure_room_is_imported():
     found = process("check", HEALTHY, "--step", "cold-checks", code=code).stdout.split()
     assert "safeamp.report.text" in found
     assert not {"matplotlib", "safeamp.figures"} & set(found)
+
+
+@pytest.mark.parametrize(
+    ("words", "shown"),
+    [
+        (["--capacitance", "2200 uF", "--load", "8 ohm"], ["into 8 ohm: 9.04 Hz", "low end): 11.3 Hz"]),
+        (["--cutoff", "20 Hz", "--load", "6.4 ohm"], ["2200 µF into 6.4 ohm: 11.3 Hz", "Target: 20 Hz"]),
+        (["--cutoff", "20 Hz", "--capacitance", "1000 uF ±20 %"], ["into 7.96 ohm: 20 Hz", "Target: 20 Hz"]),
+    ],
+)
+def test_low_notes_without_a_sheet(tmp_path, words, shown):
+    done = run("capacitor", *words, "--figures", tmp_path)
+    assert done.stdout == run("capacitor", *words).stdout
+    assert [path.name for path in tmp_path.iterdir()] == ["low-notes.svg"]
+    text = (tmp_path / "low-notes.svg").read_text(encoding="utf-8")
+    assert [one for one in shown if one not in text] == []
+
+
+def test_a_rating_alone_has_no_figure_and_says_so(tmp_path):
+    done = run("capacitor", "--single-rail", "60 V", "--figures", tmp_path)
+    assert done.exit_code == run("capacitor", "--single-rail", "60 V").exit_code
+    assert "no figure: neither a cutoff nor a capacitance was asked for" in done.stderr
+    assert list(tmp_path.iterdir()) == []

@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 
-from safeamp.answers import QuickAnswer
+from safeamp.answers import Bass, QuickAnswer
 from safeamp.checks.thermal import ONE_THIRD
 from safeamp.complaints import OptionsError
 from safeamp.findings import Measure
@@ -42,12 +44,12 @@ def capacitor_answer(desk: Desk) -> QuickAnswer:
     _ask(desk)
     _fill(desk)
     page = Page(desk.cases())
-    _value(page)
+    bass = _value(page)
     if desk.has("single_rail"):
         _rating(page)
     if desk.has("power"):
         _ripple(page)
-    return page.answer("Output capacitor", "the bass cutoff alone", CAUTIONS)
+    return replace(page.answer("Output capacitor", "the bass cutoff alone", CAUTIONS), bass=bass)
 
 
 def _ask(desk: Desk) -> None:
@@ -78,14 +80,29 @@ def _fill(desk: Desk) -> None:
         desk.assume("tolerance", 1.0 - default.low, PERCENT, "usual low end of an electrolytic")
 
 
-def _value(page: Page) -> None:
-    desk = page.cases.desk
-    if desk.has("capacitance", "load"):
-        _cutoff(page, page.cases["capacitance"])
-    elif desk.has("capacitance", "cutoff"):
-        _load(page)
-    elif desk.has("cutoff"):
-        _size(page)
+def _value(page: Page) -> Bass | None:
+    """Add what is left out of the three, and return what can be drawn of them."""
+    cases = page.cases
+    if cases.desk.has("capacitance", "load"):
+        _cutoff(page, cases["capacitance"])
+        return _bass(cases, cases["capacitance"], cases["load"])
+    if cases.desk.has("capacitance", "cutoff"):
+        return _bass(cases, cases["capacitance"], _load(page))
+    if cases.desk.has("cutoff"):
+        return _bass(cases, _size(page), cases["load"])
+    return None
+
+
+def _bass(cases: Cases, farads: Number, load: Number) -> Bass:
+    all_of = np.atleast_1d(np.asarray(farads, dtype=float))
+    target = float(np.ravel(cases["cutoff"])[0]) if cases.desk.has("cutoff") else None
+    return Bass(
+        capacitance=float(all_of[0]),
+        low=float(np.min(all_of)),
+        high=float(np.max(all_of)),
+        load=float(np.ravel(load)[0]),
+        target=target,
+    )
 
 
 def _cutoff(page: Page, farads: Number) -> None:
@@ -113,16 +130,20 @@ def _ohms(cases: Cases) -> str:
     return shown(cases["load"], RESISTANCE)
 
 
-def _load(page: Page) -> None:
+def _load(page: Page) -> Number:
+    """Add the lowest load and return it."""
     cases = page.cases
     ohms = 1.0 / (2.0 * np.pi * cases["cutoff"] * cases["capacitance"])
     page.add("load", ohms, RESISTANCE)
     page.add_one("load_worst", float(np.max(ohms)), RESISTANCE)
     put = f"1 / (2 pi x {shown(cases['cutoff'], FREQUENCY)} x {shown(cases['capacitance'], CAPACITANCE)})"
     page.say("lowest load = 1 / (2 pi x cutoff x capacitance)", f"{put} = {shown(ohms, RESISTANCE)}")
+    found: Number = ohms
+    return found
 
 
-def _size(page: Page) -> None:
+def _size(page: Page) -> Number:
+    """Add what to buy and where it cuts off; return it with the low end of its tolerance."""
     cases = page.cases
     bare = capacitor.capacitance_for_cutoff(cutoff=cases["cutoff"], load_resistance=cases["load"])
     left = 1.0 - cases["tolerance"]
@@ -138,7 +159,9 @@ def _size(page: Page) -> None:
         f"{put} / {float(np.min(left)):.4g} = {shown(exact, CAPACITANCE)}; {shown(bought, CAPACITANCE)}",
     )
     corners = np.arange(len(cases.design.rows)) > 0
-    _cutoff(page, np.where(corners, bought * left, bought))
+    fitted: Number = np.where(corners, bought * left, bought)
+    _cutoff(page, fitted)
+    return fitted
 
 
 def _rating(page: Page) -> None:
