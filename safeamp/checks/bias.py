@@ -114,7 +114,10 @@ def _idle_text(amplifier: Amplifier, idle: Number, limits: Limits) -> str:
         return f"{text(idle, CURRENT)} of each device"
     drop = _shown(amplifier, idle)
     said = f"{text(drop, VOLTAGE)} across one emitter resistor is {text(idle, CURRENT)} of each device"
-    if _is_class_ab_bipolar(amplifier, idle, limits) and nominal(drop) < limits["bias.idle"].extra["dead_zone_below"]:
+    if (
+        _is_class_ab_bipolar(amplifier, idle, limits)
+        and nominal(drop) < limits["bias.idle"].extra["dead_zone_below"]
+    ):
         return f"{said}; so little leaves a dead zone around zero: crossover distortion, no danger"
     return said
 

@@ -25,6 +25,20 @@ def until_stopped(power: Number, acts_after: Number) -> tuple[Also, ...]:
     return (Also(ENERGY_AT, nominal(power) * nominal(acts_after), ENERGY),)
 
 
+def fault_current(amplifier: Amplifier, volts: Number, coil: Number) -> Number:
+    """Return the current, A, of all loudspeakers together at a direct voltage on each coil, alone on the rail.
+
+    A series resistor counts, for it slows every fuse down; the heat of the coil is judged as if it were not there.
+    """
+    parallel, series = needed(amplifier, "loudspeaker.parallel", "loudspeaker.series")
+    resistor = amplifier.stage.series_resistor
+    alone: Number = volts / coil * parallel
+    if resistor is None:
+        return alone
+    whole = coil * series / parallel
+    return alone * whole / (whole + resistor)
+
+
 def rail_fuse_also(
     amplifier: Amplifier, volts: Number, gates_of: Callable[[Fuse], Gates]
 ) -> tuple[Also, ...]:
@@ -33,14 +47,12 @@ def rail_fuse_also(
     fitted = None if whole is None else whole.supply.rail_fuse
     if whole is None or not isinstance(fitted, Fuse):
         return ()
-    coil, limit, parallel = needed(
-        whole, "loudspeaker.dc_resistance", "loudspeaker.coil_limit", "loudspeaker.parallel"
-    )
+    coil, limit = needed(whole, "loudspeaker.dc_resistance", "loudspeaker.coil_limit")
     hottest = 1.0 if np.isnan(nominal(limit)) else copper_ratio(rise=nominal(limit) - 20.0)
-    current = nominal(volts) / nominal(coil) * nominal(parallel)
+    current = nominal(fault_current(whole, volts, coil))
     if np.isnan(current):
         return ()
-    times = current / hottest / fitted.rating
+    times = nominal(fault_current(whole, volts, coil * hottest)) / fitted.rating
     return (
         Also("current of the rail fuse, coil cold", current, CURRENT),
         Also(FUSE_AT, float(times), RATIO),

@@ -8,7 +8,7 @@ import numpy as np
 
 from safeamp.amplifier import Amplifier, Fuse
 from safeamp.checks import operating
-from safeamp.checks.fault_also import rail_fuse_also, until_stopped
+from safeamp.checks.fault_also import fault_current, rail_fuse_also, until_stopped
 from safeamp.checks.programme import ROOM, programme_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
@@ -229,10 +229,8 @@ def fuse_time(amplifier: Amplifier, fault: Fault, limits: Limits) -> Number:
         return np.inf if "protection.loudspeaker_fuse" in amplifier.absent else np.nan
     coil, limit = needed(amplifier, "loudspeaker.dc_resistance", "loudspeaker.coil_limit")
     hot = coil * (1.0 + COPPER * (np.fmax(limit, 20.0) - 20.0))
-    parallel = needed(amplifier, "loudspeaker.parallel")[0]
-    return slowest_time(
-        times_rating=fault.volts / hot * parallel / fitted.rating, gates=gates_of(fitted, limits)
-    )
+    times = fault_current(amplifier, fault.volts, hot) / fitted.rating
+    return slowest_time(times_rating=times, gates=gates_of(fitted, limits))
 
 
 def gates_of(fuse: Fuse, limits: Limits) -> Gates:

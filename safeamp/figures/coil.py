@@ -10,6 +10,7 @@ from matplotlib.axes import Axes
 from safeamp.amplifier import Amplifier
 from safeamp.checks import loudspeaker as check
 from safeamp.checks import operating
+from safeamp.checks.fault_also import fault_current
 from safeamp.checks.trace import needed
 from safeamp.checks.words import nominal, text
 from safeamp.figures.look import BELOW, BLACK, BLUE, GREY, VERMILLION, WASH, NotDrawnError, logarithmic
@@ -73,8 +74,8 @@ def _earliest(amplifier: Amplifier, found: check.Fault, limits: Limits) -> float
     fitted = amplifier.protection.loudspeaker_fuse
     if fitted is None:
         return np.nan
-    coil, parallel = needed(amplifier, "loudspeaker.dc_resistance", "loudspeaker.parallel")
-    times = found.volts / coil * parallel / fitted.rating
+    (coil,) = needed(amplifier, "loudspeaker.dc_resistance")
+    times = fault_current(amplifier, found.volts, coil) / fitted.rating
     return nominal(fastest_time(times_rating=times, gates=check.gates_of(fitted, limits)))
 
 

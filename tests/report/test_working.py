@@ -87,6 +87,12 @@ OTHERWISE = {
     "set cold": {"stage.idle_at": "cold"},
     "a heatsink each": {"heatsink.each": True},
     "a fuse": {"protection.loudspeaker_fuse": "F 1 A", "protection.trip_delay": "none"},
+    "a fuse behind a resistor": {
+        "protection.loudspeaker_fuse": "F 1 A",
+        "protection.trip_delay": "none",
+        "stage.series_resistor": "1 ohm",
+        "loudspeaker.parallel": 2,
+    },
     "no fuse printed": {"supply.rail_fuse_rated": "none"},
     "a transformer": {"supply.transformer_power": "80 W", "supply.secondary": "16 V"},
     "two devices": {"device.other": WARM, "stage.lower": "other"},

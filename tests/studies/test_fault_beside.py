@@ -57,6 +57,27 @@ def test_two_loudspeakers_in_parallel_draw_twice_the_current():
     assert beside(fault({"loudspeaker.parallel": 2}), CURRENT) == pytest.approx(2.0 * 22.0 / 6.2)
 
 
+SERIES = {"stage.series_resistor": "6 ohm, measured", "protection.trip_delay": "none"}
+
+
+def test_a_series_resistor_slows_the_fuse_and_never_makes_it_a_go():
+    # 22 V on 6.2*1.707 ohm hot: 2.08 A, 3.3 times 0.63 A, 10 s; 6 ohm before it leave 1.33 A, 2.1 times: 30 min.
+    fuse = {"protection.loudspeaker_fuse": "T 630 mA"}
+    alone, behind = fault({"protection.trip_delay": "none", **fuse}), fault({**SERIES, **fuse})
+    acts = "protection acts after"
+    assert beside(alone, acts) == pytest.approx(10.0)
+    assert beside(behind, acts) > 100.0
+    assert behind.verdict >= alone.verdict
+    hot = 6.2 * (1.0 + 0.00393 * 180.0)
+    assert beside(behind, TIMES) == pytest.approx(22.0 / (hot + 6.0) / 2.0)
+    assert beside(behind, CURRENT) == pytest.approx(22.0 / (6.2 + 6.0))
+
+
+def test_a_series_resistor_stands_before_all_loudspeakers_together():
+    two = {**SERIES, "loudspeaker.parallel": 2}
+    assert beside(fault(two), CURRENT) == pytest.approx(22.0 / (3.1 + 6.0))
+
+
 @pytest.mark.parametrize(
     "gone", [{"supply.rail_fuse": "none"}, {"supply.rail_fuse": GONE}, {"loudspeaker.dc_resistance": GONE}]
 )

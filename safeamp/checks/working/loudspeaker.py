@@ -8,6 +8,7 @@ import numpy as np
 
 from safeamp.checks import loudspeaker as checks
 from safeamp.checks import operating
+from safeamp.checks.fault_also import fault_current
 from safeamp.checks.programme import ROOM
 from safeamp.checks.working.load import believed, counts, load
 from safeamp.checks.working.paper import Paper
@@ -107,8 +108,13 @@ def _acts(paper: Paper, fault: Any) -> None:
     )
     formula = f"R_dc * (1 + {checks.COPPER:g} * (max(T_coil_limit, 20) - 20))"
     paper.put("R_hot", "the coil at its limit: copper", formula, hot, RESISTANCE)
-    times = paper.value("V_coil") / paper.value("R_hot") * paper.value("n_parallel") / fuse.rating
-    formula = "V_coil / R_hot * n_parallel / I_fuse"
+    formula = "V_coil / R_hot * n_parallel"
+    if amplifier.stage.series_resistor is not None:
+        paper.given("R_series", "stage.series_resistor", RESISTANCE)
+        whole = "R_hot * n_series / n_parallel"
+        formula = f"{formula} * {whole} / ({whole} + R_series)"
+    times = fault_current(amplifier, fault.volts, hot) / fuse.rating
+    formula = f"{formula} / I_fuse"
     paper.put("x", "current with hot coils over the rating of the fuse", formula, times)
     paper.found(
         "t_fuse", "the fuse has acted after", checks.fuse_time(amplifier, fault, paper.limits), TIME, GATES
