@@ -2,6 +2,7 @@
 
 import pytest
 
+from safeamp.findings import Verdict
 from tests.scenarios.sheets import GONE, beside, finding, report
 
 ENERGY, CURRENT = "energy into the coil until then, at most", "current of the rail fuse, coil cold"
@@ -71,6 +72,14 @@ def test_a_series_resistor_slows_the_fuse_and_never_makes_it_a_go():
     hot = 6.2 * (1.0 + 0.00393 * 180.0)
     assert beside(behind, TIMES) == pytest.approx(22.0 / (hot + 6.0) / 2.0)
     assert beside(behind, CURRENT) == pytest.approx(22.0 / (6.2 + 6.0))
+
+
+@pytest.mark.parametrize("fuse", ["T 500 mA", "F 630 mA"])
+def test_a_fuse_that_acts_in_time_alone_is_no_go_behind_a_resistor(fuse):
+    known = {"protection.trip_delay": "none", "protection.trip_voltage": "none"}
+    known["protection.loudspeaker_fuse"] = fuse
+    assert fault(known).verdict is Verdict.GO
+    assert fault({**known, "stage.series_resistor": "6 ohm, measured"}).verdict is Verdict.CAUTION
 
 
 def test_a_series_resistor_stands_before_all_loudspeakers_together():
