@@ -92,6 +92,13 @@ def _span(bad: Cases) -> float:
     return 2.0 * float(np.max(finite, initial=0.0)) + 1.0
 
 
+def _worst(bad: Cases, value: Cases) -> int:
+    """Return the worst case; a corner that differs from the nominal by rounding alone is none."""
+    worst = int(np.argmax(bad))
+    slack = CLOSE * abs(value[0]) if np.isfinite(value[0]) else 0.0
+    return 0 if bad[worst] <= bad[0] + slack else worst
+
+
 def _never(level: Cases, sense: Sense) -> Marks:
     """Return where a level is set so that no value can keep it."""
     marks: Marks = np.isposinf(level) if sense == "at least" else np.isneginf(level)
@@ -120,7 +127,7 @@ def judge(measure: Measure, limit: Limit, guessed: Marks, words: tuple[str, ...]
     """
     value = _spread(measure.value, len(guessed))
     bounds = bounds_of(measure, limit, len(guessed))
-    worst = int(np.argmax(badness(value, bounds)))
+    worst = _worst(badness(value, bounds), value)
     unbounded = bool(np.isinf(value[0])) and bounds.sense != "at least"
     verdict, because = _word(measure, value, bounds, guessed, words)
     for remark in measure.remarks:

@@ -295,6 +295,24 @@ def test_the_worst_case_is_the_one_shown(values, bounds, worst):
 
 
 @pytest.mark.parametrize(
+    ("values", "bounds", "worst"),
+    [
+        ([0.5, 0.5 * (1 + 1e-12)], AT_MOST, 0),
+        ([0.5, 0.5 * (1 + 0.9e-9)], AT_MOST, 0),
+        ([0.5, 0.5 * (1 + 1.1e-9)], AT_MOST, 1),
+        ([20.0, 20.0 * (1 - 1e-12)], AT_LEAST, 0),
+        ([20.0, 20.0 * (1 - 1.1e-9)], AT_LEAST, 1),
+        ([INF, INF], AT_LEAST, 0),
+        ([INF, 20.0], AT_LEAST, 1),
+        ([0.5, NAN], AT_MOST, 1),
+        ([0.5, INF], AT_MOST, 1),
+    ],
+)
+def test_rounding_makes_no_worst_case(values, bounds, worst):
+    assert word(values, bounds).worst == worst
+
+
+@pytest.mark.parametrize(
     ("sense", "values", "go", "stop", "worst"),
     [
         (
