@@ -229,7 +229,8 @@ def _finding(
         kind=kind,
         says=measure.says,
         nominal=_at(measure.value, 0),
-        worst=_at(over_cases.value, judgement.worst),
+        # Of a single case and of an array the last digit may differ: the nominal is one number.
+        worst=_at(over_cases.value, judgement.worst) if judgement.worst else _at(measure.value, 0),
         unbounded=judgement.unbounded,
         bound=_bound(measure, limit),
         because=judgement.because,
