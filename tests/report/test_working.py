@@ -11,6 +11,7 @@ from safeamp.checks import CHECKS
 from safeamp.checks.working.book import WORKINGS, working_of
 from safeamp.checks.working.paper import Paper
 from safeamp.checks.working.register import working as register
+from safeamp.physics.fuse import GATES, slowest_time
 from safeamp.quantities import RATIO
 from safeamp.report.working import number, put_in
 from safeamp.studies.verdict import verdict
@@ -92,6 +93,11 @@ OTHERWISE = {
         "protection.trip_delay": "none",
         "stage.series_resistor": "1 ohm",
         "loudspeaker.parallel": 2,
+    },
+    "a fuse behind a series resistor": {
+        "protection.loudspeaker_fuse": "F 1 A",
+        "protection.trip_delay": "none",
+        "stage.series_resistor": "1 ohm",
     },
     "no fuse printed": {"supply.rail_fuse_rated": "none"},
     "a transformer": {"supply.transformer_power": "80 W", "supply.secondary": "16 V"},
@@ -241,6 +247,15 @@ def test_a_settled_current_is_proved_by_putting_it_in(worked, name, changes):
         assert given == pytest.approx(values[symbol], rel=1e-6, abs=1e-9)
     settled = [value for symbol, value in values.items() if symbol.startswith("u_")]
     assert len(proofs) == sum(value is not None and math.isfinite(value) for value in settled)
+
+
+@pytest.mark.parametrize("label", ["a fuse", "a fuse behind a series resistor"])
+def test_the_time_of_a_fuse_is_that_of_the_current_on_the_paper(worked, label):
+    values = {
+        line.symbol: line.value
+        for line in worked("healthy", OTHERWISE[label])["loudspeaker.dc_fault"][1].lines
+    }
+    assert values["t_fuse"] == slowest_time(times_rating=values["x"], gates=GATES["F"])
 
 
 def test_settled_currents_are_proved_at_all(worked):
