@@ -9,7 +9,7 @@ from safeamp.amplifier.load import Curve, Limiter, Loudspeaker, Readings
 from safeamp.amplifier.power import Fins, Fuse, Heatsink, Mains, Protection, Supply
 from safeamp.amplifier.sheet import Assumption, Entry, Sheet
 from safeamp.amplifier.stage import Device, OutputCapacitor, Stage
-from safeamp.amplifier.tree import TABLES, Amplifier, value_at, with_values, written_key
+from safeamp.amplifier.tree import TABLES, Amplifier, is_mapping, value_at, with_values, written_key
 
 __all__ = [
     "TABLES",
@@ -32,6 +32,7 @@ __all__ = [
     "Stage",
     "Supply",
     "at_case",
+    "is_mapping",
     "keys_of",
     "number_of_cases",
     "value_at",

@@ -2,7 +2,10 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import Field, dataclass, field, fields
+from functools import cache
+from types import MappingProxyType
 from typing import Any
 
 from safeamp.quantities import RATIO, Kind, Sign
@@ -69,7 +72,14 @@ def key_of(item: Field[Any]) -> Key | None:
     return item.metadata.get("key")
 
 
-def keys_of(table: Any) -> dict[str, Key]:
+def keys_of(table: Any) -> Mapping[str, Key]:
     """Return name -> Key of a noun class or instance, internal keys left out."""
-    found = {item.name: key_of(item) for item in fields(table)}
-    return {name: key for name, key in found.items() if key is not None and not key.internal}
+    return _keys_of(table if isinstance(table, type) else type(table))
+
+
+@cache
+def _keys_of(noun: Any) -> Mapping[str, Key]:
+    found = {item.name: key_of(item) for item in fields(noun)}
+    return MappingProxyType(
+        {name: key for name, key in found.items() if key is not None and not key.internal}
+    )

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, field, replace
+from functools import cache
 from typing import Any
 
 from safeamp.amplifier.load import Loudspeaker, Readings
@@ -62,6 +63,17 @@ class Amplifier:
         return self.origins.get(path)
 
 
+def is_mapping(node: Any) -> bool:
+    """Whether a node is a mapping; thousands of reads in one verdict ask it of a dozen types."""
+    kind: Any = type(node)
+    return _are_mappings(kind)
+
+
+@cache
+def _are_mappings(kind: Any) -> bool:
+    return issubclass(kind, Mapping)
+
+
 def value_at(node: Any, path: str) -> Any:
     """Return the value at a key path such as `device.fitted.power` or `supply.no_load.0`.
 
@@ -71,10 +83,10 @@ def value_at(node: Any, path: str) -> Any:
         If there is no such place.
     """
     for name in path.split("."):
-        if isinstance(node, Mapping):
-            node = node[name]
-        elif isinstance(node, tuple):
+        if isinstance(node, tuple):
             node = node[int(name)]
+        elif is_mapping(node):
+            node = node[name]
         else:
             node = getattr(node, name)
     return node
@@ -99,6 +111,7 @@ def with_values(amplifier: Amplifier, values: Mapping[str, Any]) -> Amplifier:
     return amplifier
 
 
+@cache
 def written_key(path: str) -> str:
     """Return the key as a user writes it, for the path of a value inside the program."""
     path = STANDS_FOR.get(path, path)

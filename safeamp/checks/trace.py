@@ -4,9 +4,10 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, field, is_dataclass
+from functools import cache
 from typing import Any, cast
 
-from safeamp.amplifier import Amplifier, value_at, written_key
+from safeamp.amplifier import Amplifier, is_mapping, value_at, written_key
 
 NAN = float("nan")
 
@@ -32,11 +33,12 @@ class _Watched:
 
     def __getattr__(self, name: str) -> Any:
         node = self._node
-        found = node[name] if isinstance(node, Mapping) else getattr(node, name)
+        found = node[name] if is_mapping(node) else getattr(node, name)
         if callable(found) or name in {"absent", "origins"}:
             return found
         path = f"{self._path}.{name}" if self._path else name
-        if isinstance(found, Mapping) or _is_table(found):
+        kind: Any = type(found)
+        if _is_table(kind):
             return _Watched(found, path, self.trace)
         self.trace.reads[path] = None
         return found
@@ -50,9 +52,10 @@ def aside(amplifier: Amplifier) -> Amplifier:
     return cast(Amplifier, _Watched(cast(Any, amplifier)._node, "", Trace(reads=trace.shown)))
 
 
-def _is_table(found: Any) -> bool:
-    """Tell a table from a leaf such as a fuse: tables hold arrays and so compare by identity alone."""
-    return is_dataclass(found) and type(found).__eq__ is object.__eq__
+@cache
+def _is_table(kind: Any) -> bool:
+    """Tell the type of a table from that of a leaf such as a fuse: tables hold arrays and compare by identity alone."""
+    return issubclass(kind, Mapping) or (is_dataclass(kind) and kind.__eq__ is object.__eq__)
 
 
 def watched(amplifier: Amplifier, trace: Trace) -> Amplifier:

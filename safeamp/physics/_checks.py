@@ -33,7 +33,8 @@ def first_bad(value: ArrayLike, bad: ArrayLike) -> object:
 
 def refuse(name: str, value: ArrayLike, bad: ArrayLike, rule: str) -> None:
     """Raise ValueError naming the first bad element; nan is never bad, it passes on as nan."""
-    if np.any(bad):
+    # A single number is asked thousands of times in one verdict, and its truth costs a hundredth of np.any.
+    if bad if isinstance(bad, np.bool_) else np.any(bad):
         raise ValueError(f"{name} must be {rule}, got {first_bad(value, bad)}")
 
 

@@ -2,6 +2,7 @@
 
 import math
 from decimal import ROUND_HALF_UP, Context, Decimal
+from functools import lru_cache
 
 from safeamp.quantities.nouns import Kind, Reading
 from safeamp.quantities.units import scale
@@ -38,7 +39,12 @@ def show(value: float | None, kind: Kind, digits: int = 3) -> str:
         return "unknown"
     if math.isinf(value):
         return "unbounded"
-    exact = Decimal(repr(float(value)))
+    return _shown(float(value), kind, digits)
+
+
+@lru_cache(maxsize=1024)  # a report says the same few hundred numbers again and again
+def _shown(value: float, kind: Kind, digits: int) -> str:
+    exact = Decimal(repr(value))
     symbol, unit = _printing_unit(_round(exact, digits), kind)
     return f"{_plain(_round(_in_unit(exact, unit, kind), digits))} {symbol}".strip()
 

@@ -51,9 +51,9 @@ _VALUES: Final = (
 )
 
 
-def tables() -> dict[str, dict[str, Key]]:
+def tables() -> dict[str, Mapping[str, Key]]:
     """Return table -> name -> Key in the order of the sheet; the keys outside any table stand under "top"."""
-    found: dict[str, dict[str, Key]] = {"top": dict(TOP)}
+    found: dict[str, Mapping[str, Key]] = {"top": dict(TOP)}
     for name, noun in TABLES.items():
         found[name] = keys_of(noun)
         found |= {f"{name}.{inner}": keys_of(table) for inner, table in _inner(noun).items()}

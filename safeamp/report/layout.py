@@ -19,6 +19,8 @@ _COLOURS = {Verdict.GO: "32", Verdict.CAUTION: "33", Verdict.UNVERIFIED: "35", V
 
 def clean(text: str) -> str:
     """Return a text on one line without control characters: a title must not steer the terminal."""
+    if text.isprintable():
+        return " ".join(text.split())
     kept = (" " if unicodedata.category(letter) in ("Cc", "Cf", "Zl", "Zp") else letter for letter in text)
     return " ".join("".join(kept).split())
 
