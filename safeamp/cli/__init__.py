@@ -2,6 +2,7 @@
 
 import gc
 import os
+import sys
 
 #: What a start makes stays: looking through it for garbage again and again is lost time.
 _OBJECTS_BETWEEN_LOOKS = 200_000
@@ -12,8 +13,8 @@ def main() -> None:
     # Set before anything imports numpy: threads of a matrix library cost more than they bring here.
     os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     gc.set_threshold(_OBJECTS_BETWEEN_LOOKS)
-    from safeamp.cli.app import app
+    from safeamp.cli.app import program
     from safeamp.cli.output import prepare_streams
 
     prepare_streams()
-    app(prog_name="safeamp")
+    program(*sys.argv[1:2])(prog_name="safeamp")
