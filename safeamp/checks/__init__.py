@@ -1,6 +1,6 @@
 """Checks: an amplifier of cases and the limits in, measures out. They print nothing and judge nothing.
 
-A topic is imported when one of its checks is asked for: an answer about one topic does not wait for all.
+The topics are imported when the register is asked for: an answer about one topic does not wait for all.
 """
 
 from __future__ import annotations
@@ -17,7 +17,7 @@ if TYPE_CHECKING:
     CHECKS: dict[str, Check]
     TOPICS: tuple[ModuleType, ...]
 
-__all__ = ["CHECKS", "TOPICS", "Check", "check_of"]
+__all__ = ["CHECKS", "TOPICS", "Check"]
 
 # Findings of one step stand in this order.
 _TOPICS = (
@@ -35,14 +35,6 @@ _TOPICS = (
     "supply",
     "touch",
 )
-# Where the topic is not the first word of the id.
-_TOPIC_OF = {"bias.runaway": "runaway", "soa.loudspeaker": "safe_area", "soa.resistive_load": "safe_area"}
-
-
-def check_of(identity: str) -> Check:
-    """Return the check of one finding, from its topic alone."""
-    import_module(f"{__name__}.{_TOPIC_OF.get(identity) or identity.partition('.')[0]}")
-    return registry.CHECKS[identity]
 
 
 @cache

@@ -10,7 +10,6 @@ import numpy as np
 
 from safeamp.amplifier import Amplifier
 from safeamp.checks import curve, cycle, operating, thermal
-from safeamp.checks.as_built import as_built
 from safeamp.checks.beside import limiter_remarks, load_remarks, one_open_also, uncut_also, usable_also
 from safeamp.checks.driver import any_signal_also
 from safeamp.checks.registry import finding
@@ -305,6 +304,8 @@ def into_loudspeaker(amplifier: Amplifier) -> Number:
 @finding("soa.loudspeaker", Step.LOUDSPEAKER, RATIO)
 def check_loudspeaker(amplifier: Amplifier, limits: Limits) -> Measure:
     """Use of the safe area into the loudspeaker: nominal at its angle, minimum at 30 deg, the worse counts."""
+    from safeamp.checks.as_built import as_built  # alone it needs all that is known of loudspeakers
+
     worst = worst_into_loudspeaker(amplifier)
     open_load = _open_load(amplifier, worst)
     uncut = uncut_also(amplifier, worst.cut, into_loudspeaker)

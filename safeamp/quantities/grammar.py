@@ -4,9 +4,8 @@ Patterns are compiled, and refusals worded, when a text first asks for them.
 """
 
 import re
-from dataclasses import dataclass
 from decimal import Decimal
-from typing import Final
+from typing import Final, NamedTuple
 
 from safeamp.quantities.codes import match_code
 from safeamp.quantities.nouns import Kind, NotOfKindError, Origin, QuantityError
@@ -26,8 +25,7 @@ _VALUE: Final = rf"(?P<number>{_NUMBER}) ?(?P<unit>{_UNIT}?) ?(?P<tolerance>{_TO
 _AFTER_CODE: Final = rf" ?(?P<tolerance>{_TOLERANCE})?"
 
 
-@dataclass(frozen=True)
-class Written:
+class Written(NamedTuple):
     """What stands in a text, in the user's own unit.
 
     `minus` and `plus` are the tolerance as signed distances in `tolerance_unit` (``%`` or a unit);

@@ -10,18 +10,31 @@ import numpy as np
 
 from safeamp.amplifier import Entry
 from safeamp.answers import Amount, Formula, PutIn, QuickAnswer
-from safeamp.checks import check_of
 from safeamp.checks.judging import bounds_of, judge, nominal_bound
 from safeamp.checks.words import nominal
 from safeamp.complaints import OptionsError
-from safeamp.findings import Bound, Finding, Input, Measure, Remark, Verdict
+from safeamp.findings import Bound, Finding, Input, Measure, Remark, Step, Verdict
 from safeamp.limits import Limits
-from safeamp.quantities import VOLTAGE, Kind, Number, Origin, show
+from safeamp.quantities import FREQUENCY, POWER, RATIO, TEMPERATURE, VOLTAGE, Kind, Number, Origin, show
 from safeamp.studies import corners
 from safeamp.studies.corners import Design
 
 #: Highest over actual mains where nothing else is said (EN 50160).
 HIGHEST = 1.1
+
+#: Id of each finding that a quick answer may hold -> its step and kind, as the register of checks has them: to look
+#: there, an answer about one thing would import the formulas of all.
+JUDGED = {
+    "capacitor.cutoff": (Step.COLD_CHECKS, FREQUENCY),
+    "offset.output": (Step.BIAS, VOLTAGE),
+    "heat.heatsink": (Step.SOAK, TEMPERATURE),
+    "heat.junction": (Step.SOAK, TEMPERATURE),
+    "soa.resistive_load": (Step.LOAD_TEST, RATIO),
+    "loudspeaker.label": (Step.LOUDSPEAKER, RATIO),
+    "soa.loudspeaker": (Step.LOUDSPEAKER, RATIO),
+    "loudspeaker.power": (Step.LOUDSPEAKER, RATIO),
+    "loudspeaker.dc_fault": (Step.LOUDSPEAKER, POWER),
+}
 
 
 def dashed(*names: str) -> str:
@@ -154,7 +167,7 @@ class Cases:
 
     def finding(self, identity: str, measure: Measure, used: tuple[str, ...]) -> Finding:
         """Return a judged measure, by the limit and the kind of the finding of the same id."""
-        check, limit = check_of(identity), self.desk.limits[identity]
+        (step, kind), limit = JUDGED[identity], self.desk.limits[identity]
         inputs = tuple(self._input(name) for name in used if self.desk.has(name))
         measure = replace(measure, remarks=(*measure.remarks, *self._invented(used)))
         judgement = judge(measure, limit, self.design.guessed, self._moved())
@@ -163,9 +176,9 @@ class Cases:
         go = limit.go if measure.go is None and isinstance(limit.go, tuple) else nominal_bound(bounds.go)
         return Finding(
             id=identity,
-            step=check.step,
+            step=step,
             verdict=judgement.verdict,
-            kind=check.kind,
+            kind=kind,
             says=measure.says,
             nominal=_finite(values[0]),
             worst=_finite(values[judgement.worst]),
