@@ -26,8 +26,8 @@ LARGEST = 16 * 2**20
 #: From so many complaints on the rest is counted.
 LISTED = 50
 
-_CELL = re.compile(r"(?P<name>[^\[\]]*)\[(?P<unit>[^\[\]]*)\]\s*")
-_NUMBER = re.compile(r"[+-]?(?:[0-9]+(?:\.[0-9]*)?|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?")
+_CELL = r"(?P<name>[^\[\]]*)\[(?P<unit>[^\[\]]*)\]\s*"
+_NUMBER = r"[+-]?(?:[0-9]+(?:\.[0-9]*)?|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?"
 
 
 @dataclass
@@ -130,7 +130,7 @@ def _rows(text: str, file: _File) -> Iterator[tuple[int, list[str]]]:
 
 def _read_head(file: _File, line: int, cells: list[str]) -> None:
     for cell in cells:
-        found = _CELL.fullmatch(cell)
+        found = re.fullmatch(_CELL, cell)
         if found is None:
             file.complain(line, f'"{cell[:40]}" is not a column with its unit; write the head {HEAD}')
             continue
@@ -174,7 +174,7 @@ def _point(file: _File, line: int, cells: list[str]) -> tuple[float, ...] | None
 
 def _number(file: _File, line: int, name: str, factor: float, cell: str) -> float | None:
     plain = cell.replace("\u2212", "-")
-    if not _NUMBER.fullmatch(plain):
+    if not re.fullmatch(_NUMBER, plain):
         file.complain(line, f'"{cell[:40]}" is not a number of the column {name}; write digits and a point')
         return None
     kind, (low, high) = COLUMNS[name]

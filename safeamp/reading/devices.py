@@ -2,10 +2,13 @@
 
 from collections.abc import Mapping
 from dataclasses import dataclass
+from functools import cache
 from pathlib import Path
+from types import MappingProxyType
 from typing import Any
 
 from safeamp.complaints import Complaint, ReadingError
+from safeamp.reading.data import device_folder
 from safeamp.reading.document import Document, read_document
 
 
@@ -54,6 +57,12 @@ def device_files(folder: Path) -> dict[str, DeviceTable]:
     if complaints:
         raise ReadingError(tuple(complaints))
     return devices
+
+
+@cache
+def generic_devices() -> Mapping[str, DeviceTable]:
+    """Return the generic types that come with the program, read once; raises as `device_files`."""
+    return MappingProxyType(device_files(device_folder()))
 
 
 def _collect(document: Document, devices: dict[str, DeviceTable]) -> list[Complaint]:

@@ -9,13 +9,13 @@ from pathlib import Path
 from typing import Any
 
 from safeamp.complaints import Complaint, ReadingError
-from safeamp.reading.lines import line_index
 
 #: A sheet has a few kilobytes; far beyond that the file is something else.
 LARGEST = 2**20
 
-_AT = re.compile(r"\s*\(at (?:line (\d+), column \d+|end of document)\)$")
-_UNQUOTED = re.compile(r"\s*(?P<key>[A-Za-z0-9_.-]+)\s*=\s*(?P<value>[-+.\d][^\"'\[\]{}#]*?)\s*(?:#.*)?")
+# Patterns of trouble only: compiled when there is some.
+_AT = r"\s*\(at (?:line (\d+), column \d+|end of document)\)$"
+_UNQUOTED = r"\s*(?P<key>[A-Za-z0-9_.-]+)\s*=\s*(?P<value>[-+.\d][^\"'\[\]{}#]*?)\s*(?:#.*)?"
 _IN_QUOTES = 'write text and every value with a unit in quotes, such as "35 V"'
 
 
@@ -42,6 +42,8 @@ class Document:
 
     @cached_property
     def _lines(self) -> dict[tuple[str | int, ...], int]:
+        from safeamp.reading.lines import line_index  # only for a file of which a line is asked
+
         return line_index(self.text)
 
     def line(self, *key: str | int) -> int | None:
@@ -97,9 +99,9 @@ def parse_document(text: str, path: str, digest: str = "") -> Document:
     try:
         return Document(path, text, tomllib.loads(text), digest)
     except tomllib.TOMLDecodeError as trouble:
-        where = _AT.search(str(trouble))
+        where = re.search(_AT, str(trouble))
         line = int(where[1]) if where and where[1] else len(text.rstrip().split("\n"))
-        what = _AT.sub("" if where and where[1] else ", at the end of the file", str(trouble))
+        what = re.sub(_AT, "" if where and where[1] else ", at the end of the file", str(trouble))
         raise _refusal(path, line, f"is not valid TOML here ({what}); {_hint(text, line)}") from trouble
     except RecursionError as trouble:
         raise _refusal(path, None, "is nested too deeply; write plain tables and lists") from trouble
@@ -111,7 +113,7 @@ def parse_document(text: str, path: str, digest: str = "") -> Document:
 def _hint(text: str, line: int | None) -> str:
     """Return what to write instead; the commonest slip is a value with a unit and no quotes."""
     lines = text.split("\n")
-    found = _UNQUOTED.fullmatch(lines[line - 1].rstrip("\r")) if line and line <= len(lines) else None
+    found = re.fullmatch(_UNQUOTED, lines[line - 1].rstrip("\r")) if line and line <= len(lines) else None
     return f'write the value in quotes: {found["key"]} = "{found["value"]}"' if found else _IN_QUOTES
 
 

@@ -8,10 +8,9 @@ from pathlib import Path
 from safeamp.amplifier import Amplifier, Device, Sheet, Stage
 from safeamp.complaints import Complaint, ReadingError
 from safeamp.limits import nearest, plain
-from safeamp.reading.data import device_folder as shipped_folder
 from safeamp.reading.defaults import fill_plain
 from safeamp.reading.device_questions import ask_devices
-from safeamp.reading.devices import device_files
+from safeamp.reading.devices import device_files, generic_devices
 from safeamp.reading.draft import Draft, in_order
 from safeamp.reading.parts import read_devices
 
@@ -58,7 +57,7 @@ def read_device(name: str, folder: Path | None) -> Sheet:
 
 
 def _known(name: str, folder: Path | None) -> str:
-    names = [*(device_files(folder) if folder else {}), *device_files(shipped_folder())]
+    names = [*(device_files(folder) if folder else {}), *generic_devices()]
     typed = {plain(known): known for known in reversed(names)}
     if plain(name) in typed:
         return name if name in names else typed[plain(name)]

@@ -10,8 +10,7 @@ from typing import Any
 from safeamp.amplifier import Device
 from safeamp.limits import nearest, plain
 from safeamp.quantities import Origin
-from safeamp.reading.data import device_folder as shipped_folder
-from safeamp.reading.devices import DeviceTable, device_files
+from safeamp.reading.devices import DeviceTable, device_files, generic_devices
 from safeamp.reading.draft import Draft
 from safeamp.reading.walk import require, walk_table
 
@@ -37,13 +36,13 @@ def read_devices(draft: Draft, data: Mapping[str, Any], folder: Path | None) -> 
     """Read every device of the sheet, and those of folder and generic types that the stage names."""
     inline = _inline(draft, data)
     files = device_files(folder) if folder else {}
-    generic: dict[str, DeviceTable] | None = None
+    generic: Mapping[str, DeviceTable] | None = None
     for path, name in _named(draft):
         if plain(name) in {plain(known) for known in inline}:
             _rename(draft, path, name, inline)
             continue
         if generic is None and plain(name) not in {plain(known) for known in files}:
-            generic = device_files(shipped_folder())
+            generic = generic_devices()
         found = _rename(draft, path, name, [*inline, *files, *(generic or {})])
         if found is not None:
             _from_file(draft, found, files, generic or {})

@@ -21,11 +21,11 @@ LETTERS = {
     "tt": "TT", "long time lag": "TT",
 }  # fmt: skip
 
-_FUSE = re.compile(
+_FUSE = (
     r"(?P<letter>[A-Za-z -]*?)\s*(?P<rating>[\d.,]+\s*m?A)\s*"
     r"(?:[LHE]?\s*/?\s*\d{2,3}\s*V|[LHE])?\s*(?:,(?P<origin>[^,]*))?"
 )
-_LAMP = re.compile(r"(?:lamp\s*)?(?P<watts>[^,]*?W)\s*(?:lamp\s*)?(?P<rest>,.*)?", re.IGNORECASE)
+_LAMP = r"(?:lamp\s*)?(?P<watts>[^,]*?W)\s*(?:lamp\s*)?(?P<rest>,.*)?"
 _FUSE_FORM = 'write letter and rating, such as "T 2 A", or the imprint, such as "T2AL250V"'
 _LIMITER_FORM = 'write "60 W lamp", "22 ohm" or "bench"'
 
@@ -37,7 +37,7 @@ def fuse(text: str, _: Draft) -> tuple[Fuse, Origin]:
     ----------
     IEC 60127-2: letters of the time characteristics; preferred ratings lie within 0.03 A to 63 A.
     """
-    found = _FUSE.fullmatch(text.strip())
+    found = re.fullmatch(_FUSE, text.strip())
     if found is None:
         raise QuantityError(f'"{text}" is not read as a fuse', _FUSE_FORM)
     word = " ".join(found["letter"].lower().replace("-", " ").split())
@@ -58,7 +58,7 @@ def limiter(text: str, _: Draft) -> tuple[Limiter, Origin]:
     plain = text.strip()
     if plain.lower() in ("bench", "bench supply"):
         return Limiter("bench", None, text), Origin.STATED
-    lamp = _LAMP.fullmatch(plain)
+    lamp = re.fullmatch(_LAMP, plain, re.IGNORECASE)
     if lamp is not None and "lamp" in plain.lower():
         reading = _read_off(text, lamp["watts"] + (lamp["rest"] or ""), POWER, (1.0, 2000.0))
         return Limiter("lamp", reading.nominal, text), reading.origin
