@@ -7,6 +7,7 @@ from hypothesis import strategies as st
 
 from safeamp.physics import stage
 from safeamp.physics.stage import Law
+from safeamp.physics.stage.heat import _gauss_legendre
 
 BASE = {
     "half_supply": 34.0,
@@ -166,3 +167,12 @@ def test_heat_of_known_currents_is_the_balance_of_powers():
     assert stage.heat_of_currents(**known, conducting=2, emitter_resistor=0.22) == pytest.approx(94.004)
     with pytest.raises(ValueError, match="peak must be at most half_supply, got 31"):
         stage.heat_of_currents(**known | {"peak": 31}, conducting=2, emitter_resistor=0.22)
+
+
+@pytest.mark.parametrize("count", [1, 2, 20])
+def test_nodes_of_the_mean_are_those_of_numpy(count):
+    nodes, weights = _gauss_legendre(count)
+    theirs = np.polynomial.legendre.leggauss(count)
+    assert nodes == pytest.approx(theirs[0], abs=1e-14)
+    assert weights == pytest.approx(theirs[1], rel=1e-12)
+    assert sum(weights) == pytest.approx(2.0, rel=1e-14)
