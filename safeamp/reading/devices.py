@@ -1,10 +1,8 @@
 """Device files: one or more tables [device.NAME] each, as raw data for the reader of sheets."""
 
-from collections.abc import Mapping
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
-from functools import cache
 from pathlib import Path
-from types import MappingProxyType
 from typing import Any
 
 from safeamp.complaints import Complaint, ReadingError
@@ -59,10 +57,29 @@ def device_files(folder: Path) -> dict[str, DeviceTable]:
     return devices
 
 
-@cache
+class _OneByOne(Mapping[str, DeviceTable]):
+    """The devices of a folder whose files bear the names of their devices: a file is read when it is asked for."""
+
+    def __init__(self, folder: Path) -> None:
+        self._paths = {path.stem: path for path in sorted(folder.glob("*.toml"))}
+
+    def __getitem__(self, name: str) -> DeviceTable:
+        found: dict[str, DeviceTable] = {}
+        complaints = _collect(read_document(self._paths[name]), found)
+        if complaints:
+            raise ReadingError(tuple(complaints))
+        return found[name]
+
+    def __iter__(self) -> Iterator[str]:
+        return iter(self._paths)
+
+    def __len__(self) -> int:
+        return len(self._paths)
+
+
 def generic_devices() -> Mapping[str, DeviceTable]:
-    """Return the generic types that come with the program, read once; raises as `device_files`."""
-    return MappingProxyType(device_files(device_folder()))
+    """Return the generic types that come with the program; a look-up raises as `device_files`."""
+    return _OneByOne(device_folder())
 
 
 def _collect(document: Document, devices: dict[str, DeviceTable]) -> list[Complaint]:

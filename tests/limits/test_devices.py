@@ -6,7 +6,7 @@ import pytest
 
 from safeamp.quantities import CURRENT, POWER, TEMPERATURE, THERMAL_RESISTANCE, VOLTAGE, read
 from safeamp.reading.data import device_folder
-from safeamp.reading.devices import device_files
+from safeamp.reading.devices import device_files, generic_devices
 
 DEVICES = device_files(device_folder())
 WITH_SAFE_AREA = [name for name, device in DEVICES.items() if device.data["kind"] != "lateral mosfet"]
@@ -78,3 +78,12 @@ def test_mosfets_have_what_the_square_law_needs():
     for device in DEVICES.values():
         has = {"transconductance_parameter", "temperature_coefficient"} <= set(device.data)
         assert has == ("mosfet" in device.data["kind"])
+
+
+def test_each_file_bears_the_name_of_its_device():
+    # only so can one be read without the others
+    assert {name: table.data for name, table in generic_devices().items()} == {
+        name: table.data for name, table in DEVICES.items()
+    }
+    with pytest.raises(KeyError, match="nobody"):
+        generic_devices()["nobody"]
