@@ -5,7 +5,7 @@ from __future__ import annotations
 import enum
 from collections.abc import Mapping
 from dataclasses import dataclass, field
-from typing import Literal
+from typing import Literal, NamedTuple
 
 from safeamp.quantities import Kind, Number, Origin
 
@@ -61,16 +61,14 @@ class Step(enum.Enum):
         return list(Step).index(self)
 
 
-@dataclass(frozen=True)
-class Remark:
+class Remark(NamedTuple):
     """A fact that holds a finding at a word or worse: "at best caution, because ..."."""
 
     at_best: Verdict
     because: str
 
 
-@dataclass(frozen=True)
-class Also:
+class Also(NamedTuple):
     """A further number shown beside a finding."""
 
     at: str
@@ -107,8 +105,7 @@ class Measure:
     needs: tuple[str, ...] = ()
 
 
-@dataclass(frozen=True)
-class AsBuilt:
+class AsBuilt(NamedTuple):
     """Whether the maker's own ratings cover this amplifier, and which key would say so."""
 
     holds: bool
@@ -116,8 +113,7 @@ class AsBuilt:
     missing: tuple[str, ...] = ()
 
 
-@dataclass(frozen=True)
-class NotApplicable:
+class NotApplicable(NamedTuple):
     """A finding that cannot apply, with the stated key that says so."""
 
     because: str

@@ -5,7 +5,7 @@ from dataclasses import dataclass, field
 from difflib import get_close_matches
 from math import inf
 from types import MappingProxyType
-from typing import Literal, TypeVar
+from typing import Literal, NamedTuple, TypeVar
 
 from safeamp.quantities import Kind
 
@@ -82,8 +82,7 @@ class Default:
     says: str
 
 
-@dataclass(frozen=True)
-class Interface:
+class Interface(NamedTuple):
     """Thermal resistance from case to heatsink, K/W, of one package and insulator, with its spread."""
 
     name: str
@@ -94,8 +93,7 @@ class Interface:
     evidence: str
 
 
-@dataclass(frozen=True)
-class Gate:
+class Gate(NamedTuple):
     """Pre-arcing time of a fuse, s, at one multiple of its rating; inf where it may never open."""
 
     times_rating: float
@@ -103,8 +101,7 @@ class Gate:
     longest: float = inf
 
 
-@dataclass(frozen=True)
-class FuseGates:
+class FuseGates(NamedTuple):
     """Gates of one fuse characteristic, by rising multiples of the rating."""
 
     letter: str
@@ -114,8 +111,7 @@ class FuseGates:
     says: str
 
 
-@dataclass(frozen=True)
-class Series:
+class Series(NamedTuple):
     """A series of preferred or declared values, rising; SI units of `kind`, the E series over one decade."""
 
     name: str

@@ -3,14 +3,13 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, NamedTuple
 
 if TYPE_CHECKING:
     from safeamp.physics.safe_area import Pulse, Rating
 
 
-@dataclass(frozen=True, eq=False)
-class Path:
+class Path(NamedTuple):
     """The path of one load: its name, V and A of the device along it, shape (points,)."""
 
     name: str

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, NamedTuple
 
 from safeamp.findings import Finding, Verdict
 from safeamp.quantities import Kind
@@ -12,8 +12,7 @@ if TYPE_CHECKING:
     from safeamp.answers.plane import Plane
 
 
-@dataclass(frozen=True)
-class PutIn:
+class PutIn(NamedTuple):
     """A value that a quick answer was computed with; `why` is empty for one that the user gave."""
 
     option: str
@@ -32,8 +31,7 @@ class Amount:
     high: float | None = None
 
 
-@dataclass(frozen=True)
-class Formula:
+class Formula(NamedTuple):
     """A formula in words, and with the numbers put in."""
 
     words: str

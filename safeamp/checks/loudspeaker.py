@@ -6,9 +6,10 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from safeamp.amplifier import Amplifier, Fuse
+from safeamp.amplifier import Amplifier
 from safeamp.checks import operating
 from safeamp.checks.fault_also import fault_current, rail_fuse_also, until_stopped
+from safeamp.checks.fuses import gates_of
 from safeamp.checks.programme import ROOM, programme_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
@@ -17,12 +18,10 @@ from safeamp.findings import Also, Measure, Remark, Step, Verdict
 from safeamp.limits import Limits
 from safeamp.physics import capacitor, loudspeaker
 from safeamp.physics.coil_heating import time_to_temperature
-from safeamp.physics.fuse import Gates, slowest_time
+from safeamp.physics.fuse import slowest_time
 from safeamp.quantities import CURRENT, ENERGY, POWER, RATIO, RESISTANCE, TIME, VOLTAGE, Number
 
 COPPER = 0.00393
-#: Letter of the fuse that no other is slower than.
-SLOWEST = "TT"
 THERMAL = (
     "loudspeaker.coil_to_magnet",
     "loudspeaker.coil_time_constant",
@@ -231,19 +230,6 @@ def fuse_time(amplifier: Amplifier, fault: Fault, limits: Limits) -> Number:
     hot = coil * (1.0 + COPPER * (np.fmax(limit, 20.0) - 20.0))
     times = fault_current(amplifier, fault.volts, hot) / fitted.rating
     return slowest_time(times_rating=times, gates=gates_of(fitted, limits))
-
-
-def gates_of(fuse: Fuse, limits: Limits) -> Gates:
-    """Return the gates of a fuse's letter; without a table of its own the slower one's, and never acting if none is."""
-    table = limits.fuse_gates.get(fuse.letter)
-    if table is None and fuse.letter == SLOWEST:
-        return Gates(multiples=(1.0,), fastest=(0.0,), slowest=(np.inf,))
-    table = table or limits.fuse_gates["T"]
-    return Gates(
-        multiples=tuple(gate.times_rating for gate in table.gates),
-        fastest=tuple(gate.shortest for gate in table.gates),
-        slowest=tuple(gate.longest for gate in table.gates),
-    )
 
 
 def _fault_text(fault: Fault, power: Number, acts: Number, burns: Number, relay: Number) -> str:

@@ -11,6 +11,7 @@ from safeamp.amplifier import Amplifier
 from safeamp.checks import loudspeaker as check
 from safeamp.checks import operating
 from safeamp.checks.fault_also import fault_current
+from safeamp.checks.fuses import gates_of
 from safeamp.checks.trace import needed
 from safeamp.checks.words import nominal, text
 from safeamp.figures.look import BELOW, BLACK, BLUE, GREY, VERMILLION, WASH, NotDrawnError, logarithmic
@@ -76,7 +77,7 @@ def _earliest(amplifier: Amplifier, found: check.Fault, limits: Limits) -> float
         return np.nan
     (coil,) = needed(amplifier, "loudspeaker.dc_resistance")
     times = fault_current(amplifier, found.volts, coil) / fitted.rating
-    return nominal(fastest_time(times_rating=times, gates=check.gates_of(fitted, limits)))
+    return nominal(fastest_time(times_rating=times, gates=gates_of(fitted, limits)))
 
 
 def draw(axes: Axes, amplifier: Amplifier, limits: Limits) -> str:

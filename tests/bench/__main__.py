@@ -36,7 +36,7 @@ RUNS: dict[str, tuple[tuple[str, ...], float | None]] = {
     "import typer": (("-c", "import typer"), None),
     "import safeamp": (("-c", "import safeamp"), None),
     "import safeamp.quantities": (("-c", "import safeamp.quantities"), None),
-    "import reading": (("-c", "import safeamp.reading"), None),
+    "import reading": (("-c", "import safeamp.reading.sheets"), None),
     "import checks and studies": (("-c", "import safeamp.studies.verdict"), None),
     "safeamp offset": (("-c", MAIN, "offset", "--reading", "30 mV", "--dc-resistance", "6 ohm"), 3.5),
     "safeamp capacitor": (("-c", MAIN, "capacitor", "--cutoff", "20 Hz", "--load", "8 ohm"), 3.5),

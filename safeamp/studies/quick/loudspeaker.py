@@ -7,7 +7,7 @@ import numpy as np
 from safeamp.amplifier import Fuse
 from safeamp.answers import QuickAnswer
 from safeamp.checks import operating
-from safeamp.checks.loudspeaker import gates_of
+from safeamp.checks.fuses import gates_of
 from safeamp.findings import Measure
 from safeamp.physics import loudspeaker, stage
 from safeamp.physics.fuse import slowest_time
