@@ -88,6 +88,13 @@ def is_single(amplifier: Amplifier) -> bool:
     return amplifier.supply.rails == "single"
 
 
+def rail_to_rail_at_highest(amplifier: Amplifier) -> Number:
+    """Return the volts from rail to rail without load at the highest mains."""
+    rails = rails_as_read(amplifier)
+    total = rails[0] if is_single(amplifier) else rails[0] + rails[-1]
+    return total * highest_factor(amplifier)
+
+
 def is_capacitor_coupled(amplifier: Amplifier) -> bool:
     """Whether the loudspeaker hangs on an output capacitor."""
     return amplifier.stage.coupling == "capacitor"

@@ -83,7 +83,7 @@ def _without_plate(amplifier: Amplifier, fitted: Fuse, limits: Limits) -> Measur
 @finding("supply.rail_to_rail", Step.COLD_CHECKS, RATIO)
 def check_rail_to_rail(amplifier: Amplifier, limits: Limits) -> Measure:
     """Rail to rail at the highest mains without load over the weakest of outputs and drivers."""
-    span = _rail_to_rail(amplifier)
+    span = operating.rail_to_rail_at_highest(amplifier)
     weakest, name = _weakest(amplifier)
     return Measure(
         span / weakest,
@@ -95,12 +95,6 @@ def check_rail_to_rail(amplifier: Amplifier, limits: Limits) -> Measure:
         else "fit devices whose V_CEO (never V_CBO) stands rail to rail at the highest mains",
         method="no-load rails scaled to the highest mains, over the lowest V_CEO or V_DSS",
     )
-
-
-def _rail_to_rail(amplifier: Amplifier) -> Number:
-    rails = operating.rails_as_read(amplifier)
-    total = rails[0] if operating.is_single(amplifier) else (rails[0] + rails[-1])
-    return total * operating.highest_factor(amplifier)
 
 
 def _weakest(amplifier: Amplifier) -> tuple[Number, str]:

@@ -17,9 +17,7 @@ from safeamp.quantities import RESISTANCE, TEMPERATURE, VOLTAGE, Number
 @finding("touch.rails", Step.COLD_CHECKS, VOLTAGE)
 def check_rails(amplifier: Amplifier, limits: Limits) -> Measure:
     """Sum of the rails at the highest mains."""
-    rails = operating.rails_as_read(amplifier)
-    total = rails[0] if operating.is_single(amplifier) else rails[0] + rails[-1]
-    value = total * operating.highest_factor(amplifier)
+    value = operating.rail_to_rail_at_highest(amplifier)
     return Measure(
         value,
         f"{text(value, VOLTAGE)} between the rails at the highest mains",
