@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import Any
 from weakref import WeakKeyDictionary
 
 import numpy as np
@@ -28,6 +29,10 @@ class Dissipation:
 
 #: Several checks ask for the heat of the same level of the same cases; it is the dearest number of most of them.
 _KNOWN: WeakKeyDictionary[Amplifier, dict[tuple[float, float], Dissipation]] = WeakKeyDictionary()
+#: The devices of a level at an angle carry what they carry without it, unless the angle changes the peak current.
+_CARRIED: WeakKeyDictionary[Amplifier, list[tuple[Device, Number, stage.MeanCurrents]]] = (
+    WeakKeyDictionary()
+)
 
 
 def no_signal(amplifier: Amplifier) -> Dissipation:
@@ -85,7 +90,7 @@ def _sine(
         "law": operating.law_of(device),
         "transconductance_parameter": device.transconductance_parameter,
     }
-    currents = stage.mean_currents(peak_current=peak / magnitude, **common)
+    currents = _mean_currents(amplifier, device, peak / magnitude, common)
     power = stage.heat_of_currents(
         currents=currents,
         half_supply=operating.level_half_supply(amplifier, fraction),
@@ -96,6 +101,19 @@ def _sine(
         emitter_resistor=common["emitter_resistor"],
     )
     return Dissipation(power, currents.mean)
+
+
+def _mean_currents(
+    amplifier: Amplifier, device: Device, peak_current: Number, common: dict[str, Any]
+) -> stage.MeanCurrents:
+    if not isinstance(amplifier, Amplifier):
+        return stage.mean_currents(peak_current=peak_current, **common)
+    known = _CARRIED.setdefault(amplifier, [])
+    for one, peak, currents in known:
+        if one is device and np.array_equal(peak, peak_current):
+            return currents
+    known.append((device, peak_current, stage.mean_currents(peak_current=peak_current, **common)))
+    return known[-1][2]
 
 
 @dataclass(frozen=True, eq=False)
