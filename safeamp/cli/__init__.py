@@ -5,7 +5,7 @@ import os
 import sys
 
 #: What a start makes stays: looking through it for garbage again and again is lost time.
-_OBJECTS_BETWEEN_LOOKS = 200_000
+_OBJECTS_BETWEEN_LOOKS = 500_000
 
 
 def main() -> None:
@@ -17,4 +17,7 @@ def main() -> None:
     from safeamp.cli.output import prepare_streams
 
     prepare_streams()
-    program(*sys.argv[1:2])(prog_name="safeamp")
+    try:
+        program(*sys.argv[1:2])(prog_name="safeamp")
+    finally:
+        gc.disable()  # the end of the process would look through all once more
