@@ -37,7 +37,8 @@ def explained(
     for identity in wanted:
         if identity not in there:
             raise KeyError(_absent(identity, report))
-    found = {identity: working_of(identity, sheet.amplifier, limits) for identity in wanted}
+    values = {finding.id: finding.nominal for finding in report.findings}
+    found = {identity: working_of(identity, sheet.amplifier, limits, values[identity]) for identity in wanted}
     return {identity: working for identity, working in found.items() if working is not None}
 
 

@@ -32,8 +32,15 @@ def working(identity: str) -> Callable[[Writer], Writer]:
     return register
 
 
-def working_of(identity: str, amplifier: Amplifier, limits: Limits) -> Working | None:
+def working_of(
+    identity: str, amplifier: Amplifier, limits: Limits, value: float | None = None
+) -> Working | None:
     """Return how the nominal value of a finding comes about; None where the check has none for this amplifier.
+
+    Parameters
+    ----------
+    value : float, optional
+        The nominal value where a report has it already; the check is run once more where it is unknown or unbounded.
 
     Raises
     ------
@@ -44,10 +51,12 @@ def working_of(identity: str, amplifier: Amplifier, limits: Limits) -> Working |
     paper = Paper(amplifier, limits)
     with np.errstate(all="ignore"):
         try:
-            measure = check.run(amplifier, limits)
-            if not isinstance(measure, Measure):
-                return None
-            WORKINGS[identity](paper, measure.value)
+            if value is None:
+                measure = check.run(amplifier, limits)
+                if not isinstance(measure, Measure):
+                    return None
+                value = measure.value
+            WORKINGS[identity](paper, value)
         except (ValueError, ArithmeticError) as problem:
             paper.taken("value", f"cannot be computed: {problem}", None, check.kind, "no further line")
     return Working(identity, tuple(paper.lines))
