@@ -1,6 +1,8 @@
 """Figures: nouns in, pictures out. They read no file, judge nothing, and open no window."""
 
 from safeamp.figures.gallery import (
+    FIRST,
+    FURTHER,
     Gallery,
     LeftOut,
     bass_pictures,
@@ -12,6 +14,8 @@ from safeamp.figures.look import NotDrawnError, Picture, picture, rendered
 from safeamp.figures.svg import svg_text
 
 __all__ = [
+    "FIRST",
+    "FURTHER",
     "Gallery",
     "LeftOut",
     "NotDrawnError",

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Collection, Mapping
 from dataclasses import dataclass
 from functools import partial
 
@@ -17,6 +17,11 @@ from safeamp.figures.look import NotDrawnError, Picture
 from safeamp.figures.plane import finding_of, plane_of
 from safeamp.findings import Bound, Finding
 from safeamp.limits import Limits
+
+#: The figures of a page when no more are asked for: how much of everything is used, and the safe area.
+FIRST = ("overview", "safe-area")
+#: The others that a sheet can have, in their order.
+FURTHER = ("temperatures", "heat", "low-notes", "coil", "impedance", "cone-travel")
 
 
 @dataclass(frozen=True)
@@ -41,9 +46,12 @@ class _Plan:
     title: str
     draw: Callable[[Axes, Amplifier], str]
     height: float = look.HEIGHT
+    margins: look.Margins | None = None
 
 
-def pictures_of(sheet: Sheet, report: Report, limits: Limits) -> Gallery:
+def pictures_of(
+    sheet: Sheet, report: Report, limits: Limits, names: Collection[str] = (*FIRST, *FURTHER)
+) -> Gallery:
     """Return the pictures of a sheet and its report.
 
     Parameters
@@ -54,8 +62,11 @@ def pictures_of(sheet: Sheet, report: Report, limits: Limits) -> Gallery:
         What was found on that sheet.
     limits : Limits
         What the findings were judged by.
+    names : collection of str, optional
+        Which pictures are wanted; all of them unless said.
     """
-    return _gallery(_plans(sheet, report, limits), sheet.amplifier)
+    plans = [plan for plan in _plans(sheet, report, limits) if plan.name in names]
+    return _gallery(plans, sheet.amplifier)
 
 
 def _plans(sheet: Sheet, report: Report, limits: Limits) -> list[_Plan]:
@@ -63,7 +74,7 @@ def _plans(sheet: Sheet, report: Report, limits: Limits) -> list[_Plan]:
     return [
         _Plan(
             "overview", overview.TITLE, lambda axes, _: overview.draw(axes, report.findings),
-            overview.height_of(report.findings),
+            overview.height_of(report.findings), overview.MARGINS,
         ),
         _Plan("safe-area", safe_area.TITLE, partial(_safe_area, found), safe_area.HEIGHT),
         _Plan("temperatures", temperatures.TITLE, lambda axes, one: temperatures.draw(axes, one, limits)),
@@ -135,6 +146,7 @@ def _drawn(plan: _Plan, amplifier: Amplifier) -> Picture:
                 plan.title,
                 lambda axes: plan.draw(axes, watched(amplifier, trace)),
                 height=plan.height,
+                margins=plan.margins,
             )
     except ValueError as problem:
         if trace.missing:

@@ -10,7 +10,7 @@ from typing import Any
 import numpy as np
 from matplotlib.axes import Axes
 
-from safeamp.figures.look import BLACK, BLUE, GREY, PALE, VERMILLION, NotDrawnError
+from safeamp.figures.look import BLACK, BLUE, GREY, PALE, VERMILLION, Margins, NotDrawnError
 from safeamp.findings import Bound, Finding, Verdict
 from safeamp.quantities import TEMPERATURE, show
 
@@ -20,6 +20,8 @@ ROOM = 25.0
 #: The bars end here; a longer one carries an arrow, its number stands beside it.
 END = 1.5
 ROW = 0.205
+#: The longest id on the left, the longest number on the right; to measure each text would take half of the drawing.
+MARGINS = Margins(left=1.58, right=1.6, bottom=0.66, top=0.28)
 FILLS: dict[Verdict, dict[str, Any]] = {
     Verdict.GO: {"facecolor": PALE, "hatch": ""},
     Verdict.CAUTION: {"facecolor": BLUE, "hatch": ""},
@@ -77,7 +79,12 @@ class _Share:
 
 def height_of(findings: Sequence[Finding]) -> float:
     """Return how high the picture must be, inches."""
-    return 1.1 + ROW * (len(findings) + len({finding.step for finding in findings}))
+    return (
+        MARGINS.bottom
+        + MARGINS.top
+        + 0.2
+        + ROW * (len(findings) + len({finding.step for finding in findings}))
+    )
 
 
 def draw(axes: Axes, findings: Sequence[Finding]) -> str:
@@ -90,19 +97,18 @@ def draw(axes: Axes, findings: Sequence[Finding]) -> str:
     """
     if not findings:
         raise NotDrawnError("nothing was judged")
-    place, ticks = 0.0, {}
+    place, rows = 0.0, []
     for step, group in groupby(sorted(findings, key=lambda one: one.step.place), key=lambda one: one.step):
-        axes.text(0.0, place, step.value, fontweight="bold", va="center", clip_on=False)
-        axes.texts[-1].set_transform(axes.get_yaxis_transform())
-        axes.texts[-1].set(x=-0.012, ha="right")
+        _left(axes, place, step.value, fontweight="bold")
         place += 1.0
         for finding in group:
-            _row(axes, place, finding)
-            ticks[place] = finding.id
+            rows.append((place, finding))
             place += 1.0
+    for at, finding in rows:
+        _words_beside(axes, at, finding)
+    _bars(axes, [(at, used(finding), finding.verdict) for at, finding in rows])
     axes.axvline(1.0, color=BLACK, lw=1.2, zorder=3)
-    axes.set_yticks(list(ticks), list(ticks.values()))
-    axes.tick_params(axis="y", length=0)
+    axes.set_yticks([])
     axes.grid(visible=False, axis="y")
     axes.set(xlim=(0.0, END), ylim=(place - 0.4, -0.7))
     axes.set_xticks([0.0, 0.25, 0.5, 0.75, 1.0, 1.25, END], ["0", "25", "50", "75", "100", "125", "150"])
@@ -113,24 +119,45 @@ def draw(axes: Axes, findings: Sequence[Finding]) -> str:
     return _words(findings)
 
 
-def _row(axes: Axes, place: float, finding: Finding) -> None:
-    found = used(finding)
-    if found.nominal is not None:
-        axes.barh(place, min(found.nominal, END), 0.62, edgecolor=BLACK, lw=0.6, **FILLS[finding.verdict])
-    if found.worst is not None and found.nominal is not None and found.worst > found.nominal:
-        axes.plot([min(found.nominal, END), min(found.worst, END)], [place, place], color=BLACK, lw=1.4)
-        axes.plot(
-            [min(found.worst, END)], [place], "|" if found.worst <= END else ">", color=BLACK, clip_on=False
-        )
-    elif found.nominal is not None and found.nominal > END:
-        axes.plot([END], [place], ">", color=BLACK, clip_on=False)
-    if found.nominal is not None and found.go is not None and found.go < 1.0:
-        axes.plot([found.go, found.go], [place - 0.42, place + 0.42], color=GREY, lw=1.6, zorder=4)
+def _left(axes: Axes, place: float, said: str, **how: Any) -> None:
+    """Write in front of a row; a tick of the axis would take ten times as long to make."""
+    axes.annotate(
+        said, (0.0, place), (-5, 0), textcoords="offset points", ha="right", va="center",
+        annotation_clip=False, **how,
+    )  # fmt: skip
+
+
+def _words_beside(axes: Axes, place: float, finding: Finding) -> None:
+    """Write id, word and number of a row."""
     value = "unbounded" if finding.unbounded else show(finding.nominal, finding.kind)
+    _left(axes, place, finding.id)
     for points, said in ((9, finding.verdict.word), (64, "" if value == "unknown" else value)):
         axes.annotate(
             said, (END, place), (points, 0), textcoords="offset points", va="center", annotation_clip=False
         )
+
+
+def _bars(axes: Axes, rows: Sequence[tuple[float, Used, Verdict]]) -> None:
+    """Draw what has a nominal share: its bar, the line to its worst corner, the tick where go ends."""
+    barred = [(at, one, one.nominal, word) for at, one, word in rows if one.nominal is not None]
+    for verdict, how in FILLS.items():
+        own = {at: min(share, END) for at, _, share, word in barred if word is verdict}
+        if own:
+            axes.barh(list(own), list(own.values()), 0.62, edgecolor=BLACK, lw=0.6, **how)
+    worse = [
+        (at, share, one.worst) for at, one, share, _ in barred if one.worst is not None and one.worst > share
+    ]
+    for at, share, worst in worse:
+        axes.plot([min(share, END), min(worst, END)], [at, at], color=BLACK, lw=1.4)
+    ends = [(at, worst) for at, _, worst in worse if worst <= END]
+    beyond = [at for at, one, share, _ in barred if max(share, one.worst or 0.0) > END]
+    for marker, points in (("|", [(worst, at) for at, worst in ends]), (">", [(END, at) for at in beyond])):
+        if points:
+            axes.plot(*zip(*points, strict=True), marker, color=BLACK, clip_on=False)
+    ticks = [(at, one.go) for at, one, _, _ in barred if one.go is not None and one.go < 1.0]
+    if ticks:
+        places = np.array([at for at, _ in ticks])
+        axes.vlines([go for _, go in ticks], places - 0.42, places + 0.42, color=GREY, lw=1.6, zorder=4)
 
 
 def _words(findings: Sequence[Finding]) -> str:

@@ -78,3 +78,11 @@ def labels(plane):
 def line(plane, beginning):
     """Return the line whose label begins so."""
     return next(one for one in plane.lines if str(one.get_label()).startswith(beginning))
+
+
+def within(one):
+    """Assert that nothing of a picture reaches beyond its edge."""
+    one.figure.draw_without_rendering()
+    drawn, (width, height) = one.figure.get_tightbbox(), one.figure.get_size_inches()
+    assert min(drawn.x0, drawn.y0) >= -0.01, one.name
+    assert max(drawn.x1 - width, drawn.y1 - height) <= 0.01, one.name

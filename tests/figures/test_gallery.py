@@ -8,9 +8,9 @@ import matplotlib as mpl
 import pytest
 
 from safeamp.amplifier import with_values
-from safeamp.figures import pictures_of, rendered, svg_text
+from safeamp.figures import FIRST, FURTHER, pictures_of, rendered, svg_text
 from safeamp.studies.verdict import verdict
-from tests.figures.drawing import DRIVER, NAMES, UNIT, full, gallery, picture, why
+from tests.figures.drawing import DRIVER, NAMES, UNIT, full, gallery, picture, why, within
 from tests.scenarios.sheets import GONE, limits, sheet
 from tests.scenarios.sheets import NAMES as SCENARIOS
 
@@ -34,10 +34,16 @@ def test_no_word_is_cut_off_and_no_two_pictures_say_the_same(scenario):
     found = full() if scenario == "single_rail" else gallery(scenario, {})
     assert len({one.says for one in found.pictures}) == len(found.pictures) >= 4
     for one in found.pictures:
-        one.figure.draw_without_rendering()
-        drawn, (width, height) = one.figure.get_tightbbox(), one.figure.get_size_inches()
-        assert min(drawn.x0, drawn.y0) >= -0.01, one.name
-        assert max(drawn.x1 - width, drawn.y1 - height) <= 0.01, one.name
+        within(one)
+
+
+def test_only_what_is_asked_for_is_drawn():
+    read = sheet("split_rail")
+    report = verdict(read, limits())
+    found = pictures_of(read, report, limits(), FIRST)
+    assert {one.name for one in found.pictures} == set(FIRST)
+    assert found.left_out == ()
+    assert (*FIRST, *FURTHER) == NAMES
 
 
 def test_the_same_sheet_gives_the_same_bytes_whatever_the_user_has_set():

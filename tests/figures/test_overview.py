@@ -1,15 +1,18 @@
 """Bars of how much of each limit is used."""
 
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
+from safeamp.checks import CHECKS
 from safeamp.figures import overview
 from safeamp.figures.look import NotDrawnError
 from safeamp.figures.look import picture as drawn
 from safeamp.figures.overview import Used, used
 from safeamp.findings import Bound, Finding, Step, Verdict
 from safeamp.quantities import RATIO, RESISTANCE, TEMPERATURE
-from tests.figures.drawing import axes, gallery
+from tests.figures.drawing import axes, gallery, within
 from tests.scenarios.sheets import report
 
 
@@ -66,7 +69,10 @@ def test_a_bar_ends_at_its_share_and_a_longer_one_carries_an_arrow():
     assert [bar.get_width() for bar in plane.patches] == pytest.approx([0.6, 1.5])
     assert [list(line.get_xdata()) for line in plane.lines if line.get_marker() == ">"] == [[1.5]]
     texts = [text.get_text() for text in plane.texts]
-    assert texts == ["loudspeaker", "go", "0.6", "stop", "7"]
+    assert texts == ["loudspeaker", "soa.loudspeaker", "go", "0.6", "soa.loudspeaker", "stop", "7"]
+    ticks = next(one for one in plane.collections if one.get_segments())
+    assert [segment[0][0] for segment in ticks.get_segments()] == [0.8, 0.8]
+    assert [list(line.get_xdata()) for line in plane.lines[:2]] == [[0.6, 0.9], [0.9]]
     assert [line.get_xdata()[0] for line in plane.lines][-1] == 1.0  # the last level
     assert (
         one.says
@@ -83,15 +89,37 @@ def test_words_differ_by_more_than_colour():
 
 def test_every_finding_has_its_row_under_its_step():
     plane, found = axes("overview", gallery("split_rail", {})), report("split_rail").findings
-    assert [label.get_text() for label in plane.get_yticklabels()] == [one.id for one in found]
+    words = [text.get_text() for text in plane.texts if text.get_fontweight() != "bold"]
+    assert words[::3] == [one.id for one in found]
+    assert words[1::3] == [one.verdict.word for one in found]
     steps = [text.get_text() for text in plane.texts if text.get_fontweight() == "bold"]
     assert steps == list(dict.fromkeys(one.step.value for one in found))
 
 
 def test_a_value_without_a_limit_is_shown_as_a_word_and_a_number():
     plane = shown(finding(5.0, bound(None, None), kind=RESISTANCE)).figure.axes[0]
-    assert [text.get_text() for text in plane.texts][1:] == ["go", "5 ohm"]
+    assert [text.get_text() for text in plane.texts][2:] == ["go", "5 ohm"]
     assert not plane.patches
+
+
+def test_the_margins_have_room_for_every_id_every_step_and_the_longest_numbers():
+    longest = [
+        replace(
+            finding(value, None, kind=check.kind, verdict=Verdict.UNVERIFIED, unbounded=value is None),
+            id=check.id,
+            step=check.step,
+        )
+        for check in CHECKS.values()
+        for value in (-0.123456, None)
+    ]
+    one = drawn(
+        "overview",
+        "so",
+        lambda plane: overview.draw(plane, longest),
+        height=overview.height_of(longest),
+        margins=overview.MARGINS,
+    )
+    within(one)
 
 
 def test_nothing_judged_is_not_drawn():
