@@ -30,9 +30,7 @@ class Dissipation:
 #: Several checks ask for the heat of the same level of the same cases; it is the dearest number of most of them.
 _KNOWN: WeakKeyDictionary[Amplifier, dict[tuple[float, float], Dissipation]] = WeakKeyDictionary()
 #: The devices of a level at an angle carry what they carry without it, unless the angle changes the peak current.
-_CARRIED: WeakKeyDictionary[Amplifier, list[tuple[Device, Number, stage.MeanCurrents]]] = (
-    WeakKeyDictionary()
-)
+_CARRIED: WeakKeyDictionary[Amplifier, list[tuple[Device, Number, stage.MeanCurrents]]] = WeakKeyDictionary()
 
 
 def no_signal(amplifier: Amplifier) -> Dissipation:

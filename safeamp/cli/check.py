@@ -9,13 +9,14 @@ from typing import Annotated
 import typer
 
 from safeamp.cli.figures import (
+    AllFiguresOption,
     FigureFormat,
     FigureFormatOption,
     FiguresOption,
     check_folder,
     write_figures,
 )
-from safeamp.cli.judged import Judged, files_read, judged, step_of
+from safeamp.cli.judged import Judged, drawings, files_read, judged, left_out, step_of
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, emit, fail
 
@@ -51,11 +52,13 @@ def check(
     ] = None,
     figures: FiguresOption = None,
     figures_format: FigureFormatOption = FigureFormat.SVG,
+    all_figures: AllFiguresOption = False,
 ) -> None:
     """Say whether the next step may be taken, what to read, and at which reading to switch off."""
     up_to = None if step is None else step_of(step)
     if explain and format_ is Format.CSV:
         fail("--explain: a row of csv has no room for a calculation; take text, json, markdown or html")
+    _check_page(format_, all_figures=all_figures)
     never = tuple(files_read(sheet, limits, device_folder))
     if output is not None:
         check_output(output, never)
@@ -63,7 +66,11 @@ def check(
     found = judged(sheet, limits=limits, device_folder=device_folder, on_paper=on_paper, up_to=up_to)
     if figures is not None:
         write_figures(found.gallery, figures, figures_format, never=never)
-    emit(_text(found, format_, explain, on_terminal=output is None), output, never=never)
+    emit(
+        _text(found, format_, explain, all_figures=all_figures, on_terminal=output is None),
+        output,
+        never=never,
+    )
     raise typer.Exit(found.report.exit_status)
 
 
@@ -72,21 +79,28 @@ def demo(
     output: OutputOption = None,
     figures: FiguresOption = None,
     figures_format: FigureFormatOption = FigureFormat.SVG,
+    all_figures: AllFiguresOption = False,
 ) -> None:
     """Show a report on a built-in amplifier that is invented."""
+    _check_page(format_, all_figures=all_figures)
     check_folder(figures)
     found = judged(Path(__file__).with_name("demo.toml"), demo=True)
     if figures is not None:
         write_figures(found.gallery, figures, figures_format)
-    emit(_text(found, format_, None, on_terminal=output is None), output)
+    emit(_text(found, format_, None, all_figures=all_figures, on_terminal=output is None), output)
 
 
-def _text(found: Judged, format_: Format, explain: list[str] | None, *, on_terminal: bool) -> str:
+def _check_page(format_: Format, *, all_figures: bool) -> None:
+    if all_figures and format_ is not Format.HTML:
+        fail("--all-figures draws into a page: add --format html; --figures FOLDER draws into files")
+
+
+def _text(
+    found: Judged, format_: Format, explain: list[str] | None, *, all_figures: bool, on_terminal: bool
+) -> str:
     """Return the report as text; a page holds every calculation anyway, folded."""
     if format_ is Format.HTML:
-        from safeamp.report.html import as_html
-
-        return as_html(found.report, found.workings(), found.drawings(), found.left_out())
+        return _page(found, all_figures=all_figures)
     workings = found.workings(explain) if explain else {}
     if format_ is Format.JSON:
         from safeamp.report.json_ import as_json
@@ -104,3 +118,12 @@ def _text(found: Judged, format_: Format, explain: list[str] | None, *, on_termi
 
     width = columns() if on_terminal else 80
     return render(found.report, width=width, colour=on_terminal and colourful(), workings=workings)
+
+
+def _page(found: Judged, *, all_figures: bool) -> str:
+    from safeamp.figures import FURTHER
+    from safeamp.report.html import as_html
+
+    figures = found.gallery if all_figures else found.first_figures()
+    on_request = "" if all_figures else f"Further figures, with --all-figures: {', '.join(FURTHER)}."
+    return as_html(found.report, found.workings(), drawings(figures), left_out(figures), on_request)

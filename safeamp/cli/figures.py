@@ -30,6 +30,9 @@ FiguresOption = Annotated[
 FigureFormatOption = Annotated[
     FigureFormat, typer.Option("--figures-format", help="How figures are written.")
 ]
+AllFiguresOption = Annotated[
+    bool, typer.Option("--all-figures", help="Draw every figure into the html page, not only the first two.")
+]
 
 
 def check_folder(folder: Path | None) -> None:

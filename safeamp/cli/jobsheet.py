@@ -7,7 +7,7 @@ from typing import Annotated
 
 import typer
 
-from safeamp.cli.judged import Judged, files_read, judged
+from safeamp.cli.judged import Judged, drawings, files_read, judged, left_out
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, columns, complaining, emit
 
@@ -54,4 +54,5 @@ def _text(found: Judged, format_: Form, width: int) -> str:
         return jobsheet_text(found.sheet, found.report, width=width)
     if format_ is Form.MARKDOWN:
         return jobsheet_markdown(found.sheet, found.report, found.workings())
-    return jobsheet_html(found.sheet, found.report, found.workings(), found.drawings(), found.left_out())
+    figures = found.gallery
+    return jobsheet_html(found.sheet, found.report, found.workings(), drawings(figures), left_out(figures))

@@ -38,24 +38,32 @@ class Judged:
 
     @cached_property
     def gallery(self) -> Gallery:
-        """Its figures, drawn once."""
+        """All its figures, drawn once."""
         from safeamp.figures import pictures_of
 
         return pictures_of(self.sheet, self.report, self.limits)
 
-    def drawings(self) -> list[Drawing]:
-        """Return its figures as parts of a page."""
-        from safeamp.figures import svg_text
-        from safeamp.report.html import Drawing
+    def first_figures(self) -> Gallery:
+        """Return the figures of a page when no more are asked for."""
+        from safeamp.figures import FIRST, pictures_of
 
-        return [
-            Drawing(one.title, one.says, svg_text(one.figure, f"figure-{one.name}", one.title, one.says))
-            for one in self.gallery.pictures
-        ]
+        return pictures_of(self.sheet, self.report, self.limits, FIRST)
 
-    def left_out(self) -> list[str]:
-        """Return which figures are not drawn, and why."""
-        return [f"{one.name}: {one.because}" for one in self.gallery.left_out]
+
+def drawings(gallery: Gallery) -> list[Drawing]:
+    """Return figures as parts of a page."""
+    from safeamp.figures import svg_text
+    from safeamp.report.html import Drawing
+
+    return [
+        Drawing(one.title, one.says, svg_text(one.figure, f"figure-{one.name}", one.title, one.says))
+        for one in gallery.pictures
+    ]
+
+
+def left_out(gallery: Gallery) -> list[str]:
+    """Return which figures are not drawn, and why."""
+    return [f"{one.name}: {one.because}" for one in gallery.left_out]
 
 
 def judged(

@@ -32,6 +32,7 @@ def as_html(
     workings: Mapping[str, Working],
     drawings: Sequence[Drawing] = (),
     left_out: Sequence[str] = (),
+    on_request: str = "",
 ) -> str:
     """Return the report as a whole HTML document; texts of the sheet stand in it as they are, never as markup.
 
@@ -43,8 +44,10 @@ def as_html(
         Figures; their `svg` is taken as it is.
     left_out : sequence of str
         Which figures are not drawn, and why.
+    on_request : str
+        Which figures nobody asked for, and how to have them.
     """
-    return filled("report.html.j2", report, workings, drawings, left_out)
+    return filled("report.html.j2", report, workings, drawings, left_out, on_request=on_request)
 
 
 def filled(
@@ -53,6 +56,8 @@ def filled(
     workings: Mapping[str, Working],
     drawings: Sequence[Drawing],
     left_out: Sequence[str],
+    *,
+    on_request: str = "",
     **more: Any,
 ) -> str:
     """Return a template filled in with a report, its calculations and figures, and more."""
@@ -63,6 +68,7 @@ def filled(
         how=HOW,
         figures=[{"title": one.title, "says": one.says, "svg": Markup(one.svg)} for one in drawings],
         left_out=left_out,
+        on_request=on_request,
         **more,
     )
 

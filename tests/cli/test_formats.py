@@ -43,12 +43,29 @@ def test_every_format_has_the_same_findings_with_the_same_words(printed):
     ]
 
 
-def test_html_has_the_figures_inside_and_says_what_is_left_out(printed):
+def test_html_has_two_figures_inside_and_says_how_to_have_the_others(printed):
     text = printed["html"].stdout
     assert text.startswith("<!doctype html>")
     assert text.endswith("</html>\n")
-    assert text.count("<figure>") == text.count('role="img"') > 2
+    assert text.count("<figure>") == text.count('role="img"') == 2
+    further = "temperatures, heat, low-notes, coil, impedance, cone-travel"
+    assert f"Further figures, with --all-figures: {further}." in text
+    assert "Left out" not in text
+
+
+def test_html_has_all_figures_inside_and_says_what_is_left_out():
+    text = run("check", SPLIT, "--format", "html", "--all-figures").stdout
+    assert text.count("<figure>") == text.count('role="img"') == 4
     assert "low-notes: " in text
+    assert "--all-figures" not in text
+    assert run("demo", "--format", "html", "--all-figures").stdout.count("<figure>") > 2
+
+
+@pytest.mark.parametrize("command", [("check", SPLIT), ("demo",)])
+def test_only_a_page_has_room_for_figures(command):
+    done = run(*command, "--all-figures")
+    assert done.exit_code == WRONG
+    assert "--all-figures draws into a page: add --format html" in done.stderr
 
 
 def test_html_is_written_whole_into_a_file_and_never_over_the_sheet(tmp_path):
