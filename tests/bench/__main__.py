@@ -47,6 +47,10 @@ RUNS: dict[str, tuple[tuple[str, ...], float | None]] = {
     "safeamp check, split rail": (("-c", MAIN, "check", str(TESTS / "scenarios" / "split_rail.toml")), 4.5),
     "safeamp check, 4096 corners": (("-c", MAIN, "check", str(TESTS / "bench" / "twelve.toml")), 5.5),
     "safeamp check, 200 points": (("-c", MAIN, "check", str(TESTS / "bench" / "richest.toml")), 8.0),
+    "safeamp check, html": (
+        ("-c", MAIN, "check", str(TESTS / "scenarios" / "split_rail.toml"), "--format", "html"),
+        12.0,
+    ),
 }
 
 
