@@ -13,7 +13,7 @@ from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
 from safeamp.checks.words import level, nominal, text
 from safeamp.findings import Also, Measure, NotApplicable, Remark, Step, Verdict
-from safeamp.limits import Limits
+from safeamp.limits import Limit, Limits
 from safeamp.physics import bias
 from safeamp.quantities import CURRENT, POWER, RATIO, VOLTAGE, Number, Origin
 
@@ -154,15 +154,19 @@ def check_imbalance(amplifier: Amplifier, limits: Limits) -> Measure | NotApplic
     departures = [
         np.abs(one / mean - 1.0) for group, mean in zip(groups, means, strict=True) for one in group
     ]
-    small = reduce(np.minimum, means) < limits["bias.imbalance"].extra["small_reading_below"]
     return Measure(
         reduce(np.maximum, departures),
         f"{len(groups[0])} devices a side, mean {text(means[0], VOLTAGE)} above and {text(means[1], VOLTAGE)} below",
-        stop=np.where(small, np.inf, level(limits["bias.imbalance"], "stop")),
+        stop=_stop_unless_small(reduce(np.minimum, means), limits["bias.imbalance"]),
         also=_odd_device(amplifier, groups),
         next="compare each resistor's reading; the odd one out has another gain, or is open",
         method="largest departure from the mean of its group, over that mean",
     )
+
+
+def _stop_unless_small(reading: Number, limit: Limit) -> Number:
+    """Return the stop level of a ratio; none while the reading, V, is so small that the meter's own error rules."""
+    return np.where(reading < limit.extra["small_reading_below"], np.inf, level(limit, "stop"))
 
 
 def _odd_device(amplifier: Amplifier, groups: list[tuple[Number, ...]]) -> tuple[Also, ...]:
@@ -195,9 +199,11 @@ def check_balance(amplifier: Amplifier, limits: Limits) -> Measure:
     if len(groups) < 2:
         return Measure(np.nan, "upper and lower readings are not both given", next=NEXT_IDLE)
     upper, lower = sum(groups[0]), sum(groups[1])
+    each = np.maximum(upper / len(groups[0]), lower / len(groups[1]))
     return Measure(
         np.abs(upper - lower) / ((upper + lower) / 2.0),
         f"upper side {text(upper, VOLTAGE)}, lower side {text(lower, VOLTAGE)} in sum",
+        stop=_stop_unless_small(each, limits["bias.balance"]),
         next="a difference flows through the load, a driver or a leak: read the output's DC with it",
         method="difference of the sums over their mean",
     )
@@ -211,6 +217,7 @@ def check_drift(amplifier: Amplifier, limits: Limits) -> Measure:
     return Measure(
         warm / np.where(np.asarray(cold) > 0.0, cold, np.nan),
         f"idle {text(cold, VOLTAGE)} just after switch-on, {text(warm, VOLTAGE)} warm",
+        stop=_stop_unless_small(warm, limits["bias.drift"]),
         next="read again after ten and twenty minutes; a reading that still rises after that is a fault: switch off",
         method="warm reading over cold reading",
     )

@@ -12,7 +12,7 @@ from safeamp.checks.beside import one_open_also
 from safeamp.checks.levels import level_also
 from safeamp.checks.registry import finding
 from safeamp.checks.trace import miss, needed
-from safeamp.checks.words import heat_remarks, idle_remarks, nominal, sharing_remarks, text
+from safeamp.checks.words import heat_remarks, idle_remarks, level, nominal, sharing_remarks, text
 from safeamp.findings import Also, Measure, NotApplicable, Remark, Step, Verdict
 from safeamp.limits import Limits
 from safeamp.quantities import (
@@ -165,17 +165,18 @@ def check_reading(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicab
     if thermal.stands_free(amplifier):
         return NotApplicable(FREE_AIR)
     read, air = needed(amplifier, "readings.heatsink_temperature", "readings.heatsink_air")
-    level = amplifier.readings.heatsink_level
-    if level is None:
+    played, own = amplifier.readings.heatsink_level, limits["heat.reading"]
+    if played is None:
         miss(amplifier, "readings.heatsink_level")
     dissipated = (
-        thermal.at_level(amplifier, LEVELS[level]) if level in LEVELS else thermal.no_signal(amplifier)
+        thermal.at_level(amplifier, LEVELS[played]) if played in LEVELS else thermal.no_signal(amplifier)
     )
     computed = thermal.sink_temperature(amplifier, dissipated, air=air)
-    rise, expected = read - air, (computed - air if level in LEVELS or level == "idle" else np.nan)
+    rise, expected = read - air, (computed - air if played in LEVELS or played == "idle" else np.nan)
     return Measure(
         rise / np.where(np.asarray(expected) > 0.0, expected, np.nan),
         f"read {text(rise, TEMPERATURE_DIFFERENCE)} above air, computed {text(expected, TEMPERATURE_DIFFERENCE)}",
+        stop=np.where(rise < own.extra["small_rise_below"], np.inf, level(own, "stop")),
         remarks=(*heat_remarks(amplifier), *idle_remarks(amplifier), *_too_cool(rise, expected, limits)),
         next="read heatsink and air beside it once both have settled, and say at which level",
         method="read rise over computed rise at the same level",
