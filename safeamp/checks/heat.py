@@ -39,11 +39,15 @@ def _stage_also(
         *_ruled_also(amplifier, loud),
         Also("heat of the stage without signal", nominal(quiet.stage_power), POWER),
         Also("heat of the stage at one third of clipping power", nominal(loud.stage_power), POWER),
-        Also(
-            "power at clipping into the nominal impedance", nominal(operating.output_power(amplifier)), POWER
-        ),
+        Also(_clipping_name(amplifier), nominal(operating.output_power(amplifier)), POWER),
         *_bridged_also(amplifier),
     )
+
+
+def _clipping_name(amplifier: Amplifier) -> str:
+    """Return into what the power at clipping goes."""
+    beside = "" if amplifier.stage.series_resistor is None else " with the series resistor before it"
+    return f"power at clipping into the nominal impedance{beside}"
 
 
 def _bridged_also(amplifier: Amplifier) -> tuple[Also, ...]:
