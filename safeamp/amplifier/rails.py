@@ -26,3 +26,10 @@ def deepest_sag(no_load: Sequence[float], full_load: Sequence[float]) -> tuple[f
 def is_too_deep(free: float, under: float) -> bool:
     """Whether a loaded rail lies so far below its rail without load that nobody believes it."""
     return under < LEAST_LOADED * free * (1.0 - 1e-9)
+
+
+def share_apart(rails: Sequence[float]) -> float:
+    """Return by how much two rails differ, over their mean; nothing for one rail alone."""
+    if len(rails) != 2:
+        return 0.0
+    return abs(rails[0] - rails[1]) / (sum(rails) / 2.0)

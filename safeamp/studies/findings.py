@@ -78,7 +78,7 @@ def _run(check: Check, amplifier: Amplifier, limits: Limits) -> Measure | NotApp
 def _remarks(check: Check, bench: Bench, trace: Trace) -> list[Remark]:
     """Return what holds a finding back whatever its number: examples, keys not assessed, rails, load, a limiter."""
     amplifier = bench.sheet.amplifier
-    found = list(rail_remarks(amplifier, trace.reads))
+    found = list(rail_remarks(amplifier, bench.limits, trace.reads))
     invented = [
         path for path in _with_items(bench.sheet, trace.inputs()) if amplifier.origin(path) is Origin.EXAMPLE
     ]
