@@ -44,7 +44,7 @@ def draw(axes: Axes, amplifier: Amplifier) -> str:
 
 
 def _mark(axes: Axes, levels: tuple[Level, ...]) -> None:
-    for at, marker in zip(levels, "os^D", strict=True):
-        fill = VERMILLION if marker == "D" else "white"
+    for at, marker in zip(levels, "os^D", strict=False):
+        fill = VERMILLION if at.hottest else "white"
         axes.plot([100.0 * at.fraction], [at.watts], marker, color=fill, markeredgecolor=BLACK, zorder=5)
         axes.lines[-1].set_label(f"{at.name[0].upper()}{at.name[1:]}: {text(at.watts, POWER)}")

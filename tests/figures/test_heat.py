@@ -4,7 +4,8 @@ import numpy as np
 import pytest
 
 from safeamp.checks import thermal
-from safeamp.figures.levels import FRACTIONS, heat_over_level, levels_of, worst_fraction
+from safeamp.figures.levels import FRACTIONS, heat_over_level, levels_of
+from safeamp.figures.look import VERMILLION
 from safeamp.figures.temperatures import ladder
 from tests.figures.drawing import axes, gallery, labels, line, picture
 from tests.scenarios.sheets import beside, finding, report, sheet
@@ -76,13 +77,30 @@ def test_the_marks_of_the_levels_lie_on_the_curve():
     assert labels(plane)[-1].startswith("Worst sine (")
 
 
-def test_the_worst_sine_is_the_top_of_the_curve():
-    amplifier = sheet("split_rail").amplifier
-    heat = heat_over_level(amplifier)
-    worst = levels_of(amplifier)[-1]
-    assert worst.fraction == worst_fraction(heat) == FRACTIONS[int(np.argmax(heat))]
-    assert worst.watts == pytest.approx(heat.max())
+def test_the_worst_sine_is_the_top_of_the_curve_and_that_of_the_finding():
+    heat = heat_over_level(sheet("split_rail").amplifier)
+    worst = levels_of(sheet("split_rail").amplifier)[-1]
+    assert worst.fraction == pytest.approx(FRACTIONS[int(np.argmax(heat))], abs=0.005)
+    assert worst.watts == pytest.approx(heat.max(), rel=1e-4)
+    assert worst.hottest
+    judged = finding(report("split_rail"), "heat.heatsink")
+    assert worst.fraction == beside(judged, "worst level of a sine, share of clipping power")
+    assert worst.watts == beside(judged, "heat of the stage at the worst level of a sine")
     assert 0.3 < worst.fraction < 0.6  # class B: 4/pi**2 = 0.41, a little more where the rail sags
+
+
+def test_without_signal_hottest_there_is_no_worst_sine():
+    plane = axes("heat", gallery("class_a", {}))
+    assert [one.get_label().split(":")[0] for one in plane.lines[-3:]] == [
+        "No signal, the hottest", "One eighth", "One third",
+    ]  # fmt: skip
+    assert [one.get_color() for one in plane.lines[-3:]] == [VERMILLION, "white", "white"]
+    assert plane.lines[-3].get_ydata()[0] == plane.lines[0].get_ydata().max()
+    rows = [
+        one.get_text().split("\n")[0]
+        for one in axes("temperatures", gallery("class_a", {})).get_xticklabels()
+    ]
+    assert rows == ["no signal, the hottest", "one eighth", "one third"]
 
 
 def test_a_turned_load_makes_more_heat_and_is_drawn_otherwise():
