@@ -12,7 +12,10 @@ from safeamp.amplifier import Amplifier
 from safeamp.checks import thermal
 from safeamp.checks.levels import worst_level
 from safeamp.checks.thermal import Dissipation
+from safeamp.checks.trace import needed
 from safeamp.checks.words import nominal
+
+COUNTS = ("loudspeaker.parallel", "loudspeaker.series")
 
 Values = npt.NDArray[np.float64]
 
@@ -55,3 +58,14 @@ def levels_of(amplifier: Amplifier) -> tuple[Level, ...]:
         for name, fraction in sines.items()
     ]
     return (Level(quiet, 0.0, thermal.no_signal(amplifier), hottest=not worst), *found)
+
+
+def of_what(amplifier: Amplifier) -> str:
+    """Return of what the heat and the power at clipping of a stage are, where that is not the one loudspeaker."""
+    parallel, series = (nominal(count) for count in needed(amplifier, *COUNTS))
+    said = ["one side of the bridge"] if amplifier.stage.bridged else []
+    if amplifier.stage.series_resistor is not None:
+        said.append("load with its series resistor")
+    elif parallel * series > 1.0:
+        said.append(f"all {parallel * series:.0f} loudspeakers together")
+    return ", ".join(said)

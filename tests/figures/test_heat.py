@@ -7,7 +7,8 @@ from safeamp.checks import thermal
 from safeamp.figures.levels import FRACTIONS, heat_over_level, levels_of
 from safeamp.figures.look import VERMILLION
 from safeamp.figures.temperatures import ladder
-from tests.figures.drawing import axes, gallery, labels, line, picture
+from safeamp.quantities import POWER, show
+from tests.figures.drawing import axes, gallery, labels, line, picture, within
 from tests.scenarios.sheets import beside, finding, report, sheet
 
 SPLIT = gallery("split_rail", {})
@@ -108,3 +109,29 @@ def test_a_turned_load_makes_more_heat_and_is_drawn_otherwise():
     straight, turned = line(plane, "Into a resistor"), line(plane, "Same voltage into 8 ohm at 45 deg")
     assert np.all(turned.get_ydata()[1:] > straight.get_ydata()[1:])
     assert straight.get_linestyle() != turned.get_linestyle()
+
+
+@pytest.mark.parametrize(
+    ("changes", "of"),
+    [
+        ({}, ""),
+        ({"stage.bridged": True}, "one side of the bridge"),
+        ({"stage.series_resistor": "47 ohm"}, "load with its series resistor"),
+        ({"loudspeaker.parallel": 2, "loudspeaker.series": 2}, "all 4 loudspeakers together"),
+    ],
+)
+def test_a_power_that_is_not_that_of_the_loudspeaker_says_whose_it_is(changes, of):
+    found = gallery("split_rail", changes)
+    heated = finding(report("split_rail", changes), "heat.heatsink")
+    [name] = [one.at for one in heated.also if one.at.startswith("power at clipping into")]
+    watts = beside(heated, "of that each side of the bridge" if "stage.bridged" in changes else name)
+    said = show(watts, POWER)
+    first, _, second = axes("heat", found).get_xlabel().partition("\n")
+    assert first == f"Level of a sine: share of the {said} at clipping (%)"
+    assert second == (f"{said}: {of}" if of else "")
+    assert axes("temperatures", found).get_xlabel().partition("\n")[2] == of
+    assert picture("heat", found).says.count(f"({of})") == bool(of)
+    legend = labels(axes("heat", found))[0]
+    assert legend.endswith(", the load with its series resistor") is ("stage.series_resistor" in changes)
+    within(picture("heat", found))
+    within(picture("temperatures", found))
