@@ -29,7 +29,7 @@ def opened(chromium, tmp_path):
 
 
 @pytest.mark.parametrize("size", [A4, LETTER], ids=["A4", "Letter"])
-@pytest.mark.parametrize("name", (*NAMES, *AMPLIFIERS))
+@pytest.mark.parametrize("name", [*NAMES, *AMPLIFIERS])
 def test_the_first_sheet_of_paper_is_the_page_and_nothing_else(opened, name, size):
     first, second, *_ = (
         bare(one.extract_text()) for one in PdfReader(io.BytesIO(opened(name).pdf(size))).pages
