@@ -10,7 +10,7 @@ from matplotlib.axes import Axes
 from matplotlib.ticker import FuncFormatter
 
 from safeamp.answers import FindingChances
-from safeamp.checks.amounts import shown_kind
+from safeamp.checks.amounts import percent, shown_kind
 from safeamp.figures.look import BELOW, BLACK, BLUE, PALE, VERMILLION, NotDrawnError, plain_number
 from safeamp.findings import Bound
 from safeamp.quantities import PERCENT, show
@@ -117,7 +117,7 @@ def _not_drawn(chances: FindingChances, bars: _Bars) -> list[str]:
     if not why:
         return []
     share = bars.beyond + (outside + chances.unknown) / _samples(chances)
-    return [f"{_percent(share)} of the samples not drawn: {' or '.join(why)}"]
+    return [f"{percent(share)} of the samples not drawn: {' or '.join(why)}"]
 
 
 def _quantiles(axes: Axes, chances: FindingChances, span: tuple[float, float]) -> None:
@@ -161,11 +161,4 @@ def _levels(bound: Bound | None) -> list[tuple[str, float, str]]:
 
 def _chances_text(chances: FindingChances) -> str:
     words = {word: chance.share for word, chance in sorted(chances.words.items()) if chance.share > 0.0}
-    return ", ".join(f"{word.word} {_percent(share)}" for word, share in words.items())
-
-
-def _percent(share: float) -> str:
-    """Return a share that is neither nought nor whole so that it does not look like either."""
-    if 0.0 < share < 0.0005:
-        return "under 0.1%"
-    return "over 99.9%" if 0.9995 <= share < 1.0 else f"{share:.1%}"
+    return ", ".join(f"{word.word} {percent(share)}" for word, share in words.items())

@@ -74,7 +74,7 @@ def test_a_limit_far_away_is_named_and_not_drawn():
 
 
 def test_a_small_chance_does_not_look_like_none():
-    assert shown().says == "Histogram of soa.loudspeaker: go over 99.9%, stop under 0.1%."
+    assert shown().says == "Histogram of soa.loudspeaker: go 99.98 %, stop 0.02 %."
 
 
 @pytest.mark.parametrize("found", [one(None), one(Histogram(0.0, 1.0, (0, 0), outside=5))])
@@ -107,7 +107,7 @@ def test_a_long_tail_is_cut_so_that_the_limits_are_seen_and_its_share_is_said():
     assert plane.get_xlim()[1] < 1.1 * chances.REACH
     assert line(plane, "stop above 100 %").get_xdata()[0] == 1.0
     assert "95% of the samples up to 999900 % (far to the right)" in labels(plane)
-    assert "10.0% of the samples not drawn: beyond 1000 % or without bound" in labels(plane)
+    assert "10.0 % of the samples not drawn: beyond 1000 % or without bound" in labels(plane)
 
 
 def test_without_a_limit_a_long_tail_is_cut_at_twice_the_median_at_the_least():
@@ -119,12 +119,12 @@ def test_without_a_limit_a_long_tail_is_cut_at_twice_the_median_at_the_least():
 
 def test_what_is_not_drawn_is_said_only_where_there_is_some():
     assert [text for text in labels(shown().figure.axes[0]) if "not drawn" in text] == [
-        "1.0% of the samples not drawn: outside these bars or without bound"
+        "1.0 % of the samples not drawn: outside these bars or without bound"
     ]
     whole = Histogram(0.7, 0.02, (0, 5, 10, 15, 20, 20, 15, 10, 5, 0))
     assert not [text for text in labels(shown(one(whole)).figure.axes[0]) if "not drawn" in text]
     blind = labels(shown(one(whole, unknown=100)).figure.axes[0])
-    assert "50.0% of the samples not drawn: without a value" in blind
+    assert "50.0 % of the samples not drawn: without a value" in blind
 
 
 def test_a_use_is_drawn_in_percent_as_it_is_said():
