@@ -12,6 +12,7 @@ from matplotlib.axes import Axes
 from safeamp.figures.look import GREY, laid_out
 
 Values = npt.NDArray[np.float64]
+Indices = npt.NDArray[np.intp]
 
 SIZE = 8.0
 #: Width of a letter and height of a line of the font, as shares of its size.
@@ -25,9 +26,9 @@ OFFSETS = tuple(
 #: Room that a name keeps from other lines, points; less than the smallest offset.
 ROOM = 6.0
 #: Distance of the points that lines are looked at by, points.
-STEP = 2.0
+STEP = 3.0
 #: So many places of a piece are tried.
-TRIED = 41
+TRIED = 25
 
 
 class Piece(NamedTuple):
@@ -38,26 +39,6 @@ class Piece(NamedTuple):
     up: Values
 
 
-class Box(NamedTuple):
-    """A rectangle, points from the lower left corner of the axes."""
-
-    left: float
-    bottom: float
-    right: float
-    top: float
-
-    def hits(self, points: Values) -> int:
-        """Return how many points lie inside or nearer than `ROOM`."""
-        lower = np.array([self.left, self.bottom]) - ROOM
-        upper = np.array([self.right, self.top]) + ROOM
-        return int(np.sum(np.all((points > lower) & (points < upper), axis=1)))
-
-    def overlaps(self, other: Box) -> bool:
-        """Return whether two rectangles share anything."""
-        apart = self.right <= other.left or other.right <= self.left
-        return not (apart or self.top <= other.bottom or other.top <= self.bottom)
-
-
 def name_pieces(axes: Axes, pieces: Iterable[Piece]) -> None:
     """Write the name of each piece that is in sight beside it; every line must have been drawn before."""
     laid_out(axes.figure.figure)
@@ -65,12 +46,12 @@ def name_pieces(axes: Axes, pieces: Iterable[Piece]) -> None:
     drawn = np.concatenate(
         [np.empty((0, 2)), *(_along(_points(axes, *one.get_data())) for one in axes.lines)]
     )
-    taken: list[Box] = []
+    taken = np.empty((0, 4))
     for piece in pieces:
         places = _points(axes, piece.across, piece.up)
         seen = np.flatnonzero(np.all((places >= 0.0) & (places <= size), axis=1))
         if len(seen):
-            _name(axes, piece, places, seen, (size, drawn, taken))
+            taken = np.vstack([taken, _name(axes, piece, places[seen], seen, (size, drawn, taken))])
 
 
 def _points(axes: Axes, across: object, up: object) -> Values:
@@ -78,11 +59,12 @@ def _points(axes: Axes, across: object, up: object) -> Values:
     data = np.column_stack([np.asarray(across, dtype=float), np.asarray(up, dtype=float)])
     shares = np.clip((axes.transScale + axes.transLimits).transform(data), -1.0, 2.0)
     found: Values = shares * 72.0 * np.array([axes.bbox.width, axes.bbox.height]) / axes.figure.dpi
-    return found[~np.isnan(found).any(axis=1)]
+    return found
 
 
 def _along(corners: Values) -> Values:
-    """Return points all along a line."""
+    """Return points all along a line, straight over its gaps."""
+    corners = corners[~np.isnan(corners).any(axis=1)]
     if len(corners) < 2:
         return corners
     way = np.append(0.0, np.cumsum(np.hypot(*np.diff(corners, axis=0).T)))
@@ -91,36 +73,47 @@ def _along(corners: Values) -> Values:
 
 
 def _name(
-    axes: Axes,
-    piece: Piece,
-    places: Values,
-    seen: npt.NDArray[np.intp],
-    around: tuple[Values, Values, list[Box]],
-) -> None:
-    """Write a name at the place that hides least, of those the one nearest to the middle of the piece."""
+    axes: Axes, piece: Piece, places: Values, indices: Indices, around: tuple[Values, Values, Values]
+) -> Values:
+    """Write a name where it hides least, of such places nearest to the middle of the piece; return its box."""
     size, drawn, taken = around
-    middle = places[seen[len(seen) // 2]]
-    tried = seen[np.unique(np.linspace(0, len(seen) - 1, TRIED).astype(int))]
-
-    def cost(choice: tuple[int, tuple[float, float]]) -> tuple[bool, bool, int, int, float]:
-        box = _box(piece.name, places[choice[0]], choice[1])
-        outside = min(box.left, box.bottom) < 0.0 or box.right > size[0] or box.top > size[1]
-        away = float(np.hypot(*(places[choice[0]] - middle)))
-        covers = any(box.overlaps(other) for other in taken)
-        return covers, outside, box.hits(drawn), OFFSETS.index(choice[1]), away
-
-    index, offset = min(((int(one), offset) for one in tried for offset in OFFSETS), key=cost)
-    taken.append(_box(piece.name, places[index], offset))
+    tried = np.unique(np.linspace(0, len(places) - 1, TRIED).astype(int))
+    at, way = (grid.ravel() for grid in np.meshgrid(tried, np.arange(len(OFFSETS)), indexing="ij"))
+    boxes = _boxes(piece.name, places[at] + np.array(OFFSETS)[way], np.array(OFFSETS)[way])
+    outside = np.any((boxes[:, :2] < 0.0) | (boxes[:, 2:] > size), axis=1)
+    away = np.hypot(*(places[at] - places[len(places) // 2]).T)
+    worst_last = (away, way, _hits(boxes, drawn), outside, _overlaps(boxes, taken))
+    best = np.lexsort(worst_last)[0]
+    index, (right, up) = indices[at[best]], OFFSETS[way[best]]
     axes.annotate(
-        piece.name, (float(piece.across[index]), float(piece.up[index])), offset,
+        piece.name, (float(piece.across[index]), float(piece.up[index])), (right, up),
         textcoords="offset points", color=GREY, fontsize=SIZE,
-        ha="left" if offset[0] > 0.0 else "right", va="bottom" if offset[1] > 0.0 else "top",
+        ha="left" if right > 0.0 else "right", va="bottom" if up > 0.0 else "top",
         bbox={"facecolor": "white", "edgecolor": "none", "pad": 0.5, "alpha": 0.8},
     )  # fmt: skip
+    return boxes[best : best + 1]
 
 
-def _box(name: str, place: Values, offset: tuple[float, float]) -> Box:
-    width, height = LETTER * SIZE * len(name), LINE * SIZE
-    x, y = float(place[0]) + offset[0], float(place[1]) + offset[1]
-    left, bottom = x if offset[0] > 0.0 else x - width, y if offset[1] > 0.0 else y - height
-    return Box(left, bottom, left + width, bottom + height)
+def _boxes(name: str, corners: Values, offsets: Values) -> Values:
+    """Return left, bottom, right and top of a name with one corner at each place, points; shape (places, 4)."""
+    sides = np.array([LETTER * SIZE * len(name), LINE * SIZE])
+    lower = np.where(offsets > 0.0, corners, corners - sides)
+    return np.hstack([lower, lower + sides])
+
+
+def _hits(boxes: Values, points: Values) -> Indices:
+    """Return how many points lie inside each box or nearer than `ROOM`."""
+    x, y = points.T[:, None]
+    left, bottom, right, top = boxes.T[:, :, None]
+    inside = (x > left - ROOM) & (x < right + ROOM) & (y > bottom - ROOM) & (y < top + ROOM)
+    count: Indices = np.count_nonzero(inside, axis=1)
+    return count
+
+
+def _overlaps(boxes: Values, taken: Values) -> npt.NDArray[np.bool_]:
+    """Return which boxes share anything with one that is taken."""
+    left, bottom, right, top = boxes.T[:, :, None]
+    sides = taken.T
+    apart = (right <= sides[0]) | (sides[2] <= left) | (top <= sides[1]) | (sides[3] <= bottom)
+    shared: npt.NDArray[np.bool_] = ~np.all(apart, axis=1)
+    return shared
