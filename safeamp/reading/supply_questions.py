@@ -8,6 +8,10 @@ from safeamp.amplifier.rails import deepest_sag, is_too_deep, rail_pairs
 from safeamp.quantities import PERCENT, VOLTAGE, Origin, show
 from safeamp.reading.draft import Draft
 
+#: A socket outside these shares of the declared voltage is asked about: public supplies keep within a tenth.
+LEAST_OF_DECLARED = 0.8
+MOST_OF_DECLARED = 1.25
+
 
 def ask_supply(draft: Draft) -> None:
     """Complain of mains and rails that contradict one another."""
@@ -22,6 +26,22 @@ def _mains(draft: Draft) -> None:
         draft.complain(
             "mains.highest", f"{text}; write the highest mains that may come, or leave the key out"
         )
+
+
+def _declared(draft: Draft) -> None:
+    """Ask of a socket far from the declared voltage: the highest mains follows from that one."""
+    nominal, actual = draft.number("mains.nominal"), draft.number("mains.actual")
+    if nominal is None or actual is None or LEAST_OF_DECLARED <= actual / nominal <= MOST_OF_DECLARED:
+        return
+    declared, read, share = show(nominal, VOLTAGE), show(actual, VOLTAGE), show(actual / nominal, PERCENT)
+    if "mains.nominal" in draft.written:
+        text = f"{declared} is declared, and mains.actual is {read}, {share} of it"
+        write = "write the voltage that your public supply declares"
+        draft.complain("mains.nominal", f"{text}: {write}, or read the socket again")
+    else:
+        text = f"{read} is {share} of the nearest declared voltage, {declared}"
+        write = "write the one of your public supply as mains.nominal"
+        draft.complain("mains.actual", f"{text}: {write}, or read the socket again")
 
 
 def _rails(draft: Draft) -> None:
@@ -56,4 +76,4 @@ def _deep_sag(draft: Draft) -> None:
 
 
 #: Asked in this order; each looks at what is there and is silent about what is missing.
-SUPPLY_QUESTIONS: tuple[Callable[[Draft], None], ...] = (_mains, _rails, _sag, _deep_sag)
+SUPPLY_QUESTIONS: tuple[Callable[[Draft], None], ...] = (_mains, _declared, _rails, _sag, _deep_sag)

@@ -35,8 +35,8 @@ def test_a_file_is_read_with_another_number():
 
 # The sheet is read again, so what follows from a value follows from the new one.
 def test_what_the_sheet_fills_in_follows():
-    sheet = moved("mains.actual", 120.0)
-    assert sheet.entries["mains.present"].nominal == 120.0
+    sheet = moved("mains.actual", 200.0)
+    assert sheet.entries["mains.present"].nominal == 200.0
     assert moved("stage.pairs", 3).amplifier.stage.pairs_conducting == 3.0
 
 
@@ -52,6 +52,26 @@ def test_a_list_keeps_its_proportions_to_the_largest():
     assert key.now == 44.0
     assert key.written(66.0) == ["49.5 V", "66 V ±1.5 V"]
     assert key.at(66.0).amplifier.supply.no_load == pytest.approx((49.5, 66.0))
+
+
+# 14.2 / 15 of 13.86 mV are 13.1208 mV, and in floats a little more.
+@pytest.mark.parametrize(
+    ("value", "expected"),
+    [
+        (0.01386, ["13.86 mV", "13.12 mV"]), (0.0138612, ["13.8612 mV", "13.1219 mV"]),
+        (0.014, ["14 mV", "13.25 mV"]), (0.015, ["15 mV", "14.2 mV"]),
+        (0.013861234567890123, ["13.861234567890123 mV", "13.1219687243 mV"]),
+    ],
+)  # fmt: skip
+def test_what_is_scaled_in_a_list_has_the_digits_of_the_value_and_no_noise(value, expected):
+    two = tables(readings__idle_upper=["15 mV", "14.2 mV"], stage__pairs=2)
+    assert movable(open_mapping(two), "readings.idle_upper").written(value) == expected
+
+
+def test_the_value_that_is_there_leaves_the_others_as_they_are():
+    there = ["15 mV", "14.2345678901234 mV"]
+    two = tables(readings__idle_upper=there, stage__pairs=2)
+    assert movable(open_mapping(two), "readings.idle_upper").written(0.015) == there
 
 
 def test_a_list_of_zeros_becomes_the_value():

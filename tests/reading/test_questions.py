@@ -44,6 +44,13 @@ BOUNDARIES = [
     ("healthy", {"supply.no_load": ["22 V", "-22 V"]}, {"supply.no_load": ["22 V", "22 V", "22 V"]}, "supply.no_load: 3 values are given; a split supply has two rails: write 2 at most"),
     (SINGLE, {"supply.no_load": ["64 V"]}, {"supply.no_load": ["32 V", "32 V"]}, "supply.no_load: 2 values are given; a single supply has one rail: write 1 at most"),
     ("healthy", {"mains.highest": "230 V"}, {"mains.highest": "229 V"}, "mains.highest: 229 V is below mains.actual, 230 V"),
+    # 0.8 and 1.25 of 230 V are 184 and 287.5 V; of 100 V, 125 V: the highest mains follows from the declared one.
+    ("healthy", {"mains.actual": "184 V"}, {"mains.actual": "183 V"}, "mains.nominal: 230 V is declared, and mains.actual is 183 V, 79.6 % of it: write the voltage that your public supply declares, or read the socket again"),
+    ("healthy", {"mains.actual": "287 V"}, {"mains.actual": "288 V"}, "mains.nominal: 230 V is declared, and mains.actual is 288 V, 125 % of it"),
+    ("healthy", {}, {"mains.nominal": "100 V"}, "mains.nominal: 100 V is declared, and mains.actual is 230 V, 230 % of it"),
+    ("healthy", {"mains.nominal": "220 V"}, {"mains.nominal": "120 V", "mains.highest": "253 V"}, "mains.nominal: 120 V is declared, and mains.actual is 230 V"),
+    # Left out, 127 V is the nearest to 160 V, and 230 V to 180 V.
+    ("healthy", {"mains.nominal": GONE, "mains.actual": "158 V"}, {"mains.nominal": GONE, "mains.actual": "160 V"}, "mains.actual: 160 V is 126 % of the nearest declared voltage, 127 V: write the one of your public supply as mains.nominal, or read the socket again"),
     ("healthy", {"stage.pairs": 2, "stage.pairs_conducting": 2, "readings.idle_upper": GONE, "readings.idle_lower": GONE}, {"stage.pairs_conducting": 2}, "stage.pairs_conducting: 2 is more than the 1 pairs"),
     # 0.33 ohm: 3.3 V would be 10 A.
     ("healthy", {"stage.idle": "3.29 V"}, {"stage.idle": "3.31 V"}, "stage.idle: 3.31 V across 0.33 ohm means 10 A: did you mean 3.31 mV?"),
