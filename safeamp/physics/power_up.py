@@ -56,7 +56,7 @@ def seen_from_mains(*, resistance: ArrayLike, mains: ArrayLike, no_load: ArrayLi
 
     References
     ----------
-    Derived: an ideal transformer with rectifier keeps the power, so that a resistance goes with the square of the ratio.
+    Derived: ideal transformer and rectifier keep the power; a resistance goes with the square of the ratio.
     """
     non_negative(resistance=resistance)
     positive(mains=mains, no_load=no_load)
@@ -243,7 +243,7 @@ def flash_time(
 
     References
     ----------
-    Derived: C dv/dt = -I_rated (v/V_rated)^0.55 from v = mains to nothing; the first surge of the cold filament is shorter.
+    Derived: C dv/dt = -I_rated (v/V_rated)^0.55 from v = mains to nothing, the first surge neglected.
     """
     positive(mains=mains, rated_power=rated_power, rated_voltage=rated_voltage)
     non_negative(capacitance=capacitance)
