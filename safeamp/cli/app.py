@@ -20,6 +20,7 @@ FILES = {
     "limits": "lists",
     "devices": "lists",
     "schema": "schema",
+    "powerup": "powerup",
     "jobsheet": "jobsheet",
     "tolerance": "tolerance",
     "substitute": "substitute",

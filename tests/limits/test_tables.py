@@ -136,6 +136,7 @@ DEFAULTS = {
     "guess.temperature": (0, -10, 10),
     "guess.angle": (0, -15, 15),
     "power_up.other_draw": (5, 1, 12),
+    "power_up.rails_draw": (2, 0.5, 6),
     "power_up.channels": (2, 1, 2),
     "power_up.apparent": (1.2, 1, 1.4),
     "power_up.idle_exponent": (1, 1, 2),

@@ -115,7 +115,7 @@ def test_more_mains_lets_more_through_by_its_power_155():
     ohms = np.geomspace(10, 1e5, 20001)
     left = lamp.voltage_behind_lamp(mains=253, resistance=ohms, **LAMP)
     found = power_up.most_through_lamp(mains=253, **LAMP)
-    assert found == pytest.approx(60 * 0.36517 * 1.1**1.55, rel=1e-3)
+    assert found == pytest.approx(60 * 0.365 * 1.1**1.55, rel=1e-3)
     assert np.max(left**2 / ohms) == pytest.approx(found, rel=1e-5)
 
 
