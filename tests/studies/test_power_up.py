@@ -173,6 +173,14 @@ def test_the_smallest_lamp_that_leaves_enough_is_recommended_with_its_reason():
     assert all(one.rails_left.nominal < 0.8 or "bright" in one.looks_at_lowest for one in smaller)
 
 
+def test_a_lamp_that_may_be_bright_behind_a_healthy_one_is_not_recommended():
+    found = card("15w_single_rail_to3", {"readings.limiter": GONE})
+    small, next_one, *_ = found.limiter.choices
+    assert small.rails_left.nominal >= 0.8
+    assert "bright" in small.looks_at_lowest
+    assert found.limiter.text == next_one.text
+
+
 def test_the_resistor_beside_the_lamps_keeps_the_same_share():
     resistor = card(changes=PLAIN).limiter.choices[-1]
     assert resistor.looks == ""

@@ -56,12 +56,13 @@ def _draw(desk: Desk) -> SwitchOff:
 
 def _volts(states: tuple[State, ...]) -> Iterator[SwitchOff]:
     """Yield the volts that no healthy stage leaves across the limiter, unless a short may leave as few."""
-    shorted = across(states, SHORTED)
-    most = across(states, SET) or across(states, LOWEST)
-    if shorted is not None and most is not None and told_apart(states):
+    shorted, lowest, as_set = (across(states, name) for name in (SHORTED, LOWEST, SET))
+    if shorted is not None and lowest is not None and told_apart(states):
+        more = "" if as_set is None else f"; once it is set, more than {show(as_set.high, VOLTAGE)}"
         yield SwitchOff(
-            f"more than {show(most.high, VOLTAGE)} across the limiter once the flash is over",
-            f"no healthy idle of this sheet leaves more there; a shorted stage leaves {shorted.text(VOLTAGE)}",
+            f"more than {show(lowest.high, VOLTAGE)} across the limiter once the flash is over, with the idle current "
+            f"at its lowest{more}",
+            f"a healthy one of this sheet leaves no more there, a shorted stage {shorted.text(VOLTAGE)}",
             source="computed for this sheet",
         )
 

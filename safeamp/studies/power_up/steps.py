@@ -50,7 +50,10 @@ def steps(desk: Desk, states: tuple[State, ...], timing: Timing) -> Iterator[str
     """Yield the steps of switching on, for cold checks that are cleared."""
     yield "Set the preset for the idle current to its lowest. Nothing at the output, the input shorted."
     yield _connect(desk)
-    yield "Clip one meter to the output and one to a rail, with power off; a third across the limiter if there is one."
+    yield (
+        "With the cord out, clip one meter to the output and one to a rail; a third across the limiter only if its "
+        "leads are made for the mains, for that is what stands there."
+    )
     yield f"Stand back, eyes protected, a hand at the switch. Switch on. {_flash(desk, timing)}"
     yield f"After {wait_text(timing)} read what a healthy one shows with its idle current at the lowest{_look(states)}."
     yield "Any of the switch-off readings below: switch off at once, cord out, discharge; then look for the cause."
