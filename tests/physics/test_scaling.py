@@ -22,6 +22,7 @@ from safeamp.physics import (
     fins,
     heat,
     lamp,
+    power_up,
     safe_area,
     settling,
     stage,
@@ -161,6 +162,10 @@ def lit(u):
     )
 
 
+def idle(u, function, **limiter):
+    return function(mains=u(230.0, "V"), apparent_power=u(15.0, "W"), exponent=1.4, **limiter)
+
+
 def heat_of_means(u):
     means = SimpleNamespace(mean=u(0.6, "A"), mean_square=u(0.9, "A**2"))
     keys = ("half_supply", "peak", "load_magnitude", "phase_angle", "conducting", "emitter_resistor")
@@ -253,6 +258,10 @@ SCALED = {
         "K"),
     "transient.cycle_dissipation": (lambda u: transient.cycle_dissipation(**of_stage(u)), "W"),
     "lamp.voltage_behind_lamp": (lit, "V"),
+    "power_up.idle_behind_lamp": (
+        lambda u: idle(u, power_up.idle_behind_lamp, rated_power=u(60.0, "W"), rated_voltage=u(230.0, "V")), "V"),
+    "power_up.idle_behind_resistor": (
+        lambda u: idle(u, power_up.idle_behind_resistor, resistance=u(680.0, "ohm")), "V"),
     "safe_area.allowed_current": (
         lambda u: safe_area.allowed_current(
             voltage=u(np.array([10.0, 50.0, 120.0]), "V"), case_temperature=u(60.0, "K"), rating=of_device(u)), "A"),
