@@ -220,3 +220,23 @@ def test_the_command_imports_nothing_that_it_does_not_use():
     found = imported_by("powerup", SPLIT_RAIL)
     assert "safeamp.report.power_up" in found
     assert heavy(found) == set()
+
+
+def test_the_lamp_is_named_with_its_voltage_and_kind():
+    text = " ".join(run("powerup", SPLIT_RAIL).stdout.split())
+    assert "put the 60 W lamp for 230 V in series with the live conductor" in text
+    assert "an LED or energy-saving lamp limits nothing" in text
+    resistor = " ".join(run("powerup", SPLIT_RAIL, "--limiter", "470 ohm").stdout.split())
+    assert "put the 470 ohm resistor in series" in resistor
+
+
+def test_the_volts_at_which_to_switch_off_are_those_that_no_healthy_one_reaches():
+    found = card(SPLIT_RAIL)
+    highs = [
+        next(one["expected"]["high"] for one in state["readings"] if one["what"] == "across the limiter")
+        for state in found["states"][:2]
+    ]
+    [said] = [one["when"] for one in found["switch_off"] if "across the limiter once" in one["when"]]
+    assert [float(number) for number in re.findall(r"more than ([\d.]+) V", said)] == pytest.approx(
+        highs, rel=5e-3
+    )

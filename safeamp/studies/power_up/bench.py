@@ -24,6 +24,8 @@ from safeamp.studies.power_up.states import (
     SHORTED,
     Desk,
     healthy_output,
+    state_of,
+    together,
 )
 
 DRAWN = "from each rail"
@@ -34,16 +36,11 @@ def bench_states(desk: Desk) -> tuple[State, ...]:
     lowest, as_set = (desk.extents(_healthy(desk, idle=idle)) for idle in (False, True))
     known = as_set if as_set.found else lowest
     return (
-        _state(LOWEST, lowest, _readings(desk, lowest), healthy=True),
-        _state(SET, as_set, _readings(desk, as_set), healthy=True),
-        *(_state(name, known, _limited(desk, known)) for name in (SHORTED, RUNAWAY)),
-        _state(ONE_DEVICE, lowest, _one_device(lowest)),
+        state_of(LOWEST, lowest, _readings(desk, lowest), healthy=True),
+        state_of(SET, as_set, _readings(desk, as_set), healthy=True),
+        *(state_of(name, known, _limited(desk, known)) for name in (SHORTED, RUNAWAY)),
+        state_of(ONE_DEVICE, lowest, _one_device(lowest)),
     )
-
-
-def _state(name: str, found: Extents, readings: Iterator[Expected], *, healthy: bool = False) -> State:
-    known = tuple(readings) if found.found else ()
-    return State(name=name, healthy=healthy, readings=known, needs=found.needs, because=found.because)
 
 
 def _healthy(desk: Desk, *, idle: bool) -> Compute:
@@ -69,14 +66,9 @@ def limit_current(desk: Desk) -> float | None:
     return None
 
 
-def _rails(found: Extents) -> Extent:
-    rails = [one for name, one in found.found.items() if name.startswith("rail ")]
-    return Extent(rails[0].nominal, min(one.low for one in rails), max(one.high for one in rails))
-
-
 def _readings(desk: Desk, found: Extents) -> Iterator[Expected]:
     yield Expected(DRAWN, CURRENT, found.found["current"])
-    rails = _rails(found)
+    rails = together(found)
     yield Expected(EACH, VOLTAGE, rails, "as you set them, slowly from 0 V")
     yield healthy_output(desk, rails)
     yield Expected(HEAT, POWER, found.found["heat"])
@@ -94,4 +86,4 @@ def _limited(desk: Desk, found: Extents) -> Iterator[Expected]:
 
 def _one_device(found: Extents) -> Iterator[Expected]:
     yield Expected(DRAWN, CURRENT, found.found["current"], "as in a healthy one: nothing loads the output")
-    yield Expected(OUTPUT, VOLTAGE, _rails(found), "near a rail, of its sign")
+    yield Expected(OUTPUT, VOLTAGE, together(found), "near a rail, of its sign")

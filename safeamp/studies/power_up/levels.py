@@ -58,7 +58,7 @@ def _volts(states: tuple[State, ...]) -> Iterator[SwitchOff]:
     """Yield the volts that no healthy stage leaves across the limiter, unless a short may leave as few."""
     shorted, lowest, as_set = (across(states, name) for name in (SHORTED, LOWEST, SET))
     if shorted is not None and lowest is not None and told_apart(states):
-        more = "" if as_set is None else f"; once it is set, more than {show(as_set.high, VOLTAGE)}"
+        more = "" if as_set is None else f"; set, or without a preset, more than {show(as_set.high, VOLTAGE)}"
         yield SwitchOff(
             f"more than {show(lowest.high, VOLTAGE)} across the limiter once the flash is over, with the idle current "
             f"at its lowest{more}",

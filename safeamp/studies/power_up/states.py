@@ -49,27 +49,28 @@ def states_of(desk: Desk) -> tuple[State, ...]:
     as_set = desk.extents(draw.healthy(desk.limiter, desk.limits, idle=True))
     found = [_healthy(desk, LOWEST, lowest), _healthy(desk, SET, as_set)]
     shorted = desk.extents(draw.shorted_stage(desk.limiter, desk.limits))
-    found.append(_state(SHORTED, shorted, _shorted(desk, shorted)))
+    found.append(state_of(SHORTED, shorted, _shorted(desk, shorted)))
     if not single:
         one = desk.extents(draw.shorted_rail(desk.limiter, desk.limits))
-        found.append(_state(ONE_RAIL, one, _one_rail(desk, one)))
-    found.append(_state(ONE_DEVICE, lowest, _one_device(desk, lowest)))
-    found.append(_state(RUNAWAY, lowest, _runaway(desk, lowest)))
+        found.append(state_of(ONE_RAIL, one, _one_rail(desk, one)))
+    found.append(state_of(ONE_DEVICE, lowest, _one_device(desk, lowest)))
+    found.append(state_of(RUNAWAY, lowest, _runaway(desk, lowest)))
     return tuple(found)
 
 
-def _state(name: str, found: Extents, readings: Iterator[Expected], *, healthy: bool = False) -> State:
+def state_of(name: str, found: Extents, readings: Iterator[Expected], *, healthy: bool = False) -> State:
+    """Return a state with its readings, or what makes it unverified."""
     known = tuple(readings) if found.found else ()
     return State(name=name, healthy=healthy, readings=known, needs=found.needs, because=found.because)
 
 
 def _healthy(desk: Desk, name: str, found: Extents) -> State:
-    return _state(name, found, _healthy_readings(desk, found), healthy=True)
+    return state_of(name, found, _healthy_readings(desk, found), healthy=True)
 
 
 def _healthy_readings(desk: Desk, found: Extents) -> Iterator[Expected]:
     yield from _of_limiter(desk, found)
-    rails = _together(found)
+    rails = together(found)
     yield Expected(EACH, VOLTAGE, rails)
     yield healthy_output(desk, rails)
     yield Expected(HEAT, POWER, _up_to(found))
@@ -87,7 +88,8 @@ def _rails(found: Extents) -> list[Extent]:
     return [one for name, one in found.found.items() if name.startswith("rail ")]
 
 
-def _together(found: Extents) -> Extent:
+def together(found: Extents) -> Extent:
+    """Return how far the rails reach, whichever of them."""
     rails = _rails(found)
     return Extent(rails[0].nominal, min(one.low for one in rails), max(one.high for one in rails))
 
@@ -117,7 +119,7 @@ def _level(limits: Limits, id: str) -> float:
 
 def _shorted(desk: Desk, found: Extents) -> Iterator[Expected]:
     yield from _of_limiter(desk, found)
-    yield Expected(EACH, VOLTAGE, _together(found))
+    yield Expected(EACH, VOLTAGE, together(found))
     yield Expected(OUTPUT, None, None, "says nothing: there are no rails")
     yield Expected(HEAT, POWER, _up_to(found), "the most where the short is a poor one")
 
@@ -133,7 +135,7 @@ def _one_rail(desk: Desk, found: Extents) -> Iterator[Expected]:
 
 def _one_device(desk: Desk, found: Extents) -> Iterator[Expected]:
     yield from _of_limiter(desk, found)
-    rails = _together(found)
+    rails = together(found)
     yield Expected(EACH, VOLTAGE, rails, "as in a healthy one: nothing loads them")
     single = operating.is_single(desk.sheet.amplifier)
     says = "near the whole rail, or near 0 V" if single else "near one rail, of its sign"

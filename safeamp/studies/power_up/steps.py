@@ -17,6 +17,7 @@ CAUTIONS = (
     "Mains: inside only with the cord out; on a live amplifier meters clipped on before, one hand away, never alone.",
     "Stored charge: the reservoirs hold it after switch-off. Discharge them through a resistor, then measure.",
     "A limiter in series protects parts, not people: all behind it and its own contacts are as live as before.",
+    "The lamp is an incandescent or halogen one for the mains; an LED or energy-saving lamp limits nothing.",
     "A variable transformer is no current limiter and does not isolate; it does not take the place of the limiter.",
     "No loudspeaker and no headphones connected; no signal, the input shorted.",
 )
@@ -48,7 +49,7 @@ def wait_text(timing: Timing) -> str:
 
 def steps(desk: Desk, states: tuple[State, ...], timing: Timing) -> Iterator[str]:
     """Yield the steps of switching on, for cold checks that are cleared."""
-    yield "Set the preset for the idle current to its lowest. Nothing at the output, the input shorted."
+    yield "Set the preset of the idle current, if there is one, to its lowest. Nothing at the output; input shorted."
     yield _connect(desk)
     yield (
         "With the cord out, clip one meter to the output and one to a rail; a third across the limiter only if its "
@@ -70,13 +71,22 @@ def steps(desk: Desk, states: tuple[State, ...], timing: Timing) -> Iterator[str
 def _connect(desk: Desk) -> str:
     if desk.limiter.kind != "bench":
         return (
-            f"With the cord out, put the {desk.limiter.text} in series with the live conductor of the mains."
+            f"With the cord out, put the {desk.limiter.text}{_voltage(desk)} in series with the live conductor of the "
+            "mains; the protective earth stays connected."
         )
     amperes = limit_current(desk)
     limit = "as low as it goes" if amperes is None else f"to {show(amperes, CURRENT)}"
     return (
         "Disconnect the amplifier's own supply from the rails, discharge, connect the bench supply, and set its "
         f"current limit {limit}."
+    )
+
+
+def _voltage(desk: Desk) -> str:
+    """Return for which voltage a lamp must be made."""
+    nominal = desk.sheet.amplifier.mains.nominal
+    return (
+        f" for {show(float(nominal), VOLTAGE)}" if desk.limiter.kind == "lamp" and nominal is not None else ""
     )
 
 
