@@ -7,6 +7,7 @@ from safeamp.answers import PowerUp
 from safeamp.findings import Verdict
 from safeamp.physics import lamp
 from safeamp.physics import power_up as physics
+from safeamp.report.power_up import render_power_up
 from safeamp.studies import corners
 from safeamp.studies.power_up import power_up
 from safeamp.studies.power_up.limiters import look, looks
@@ -332,3 +333,27 @@ def test_what_was_assumed_is_listed_with_its_source():
     assert "common practice, no source" in keys["power_up.other_draw"].why
     assert "mains.highest" not in keys
     assert "mains.nominal" in {one.key for one in card(changes={"mains.nominal": GONE}).assumptions}
+
+
+def test_what_cannot_be_computed_is_unverified_and_says_why():
+    found = card(changes={**PLAIN, "stage.swing_loss": "32 V"})
+    assert state(found, SHORTED).readings == ()
+    assert "cannot be computed" in state(found, SHORTED).because[0]
+    assert extent(found, SET, ACROSS).high > 0
+    assert not any("across the limiter once" in one.when for one in found.switch_off)
+
+
+def test_a_bench_supply_is_limited_by_the_lowest_idle_where_none_is_known():
+    # Derived: 6 W at 68 V is 88 mA, twice that 176 mA, next of E12 180 mA.
+    found = card(changes={**PLAIN, "readings.limiter": "bench", "stage.idle": GONE})
+    assert "current limit to 180 mA" in " ".join(found.steps)
+    assert extent(found, SHORTED, HEAT).high == pytest.approx(68 * 0.18)
+
+
+def test_without_a_limiter_to_reckon_with_the_head_gives_no_step():
+    found = card(changes={"supply.source": "regulated", "readings.limiter": "60 W lamp"})
+    text = " ".join(render_power_up(found).split())
+    assert found.verdict.clears
+    assert "for the cold checks, but no step: no limiter can be reckoned with." in text
+    assert "may be applied" not in text
+    assert "Switch on" not in text
