@@ -13,6 +13,8 @@ from safeamp.quantities import Number, Origin
 
 #: What nobody read off the amplifier or measured is no rating of its maker.
 NOT_GIVEN = (Origin.GUESS, Origin.EXAMPLE)
+#: A rated impedance may fall to this share at some note (IEC 60268-5; value memory).
+LEAST_OF_RATED = 0.8
 #: Condition -> keys that it rests on.
 RESTS_ON = {
     "stage.rated_load": ("stage.rated_load",),
@@ -28,6 +30,7 @@ def as_built(amplifier: Amplifier, limit: Limit, label: Limit) -> AsBuilt:
     load = nominal(operating.believed_nominal(amplifier) * operating.together(amplifier))
     conditions = {
         "stage.rated_load": table.rated_load is not None and nominal(table.rated_load) <= load * (1.0 + 1e-9),
+        "loudspeaker.minimum_impedance": _minimum_is_covered(amplifier),
         "stage.original_devices": table.original_devices is True,
         "stage.pairs_conducting": _all_conduct(amplifier),
         "loudspeaker.dc_resistance": _label_is_go(amplifier, label),
@@ -36,6 +39,13 @@ def as_built(amplifier: Amplifier, limit: Limit, label: Limit) -> AsBuilt:
     }
     failed = tuple(key for key, holds in conditions.items() if not (holds and _is_given(amplifier, key)))
     return AsBuilt(not failed, limit.extra["as_built_ceiling"], failed)
+
+
+def _minimum_is_covered(amplifier: Amplifier) -> bool:
+    """Whether the lowest impedance is one that a loudspeaker of the maker's rated load may have."""
+    rated = amplifier.stage.rated_load
+    lowest = nominal(operating.believed_minimum(amplifier) * operating.together(amplifier))
+    return rated is not None and lowest >= LEAST_OF_RATED * nominal(rated) * (1.0 - 1e-9)
 
 
 def _is_given(amplifier: Amplifier, condition: str) -> bool:

@@ -33,14 +33,19 @@ def _has_resistor(amplifier: Amplifier) -> bool:
 
 
 def bench_idle(amplifier: Amplifier) -> Number:
-    """Return the idle current of each device as read at the bench, A; noted as missing when nobody read it."""
-    read = operating.read_idle(amplifier)
+    """Return the idle current of each device as read at the bench, A; noted as missing when nobody read it.
+
+    Of readings and a measured `stage.idle` the larger counts, as for heat and safe area.
+    """
+    found, read = [], operating.read_idle(amplifier)
     if read is not None:
-        return operating.as_current(amplifier, read, "V")
+        found.append(operating.as_current(amplifier, read, "V"))
     if amplifier.stage.idle is not None and _measured(amplifier, "stage.idle"):
-        return operating.as_current(amplifier, amplifier.stage.idle, amplifier.stage.idle_unit)
-    miss(amplifier, "readings.idle_upper", "readings.idle_lower")
-    return np.nan
+        found.append(operating.as_current(amplifier, amplifier.stage.idle, amplifier.stage.idle_unit))
+    if not found:
+        miss(amplifier, "readings.idle_upper", "readings.idle_lower")
+        return np.nan
+    return reduce(np.maximum, found)
 
 
 def _warm_idle(amplifier: Amplifier) -> Number:

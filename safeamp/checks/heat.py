@@ -39,11 +39,15 @@ def _stage_also(
         *_ruled_also(amplifier, loud),
         Also("heat of the stage without signal", nominal(quiet.stage_power), POWER),
         Also("heat of the stage at one third of clipping power", nominal(loud.stage_power), POWER),
-        Also(
-            "power at clipping into the nominal impedance", nominal(operating.output_power(amplifier)), POWER
-        ),
+        Also(_clipping_name(amplifier), nominal(operating.output_power(amplifier)), POWER),
         *_bridged_also(amplifier),
     )
+
+
+def _clipping_name(amplifier: Amplifier) -> str:
+    """Return into what the power at clipping goes."""
+    beside = "" if amplifier.stage.series_resistor is None else " with the series resistor before it"
+    return f"power at clipping into the nominal impedance{beside}"
 
 
 def _bridged_also(amplifier: Amplifier) -> tuple[Also, ...]:
@@ -161,7 +165,7 @@ def _junction_also(amplifier: Amplifier, found: _Junction) -> tuple[Also, ...]:
 
 @finding("heat.reading", Step.SOAK, RATIO, at_bench=True)
 def check_reading(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicable:
-    """Read rise of the heatsink over the computed one."""
+    """Read rise of the heatsink over the computed one; the read temperature itself counts as that of the heatsink."""
     if thermal.stands_free(amplifier):
         return NotApplicable(FREE_AIR)
     read, air = needed(amplifier, "readings.heatsink_temperature", "readings.heatsink_air")
@@ -173,14 +177,36 @@ def check_reading(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicab
     )
     computed = thermal.sink_temperature(amplifier, dissipated, air=air)
     rise, expected = read - air, (computed - air if played in LEVELS or played == "idle" else np.nan)
+    small = np.where(rise < own.extra["small_rise_below"], np.inf, level(own, "stop"))
     return Measure(
         rise / np.where(np.asarray(expected) > 0.0, expected, np.nan),
         f"read {text(rise, TEMPERATURE_DIFFERENCE)} above air, computed {text(expected, TEMPERATURE_DIFFERENCE)}",
-        stop=np.where(rise < own.extra["small_rise_below"], np.inf, level(own, "stop")),
-        remarks=(*heat_remarks(amplifier), *idle_remarks(amplifier), *_too_cool(rise, expected, limits)),
+        go=np.where(read > level(limits["heat.heatsink"], "go"), -np.inf, level(own, "go")),
+        stop=np.where(read > level(limits["heat.heatsink"], "stop"), -np.inf, small),
+        remarks=(
+            *heat_remarks(amplifier),
+            *idle_remarks(amplifier),
+            *_too_cool(rise, expected, limits),
+            *_read_remarks(amplifier, read, air, limits),
+        ),
         next="read heatsink and air beside it once both have settled, and say at which level",
         method="read rise over computed rise at the same level",
     )
+
+
+def _read_remarks(amplifier: Amplifier, read: Number, air: Number, limits: Limits) -> tuple[Remark, ...]:
+    """Return what a heatsink says that is hotter than one may be, or that stands in another air than the sheet's."""
+    (stated,), found = needed(amplifier, "heatsink.air"), []
+    highest = level(limits["heat.heatsink"], "go")
+    if nominal(read) > highest:
+        said = f"the heatsink itself read {text(read, TEMPERATURE)}, go ends at {text(highest, TEMPERATURE)}"
+        found.append(Remark(Verdict.GO, said))
+    if nominal(air) > nominal(stated) + limits["heat.reading"].extra["air_above_stated"]:
+        said = f"the air beside the heatsink read {text(air, TEMPERATURE)}, heatsink.air is {text(stated, TEMPERATURE)}"
+        found.append(
+            Remark(Verdict.UNVERIFIED, f"{said}: write it as hot as it gets, and all is computed for that")
+        )
+    return tuple(found)
 
 
 def _too_cool(rise: Number, expected: Number, limits: Limits) -> tuple[Remark, ...]:

@@ -20,17 +20,18 @@ _STEPS = np.linspace(-1.0, 1.0, 9)
 
 
 def worst_level(amplifier: Amplifier) -> float:
-    """Return the share of clipping power at which a sine heats the nominal stage most.
+    """Return the share of clipping power at which a sine heats the nominal stage most; 0 where no signal heats more.
 
     The worst level of class B in closed form and a grid start the search; the grid is then refined around its best
-    point. With much idle current the lowest level of the grid is the worst: less signal heats more.
+    point. With much idle current every sine heats less than no signal.
     """
     levels = np.append(np.linspace(0.02, 1.0, 50), _class_b(amplifier))
     step, best = 0.02, _hottest(amplifier, levels)
     for _ in range(_ROUNDS):
         best = _hottest(amplifier, np.clip(best + step * _STEPS, 1e-4, 1.0))
         step = step / 4.0
-    return best
+    quiet = nominal(thermal.no_signal(amplifier).stage_power)
+    return 0.0 if quiet >= nominal(thermal.at_level(amplifier, best).stage_power) else best
 
 
 def _class_b(amplifier: Amplifier) -> float:
@@ -66,19 +67,28 @@ def level_also(amplifier: Amplifier) -> tuple[Also, ...]:
     whole = plain(amplifier)
     if whole is None or np.isnan(nominal(thermal.at_level(whole, thermal.ONE_THIRD).stage_power)):
         return ()
-    level = worst_level(whole)
-    heat = thermal.at_level(whole, level)
+    return (
+        *_worst_also(whole, worst_level(whole)),
+        Also(
+            "heat of programme like noise at one eighth of clipping power, class B",
+            nominal(programme_heat(whole, thermal.ONE_EIGHTH)),
+            POWER,
+        ),
+    )
+
+
+def _worst_also(amplifier: Amplifier, level: float) -> tuple[Also, ...]:
+    """Return what the worst level of a sine does, or that no signal is worse than any."""
+    if level == 0.0:
+        quiet = nominal(thermal.no_signal(amplifier).stage_power)
+        return (Also("most heat of the stage, without signal: any sine heats less", quiet, POWER),)
+    heat = thermal.at_level(amplifier, level)
     return (
         Also("worst level of a sine, share of clipping power", level, RATIO),
         Also("heat of the stage at the worst level of a sine", nominal(heat.stage_power), POWER),
         Also(
             "heatsink at the worst level of a sine",
-            nominal(thermal.sink_temperature(whole, heat)),
+            nominal(thermal.sink_temperature(amplifier, heat)),
             TEMPERATURE,
-        ),
-        Also(
-            "heat of programme like noise at one eighth of clipping power, class B",
-            nominal(programme_heat(whole, thermal.ONE_EIGHTH)),
-            POWER,
         ),
     )

@@ -270,16 +270,19 @@ def behind_capacitor(
 ) -> tuple[Number, Number]:
     """Return a load of one side with the output capacitor in series, at the note that turns it to an angle.
 
-    The capacitive side of the load counts; `most` is the angle looked for, deg, held between that of the load alone
-    and that at the lowest note.
+    `most` is the angle looked for, deg, held between the least and the largest that notes from the lowest one up can
+    give. On the inductive side of the load the capacitor takes reactance away, down to none where both resonate; on
+    the capacitive side it adds. Loads within the largest angle stay behind these: at the same reactance they have
+    more resistance.
     """
     farads, note = needed(amplifier, "output_capacitor.capacitance", "loudspeaker.lowest_note")
     esr = amplifier.output_capacitor.esr
     turn = np.deg2rad(angle)
     resistance = magnitude * np.cos(turn) + (0.0 if esr is None else esr)
     own = magnitude * np.sin(turn)
-    lowest = own + 1.0 / (2.0 * np.pi * note * farads)
-    turned = np.clip(np.tan(np.deg2rad(min(most, 89.9))), own / resistance, lowest / resistance)
+    reactance = 1.0 / (2.0 * np.pi * note * farads)
+    least, largest = np.maximum(own - reactance, 0.0), own + reactance
+    turned = np.clip(np.tan(np.deg2rad(min(most, 89.9))), least / resistance, largest / resistance)
     return resistance * np.hypot(1.0, turned), np.rad2deg(np.arctan(turned))
 
 

@@ -35,10 +35,12 @@ def check_short(amplifier: Amplifier, limits: Limits) -> Measure:
     found = [_limiter(amplifier, side) for side in safe_area.sides_to_judge(amplifier)]
     use = reduce(np.maximum, [one.use for one in found])
     worst = max(found, key=lambda one: nominal(one.use))
+    at = f"{text(worst.voltage, VOLTAGE)} and {text(worst.current, CURRENT)}"
+    finite = np.isfinite(nominal(use))
+    let = f"{nominal(use):.0%} of what the safe area allows" if finite else "current where none is allowed"
     return Measure(
         use,
-        f"the V-I limiter lets through {nominal(use):.0%} of what the safe area allows, at "
-        f"{text(worst.voltage, VOLTAGE)} and {text(worst.current, CURRENT)}",
+        f"the V-I limiter lets through {let}, at {at}",
         remarks=safe_area.device_remarks(amplifier, limits),
         unknown=reduce(np.logical_or, [one.enters_unknown for one in found]),
         everywhere=True,

@@ -35,9 +35,10 @@ from safeamp.quantities import (
 MINIMUM_ANGLE = 30.0
 #: Angle shown beside the one that is judged, deg.
 SHOWN_ANGLE = 60.0
-#: Angles at which a load behind the output capacitor is looked at, as far as the lowest note reaches them, deg:
-#: on the way there the use is largest near the first two, and a steep second-breakdown line moves it to the last.
-LOW_NOTE_ANGLES = (48.0, 60.0, 90.0)
+#: Angles at which a load behind the output capacitor is looked at, as far as notes reach them, deg: the least has the
+#: most current, the power line is used most in the middle, a steep second-breakdown line moves it on. Of 700 random
+#: devices none was used more than 0.6 % above these anywhere between.
+LOW_NOTE_ANGLES = (0.0, 44.0, 50.0, 56.0, 62.0, 90.0)
 #: From this share of the peak current on an idle current makes an unloaded output worth a look.
 OPEN_LOAD_IDLE = 0.25
 OPEN_LOAD = 1e6

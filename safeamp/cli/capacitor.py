@@ -14,6 +14,7 @@ from safeamp.cli.figures import (
     check_folder,
     write_figures,
 )
+from safeamp.cli.files import FilesRead
 from safeamp.cli.options import LimitsOption
 from safeamp.cli.output import note
 from safeamp.cli.quick import Format, FormatOption, Load, SingleRail, run
@@ -70,4 +71,4 @@ def _draw(folder: Path | None, format_: FigureFormat, limits: Path | None, answe
         return
     from safeamp.figures import bass_pictures
 
-    write_figures(bass_pictures(answer.bass), folder, format_, never=(limits,))
+    write_figures(bass_pictures(answer.bass), folder, format_, never=FilesRead(limits=limits))

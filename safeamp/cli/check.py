@@ -16,7 +16,8 @@ from safeamp.cli.figures import (
     check_folder,
     write_figures,
 )
-from safeamp.cli.judged import Judged, drawings, files_read, judged, left_out, step_of
+from safeamp.cli.files import FilesRead
+from safeamp.cli.judged import Judged, drawings, judged, left_out, step_of
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, emit, fail
 
@@ -59,10 +60,10 @@ def check(
     if explain and format_ is Format.CSV:
         fail("--explain: a row of csv has no room for a calculation; take text, json, markdown or html")
     _check_page(format_, all_figures=all_figures)
-    never = tuple(files_read(sheet, limits, device_folder))
+    never = FilesRead(sheet, limits=limits, device_folder=device_folder)
     if output is not None:
         check_output(output, never)
-    check_folder(figures)
+    check_folder(figures, output)
     found = judged(sheet, limits=limits, device_folder=device_folder, on_paper=on_paper, up_to=up_to)
     if figures is not None:
         write_figures(found.gallery, figures, figures_format, never=never)
@@ -83,7 +84,7 @@ def demo(
 ) -> None:
     """Show a report on a built-in amplifier that is invented."""
     _check_page(format_, all_figures=all_figures)
-    check_folder(figures)
+    check_folder(figures, output)
     found = judged(Path(__file__).with_name("demo.toml"), demo=True)
     if figures is not None:
         write_figures(found.gallery, figures, figures_format)

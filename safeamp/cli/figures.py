@@ -35,10 +35,14 @@ AllFiguresOption = Annotated[
 ]
 
 
-def check_folder(folder: Path | None) -> None:
-    """End with the status for wrong input where figures are wanted and cannot be written."""
+def check_folder(folder: Path | None, output: Path | None = None) -> None:
+    """End with the status for wrong input where figures are wanted and cannot be written, or not beside a result."""
     if folder is None:
         return
+    if output is not None and folder.resolve() in (output.resolve(), output.resolve().parent):
+        among = output.suffix in {f".{one.value}" for one in FigureFormat}
+        if among or folder.resolve() == output.resolve():
+            fail(f"--output {output} would take the place of a figure; name another file")
     if folder.exists() and not folder.is_dir():
         fail(f"--figures {folder} is not a folder; name a folder to write into")
     if not folder.parent.is_dir():
@@ -46,7 +50,7 @@ def check_folder(folder: Path | None) -> None:
 
 
 def write_figures(
-    gallery: Gallery, folder: Path, format_: FigureFormat, *, never: Iterable[Path | None] = ()
+    gallery: Gallery, folder: Path, format_: FigureFormat, *, never: Iterable[Path] = ()
 ) -> None:
     """Write every picture into a folder, over none of the files in `never`, and say what is left out."""
     from safeamp.figures import rendered
@@ -65,9 +69,9 @@ def write_figures(
         note(f"figure {one.name} is left out: {one.because}{stale}")
 
 
-def _check_file(file: Path, never: Iterable[Path | None]) -> None:
+def _check_file(file: Path, never: Iterable[Path]) -> None:
     for path in never:
-        if path is not None and path.exists() and file.exists() and file.samefile(path):
+        if path.exists() and file.exists() and file.samefile(path):
             fail(f"--figures: {file} is a file that is read; draw into another folder")
     if file.exists() and not file.is_file():
         fail(f"--figures: {file} is not a file; draw into another folder")

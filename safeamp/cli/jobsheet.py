@@ -7,7 +7,8 @@ from typing import Annotated
 
 import typer
 
-from safeamp.cli.judged import Judged, drawings, files_read, judged, left_out
+from safeamp.cli.files import FilesRead
+from safeamp.cli.judged import Judged, drawings, judged, left_out
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, columns, complaining, emit
 
@@ -28,7 +29,7 @@ def jobsheet(
     device_folder: DeviceFolderOption = None,
 ) -> None:
     """Print one page for the customer and the full record; refused while a value is still an example."""
-    never = tuple(files_read(sheet, limits, device_folder))
+    never = FilesRead(sheet, limits=limits, device_folder=device_folder)
     if output is not None:
         check_output(output, never)
     found = judged(sheet, limits=limits, device_folder=device_folder)

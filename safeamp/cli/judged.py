@@ -87,11 +87,6 @@ def judged(
     return Judged(sheet, rules, report)
 
 
-def files_read(sheet: Path, limits: Path | None, device_folder: Path | None) -> Iterable[Path | None]:
-    """Return the files that a result is never written over."""
-    return (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
-
-
 def step_of(word: str) -> Step:
     """Return the step that a user names, with hyphens or blanks."""
     from safeamp.findings import Step

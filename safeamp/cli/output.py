@@ -85,7 +85,7 @@ def colourful() -> bool:
     return sys.stdout.isatty() and not plain
 
 
-def emit(text: str, output: Path | None = None, *, never: Iterable[Path | None] = ()) -> None:
+def emit(text: str, output: Path | None = None, *, never: Iterable[Path] = ()) -> None:
     """Write a result to stdout, or whole into a file that is none of the files in `never`."""
     if output is None:
         _print(text)
@@ -106,10 +106,10 @@ def _print(text: str) -> None:
             fail(f"the result could not be written: {trouble.strerror}")
 
 
-def check_output(output: Path, never: Iterable[Path | None] = ()) -> None:
+def check_output(output: Path, never: Iterable[Path] = ()) -> None:
     """End with the status for wrong input where a result must not or cannot be written."""
     for path in never:
-        if path is not None and path.exists() and output.exists() and output.samefile(path):
+        if path.exists() and output.exists() and output.samefile(path):
             fail(f"--output {output} is a file that is read; write the result into another one")
     if output.exists() and not output.is_file():
         fail(f"--output {output} is not a file; name a file to write into")

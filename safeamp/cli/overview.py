@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from safeamp.cli.files import FilesRead
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption
 from safeamp.cli.output import check_output, columns, complaining, emit, fail
 
@@ -36,11 +37,11 @@ def overview(
 ) -> None:
     """Show all sheets of a folder in one table; ends with the worst word, or 2 where one could not be read."""
     paths = _sheets(folder)
-    read_only = (*paths, limits, *(device_folder.glob("*.toml") if device_folder else ()))
+    never = FilesRead(*paths, limits=limits, device_folder=device_folder)
     if output is not None:
-        check_output(output, read_only)
+        check_output(output, never)
     found = _judge(paths, limits, device_folder, on_paper=on_paper)
-    emit(_text(found, format_, columns() if output is None else 80), output, never=read_only)
+    emit(_text(found, format_, columns() if output is None else 80), output, never=never)
     raise typer.Exit(found.exit_status)
 
 

@@ -16,6 +16,7 @@ from safeamp.cli.figures import (
     check_folder,
     write_figures,
 )
+from safeamp.cli.files import FilesRead
 from safeamp.cli.options import DeviceFolderOption, LimitsOption
 from safeamp.cli.output import complaining
 from safeamp.cli.quick import (
@@ -105,5 +106,5 @@ def _draw(
     from safeamp.figures import plane_pictures
 
     limits, devices = read
-    never = (limits, *(devices.glob("*.toml") if devices else ()))
+    never = FilesRead(limits=limits, device_folder=devices)
     write_figures(plane_pictures(answer.plane), folder, format_, never=never)

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from safeamp.cli.files import FilesRead
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, columns, complaining, emit, fail
 
@@ -49,13 +50,13 @@ def solve(
     """Say at which values of one key the findings that read it stay go; what ends them; what can be bought."""
     from safeamp.report.solution import render_solution, solution_json
 
-    read_only = (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
+    never = FilesRead(sheet, limits=limits, device_folder=device_folder)
     if output is not None:
-        check_output(output, read_only)
+        check_output(output, never)
     found = _solve(sheet, key, tuple(finding or ()), until, on_paper, limits, device_folder)
     width = columns() if output is None else 80
     text = solution_json(found) if format_ is Form.JSON else render_solution(found, width=width)
-    emit(text, output, never=read_only)
+    emit(text, output, never=never)
 
 
 def _solve(

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from safeamp.cli.files import FilesRead
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, complaining, emit, fail
 from safeamp.complaints import ReadingError
@@ -44,11 +45,11 @@ def substitute(
     device_folder: DeviceFolderOption = None,
 ) -> None:
     """Hold another device against the fitted one along the same load lines, volt by volt."""
-    read_only = (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
+    never = FilesRead(sheet, limits=limits, device_folder=device_folder)
     if output is not None:
-        check_output(output, read_only)
+        check_output(output, never)
     answer = _compare(sheet, device, side, limits, device_folder)
-    emit(_text(answer, format_, output), output, never=read_only)
+    emit(_text(answer, format_, output), output, never=never)
     raise typer.Exit(answer.exit_status)
 
 

@@ -17,6 +17,7 @@ from safeamp.cli.figures import (
     check_folder,
     write_figures,
 )
+from safeamp.cli.files import FilesRead
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, columns, complaining, emit
 
@@ -62,10 +63,10 @@ def tolerance(
     from safeamp.reading.limits import load_limits
     from safeamp.studies.tolerance import tolerance as study
 
-    read_only = (sheet, limits, *(device_folder.glob("*.toml") if device_folder else ()))
+    never = FilesRead(sheet, limits=limits, device_folder=device_folder)
     if output is not None:
-        check_output(output, read_only)
-    check_folder(figures)
+        check_output(output, never)
+    check_folder(figures, output)
     with complaining():
         rules = load_limits(limits)
         read = load_sheet(sheet, device_folder=device_folder, limits=rules)
@@ -74,8 +75,8 @@ def tolerance(
             read, rules, samples=samples, seed=seed, distribution=distribution.value, progress=step
         )
     if figures is not None:
-        write_figures(_histograms(answer, read, rules), figures, figures_format, never=read_only)
-    emit(_text(answer, format_, 80 if output else columns()), output, never=read_only)
+        write_figures(_histograms(answer, read, rules), figures, figures_format, never=never)
+    emit(_text(answer, format_, 80 if output else columns()), output, never=never)
 
 
 def _histograms(answer: Tolerance, sheet: Sheet, limits: Limits) -> Gallery:

@@ -10,22 +10,27 @@ import numpy.typing as npt
 
 from safeamp.amplifier import Amplifier
 from safeamp.checks import thermal
+from safeamp.checks.levels import worst_level
 from safeamp.checks.thermal import Dissipation
+from safeamp.checks.trace import needed
 from safeamp.checks.words import nominal
+
+COUNTS = ("loudspeaker.parallel", "loudspeaker.series")
 
 Values = npt.NDArray[np.float64]
 
-#: Levels at which a worst one is looked for, and that a curve is drawn through: shares of the power at clipping.
+#: Levels that a curve is drawn through: shares of the power at clipping.
 FRACTIONS = np.linspace(0.0, 1.0, 201)
 
 
 @dataclass(frozen=True, eq=False)
 class Level:
-    """A level of the stage: its name, its share of the power at clipping, its heat."""
+    """A level of the stage: its name, its share of the power at clipping, its heat, and whether none heats more."""
 
     name: str
     fraction: float
     heat: Dissipation
+    hottest: bool = False
 
     @property
     def watts(self) -> float:
@@ -41,18 +46,26 @@ def heat_over_level(amplifier: Amplifier, angle: float = 0.0) -> Values:
     return np.append(quiet, np.broadcast_to(sine.stage_power, fractions.shape))
 
 
-def worst_fraction(heat: Values) -> float:
-    """Return the level of the most heat among `FRACTIONS`, the first one left out."""
-    return float(FRACTIONS[1:][int(np.argmax(heat[1:]))])
-
-
 def levels_of(amplifier: Amplifier) -> tuple[Level, ...]:
-    """Return no signal, one eighth, one third and the worst sine into the nominal load."""
-    worst = worst_fraction(heat_over_level(amplifier))
-    sines = {
-        "one eighth": thermal.ONE_EIGHTH,
-        "one third": thermal.ONE_THIRD,
-        f"worst sine ({worst:.0%})": worst,
-    }
-    found = [Level(name, fraction, thermal.at_level(amplifier, fraction)) for name, fraction in sines.items()]
-    return (Level("no signal", 0.0, thermal.no_signal(amplifier)), *found)
+    """Return no signal, one eighth, one third and the worst sine into the nominal load, unless no signal is worse."""
+    worst = worst_level(amplifier)
+    quiet = "no signal" if worst else "no signal, the hottest"
+    sines = {"one eighth": thermal.ONE_EIGHTH, "one third": thermal.ONE_THIRD}
+    if worst:
+        sines[f"worst sine ({worst:.0%})"] = worst
+    found = [
+        Level(name, fraction, thermal.at_level(amplifier, fraction), hottest=fraction == worst)
+        for name, fraction in sines.items()
+    ]
+    return (Level(quiet, 0.0, thermal.no_signal(amplifier), hottest=not worst), *found)
+
+
+def of_what(amplifier: Amplifier) -> str:
+    """Return of what the heat and the power at clipping of a stage are, where that is not the one loudspeaker."""
+    parallel, series = (nominal(count) for count in needed(amplifier, *COUNTS))
+    said = ["one side of the bridge"] if amplifier.stage.bridged else []
+    if amplifier.stage.series_resistor is not None:
+        said.append("load with its series resistor")
+    elif parallel * series > 1.0:
+        said.append(f"all {parallel * series:.0f} loudspeakers together")
+    return ", ".join(said)

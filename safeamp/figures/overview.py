@@ -10,9 +10,10 @@ from typing import Any
 import numpy as np
 from matplotlib.axes import Axes
 
+from safeamp.checks.amounts import STATES, value_text
 from safeamp.figures.look import BLACK, BLUE, GREY, PALE, VERMILLION, Margins, NotDrawnError
 from safeamp.findings import Bound, Finding, Verdict
-from safeamp.quantities import TEMPERATURE, show
+from safeamp.quantities import TEMPERATURE
 
 TITLE = "How much of each limit is used"
 #: Temperatures count as rise above this room, degC.
@@ -20,8 +21,8 @@ ROOM = 25.0
 #: The bars end here; a longer one carries an arrow, its number stands beside it.
 END = 1.5
 ROW = 0.205
-#: The longest id on the left, the longest number on the right; to measure each text would take half of the drawing.
-MARGINS = Margins(left=1.58, right=1.6, bottom=0.66, top=0.28)
+#: The longest id on the left, the longest value on the right; to measure each text would take half of the drawing.
+MARGINS = Margins(left=1.58, right=1.88, bottom=0.66, top=0.28)
 FILLS: dict[Verdict, dict[str, Any]] = {
     Verdict.GO: {"facecolor": PALE, "hatch": ""},
     Verdict.CAUTION: {"facecolor": BLUE, "hatch": ""},
@@ -40,9 +41,9 @@ class Used:
 
 
 def used(finding: Finding) -> Used:
-    """Return how much a finding uses of its stop level, or of its go level where it has no stop."""
+    """Return how much a finding uses of its stop level, or of its go level where it has no stop; a state uses none."""
     bound = finding.bound
-    if bound is None or (bound.go is None and bound.stop is None):
+    if finding.id in STATES or bound is None or (bound.go is None and bound.stop is None):
         return Used()
     share = _Share(bound, temperature=finding.kind == TEMPERATURE)
     worst = np.inf if finding.unbounded else finding.worst
@@ -128,10 +129,9 @@ def _left(axes: Axes, place: float, said: str, **how: Any) -> None:
 
 
 def _words_beside(axes: Axes, place: float, finding: Finding) -> None:
-    """Write id, word and number of a row."""
-    value = "unbounded" if finding.unbounded else show(finding.nominal, finding.kind)
+    """Write id, word and value of a row."""
     _left(axes, place, finding.id)
-    for points, said in ((9, finding.verdict.word), (64, "" if value == "unknown" else value)):
+    for points, said in ((9, finding.verdict.word), (60, value_text(finding))):
         axes.annotate(
             said, (END, place), (points, 0), textcoords="offset points", va="center", annotation_clip=False
         )

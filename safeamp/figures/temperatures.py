@@ -9,7 +9,7 @@ from safeamp.amplifier import Amplifier
 from safeamp.checks import cycle, thermal
 from safeamp.checks.trace import needed
 from safeamp.checks.words import level, nominal, text
-from safeamp.figures.levels import Level, levels_of
+from safeamp.figures.levels import Level, levels_of, of_what
 from safeamp.figures.look import BLACK, BLUE, GREY, VERMILLION, NotDrawnError, apart
 from safeamp.limits import Limits
 from safeamp.quantities import POWER, TEMPERATURE
@@ -61,9 +61,11 @@ def draw(axes: Axes, amplifier: Amplifier, limits: Limits) -> str:
     names = [f"{at.name}\n{text(at.heat.stage_power, POWER)}" for at in levels]
     axes.set_xticks(range(len(levels)), names)
     axes.grid(visible=False, axis="x")
+    of = of_what(amplifier)
+    further = f"\n{of}" if of else ""
     axes.set(
         ylabel="Temperature (°C)",
-        xlabel="Level of a sine, share of the power at clipping; heat of the stage (W)",
+        xlabel=f"Level of a sine, share of the power at clipping; heat of the stage (W){further}",
     )
     return _words(levels, ladders)
 

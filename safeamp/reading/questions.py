@@ -18,6 +18,7 @@ from safeamp.quantities import (
 from safeamp.reading.device_questions import ask_devices
 from safeamp.reading.draft import Draft
 from safeamp.reading.reading_questions import ask_readings
+from safeamp.reading.supply_questions import ask_supply
 
 MOST_IDLE = {"V": 5.0, "A": 3.0}
 MOST_IDLE_ACROSS_RESISTOR = 10.0
@@ -25,7 +26,7 @@ MOST_IDLE_ACROSS_RESISTOR = 10.0
 
 def ask(draft: Draft) -> None:
     """Complain of every contradiction."""
-    for question in (*QUESTIONS, ask_devices, ask_readings):
+    for question in (ask_supply, *QUESTIONS, ask_devices, ask_readings):
         question(draft)
 
 
@@ -34,36 +35,6 @@ def _below(draft: Draft, path: str, other: str, kind: Kind, write: str) -> None:
     value, bound = draft.number(path), draft.number(other)
     if value is not None and bound is not None and value > bound:
         draft.complain(path, f"{show(value, kind)} is above {other}, {show(bound, kind)}; {write}")
-
-
-def _mains(draft: Draft) -> None:
-    highest, actual = draft.number("mains.highest"), draft.number("mains.actual")
-    if highest is not None and actual is not None and highest < actual:
-        text = f"{show(highest, VOLTAGE)} is below mains.actual, {show(actual, VOLTAGE)}"
-        draft.complain(
-            "mains.highest", f"{text}; write the highest mains that may come, or leave the key out"
-        )
-
-
-def _rails(draft: Draft) -> None:
-    most = 1 if draft.word("supply.rails") == "single" else 2
-    for name in ("no_load", "full_load"):
-        rails = draft.numbers(f"supply.{name}")
-        if len(rails) > most and draft.word("supply.rails"):
-            has = "a single supply has one rail" if most == 1 else "a split supply has two rails"
-            draft.complain(f"supply.{name}", f"{len(rails)} values are given; {has}: write {most} at most")
-
-
-def _sag(draft: Draft) -> None:
-    idle, loaded = draft.numbers("supply.no_load"), draft.numbers("supply.full_load")
-    if not idle or not loaded or max(len(idle), len(loaded)) > 2:
-        return
-    wide = max(len(idle), len(loaded))
-    for free, under in zip(idle * (wide // len(idle)), loaded * (wide // len(loaded)), strict=True):
-        if under > free:
-            text = f"{show(under, VOLTAGE)} is above no_load, {show(free, VOLTAGE)}"
-            draft.complain("supply.full_load", f"{text}; a rail falls under load: read both again")
-            return
 
 
 def _swing(draft: Draft) -> None:
@@ -192,9 +163,6 @@ def _impedance(draft: Draft) -> None:
 
 #: Asked in this order; each looks at what is there and is silent about what is missing.
 QUESTIONS: tuple[Callable[[Draft], None], ...] = (
-    _mains,
-    _rails,
-    _sag,
     _swing,
     _coupling,
     _pairs,

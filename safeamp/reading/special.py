@@ -50,7 +50,15 @@ def fuse(text: str, _: Draft) -> tuple[Fuse, Origin]:
         )
     origin = f", {found['origin'].strip()}" if found["origin"] else ""
     reading = _read_off(text, rating + origin, CURRENT, (0.03, 63.0))
-    return Fuse(LETTERS[word], reading.nominal, text), reading.origin
+    return Fuse(LETTERS[word], reading.nominal, _without_origin(text)), reading.origin
+
+
+def _without_origin(text: str) -> str:
+    """Return a text without the word behind it that says where it comes from: the report says that beside it."""
+    said, _, last = text.rpartition(",")
+    origins = {one.value for one in Origin}
+    word = " ".join(last.lower().replace("-", " ").split())
+    return said.strip() if said and word in origins else text.strip()
 
 
 def limiter(text: str, _: Draft) -> tuple[Limiter, Origin]:
@@ -61,12 +69,12 @@ def limiter(text: str, _: Draft) -> tuple[Limiter, Origin]:
     lamp = re.fullmatch(_LAMP, plain, re.IGNORECASE)
     if lamp is not None and "lamp" in plain.lower():
         reading = _read_off(text, lamp["watts"] + (lamp["rest"] or ""), POWER, (1.0, 2000.0))
-        return Limiter("lamp", reading.nominal, text), reading.origin
+        return Limiter("lamp", reading.nominal, _without_origin(text)), reading.origin
     try:
         reading = _read_off(text, plain, RESISTANCE, (1.0, 100e3))
     except QuantityError as trouble:
         raise QuantityError(trouble.found, _LIMITER_FORM) from trouble
-    return Limiter("resistor", reading.nominal, text), reading.origin
+    return Limiter("resistor", reading.nominal, _without_origin(text)), reading.origin
 
 
 def curve(text: str, draft: Draft) -> tuple[Curve | None, Origin]:

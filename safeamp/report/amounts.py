@@ -7,6 +7,7 @@ from collections.abc import Mapping
 from decimal import Decimal
 
 from safeamp.amplifier import TABLES, Fins, keys_of, written_key
+from safeamp.checks.amounts import USES, amount, is_known, levels_in, shown_kind, value_text
 from safeamp.findings import Bound, Finding
 from safeamp.quantities import (
     ANGLE,
@@ -23,26 +24,6 @@ from safeamp.quantities import (
     show,
 )
 
-#: Findings whose value is how much of a rating is used, and the rating.
-USES = {
-    "supply.rail_to_rail": "of the rated voltage",
-    "supply.reservoir_voltage": "of the rated voltage",
-    "capacitor.voltage": "of the rated voltage",
-    "capacitor.ripple": "of the rated ripple current",
-    "soa.resistive_load": "of the safe area",
-    "soa.loudspeaker": "of the safe area",
-}
-#: Ratios that people read as a percentage.
-PERCENTAGES = frozenset(
-    {
-        "power_up.rails",
-        "power_up.output",
-        "bias.imbalance",
-        "bias.balance",
-        "offset.midpoint",
-        "protection.short",
-    }
-)
 #: Findings that rest on a word; a number would say nothing.
 WORDS = {"power_up.draw": "go when dark or dim, stop when bright or rising"}
 _AT_KINDS = {
@@ -60,45 +41,17 @@ _AT_KINDS = {
 _BY_UNIT = {kind.unit: kind for kind in reversed(tuple(KINDS.values()))}
 
 
-def shown_kind(finding: Finding) -> Kind:
-    """Return the kind a finding is printed in: a use as a percentage."""
-    ratio = finding.id in PERCENTAGES and finding.kind == RATIO
-    return PERCENT if finding.id in USES or ratio else finding.kind
-
-
-def _levels(bound: Bound | None) -> list[float]:
-    if bound is None:
-        return []
-    go = bound.go if isinstance(bound.go, tuple) else (bound.go,)
-    return [level for level in (*go, bound.stop) if level is not None]
-
-
-def amount(value: float | None, kind: Kind, apart_from: list[float] | None = None) -> str:
-    """Return a value with enough digits to look different from the limits it differs from."""
-    if value is None or not math.isfinite(value):
-        return show(value, kind)
-    others = [level for level in apart_from or [] if level != value]
-    for digits in range(3, 9):
-        text = show(value, kind, digits)
-        if all(text != show(level, kind, digits) for level in others):
-            return text
-    return show(value, kind, 9)
-
-
 def number_text(finding: Finding) -> str:
     """Return the value of a finding in words: nominal, worst, and how much is used."""
-    if finding.id in WORDS and finding.nominal is not None and not math.isnan(finding.nominal):
+    if not is_known(finding) or finding.unbounded:
+        return value_text(finding)
+    if finding.id in WORDS:
         return finding.says
-    if finding.unbounded:
-        return "without bound"
-    if finding.nominal is None or math.isnan(finding.nominal):
-        return "not read" if finding.to_be_read else "not known"
-    kind, levels = shown_kind(finding), _levels(finding.bound)
-    text = amount(finding.nominal, kind, levels)
+    text = value_text(finding)
     if finding.id in USES:
         text = f"uses {text} {USES[finding.id]}, {_left(text)}"
-    worst = amount(finding.worst, kind, levels)
     if finding.worst is not None and finding.worst != finding.nominal:
+        worst = amount(finding.worst, shown_kind(finding), levels_in(finding.bound))
         text += f"; worst case {worst}"
     return text
 

@@ -92,9 +92,9 @@ def _drives(amplifier: Amplifier, report: Report) -> Iterator[str]:
     how = f" ({series:.0f} in series, {parallel:.0f} such in parallel)" if several else ""
     what = f"{series * parallel:.0f} loudspeakers{how}" if several else "One loudspeaker"
     yield f"{what} of {show(nominal, RESISTANCE)}, at no note below {show(lowest, RESISTANCE)}; nothing less."
-    power = _first(operating.output_power(amplifier))
+    power = _first(operating.loudspeaker_power(amplifier))
     if np.isfinite(power):
-        yield f"It gives up to {show(power, POWER)} (sine, at clipping) into that."
+        yield f"It gives up to {show(power, POWER)} (sine, at clipping) into {'each of them' if several else 'that'}."
 
 
 def _mains(amplifier: Amplifier) -> Iterator[str]:

@@ -15,6 +15,14 @@ from safeamp.report.finding_text import details_of, way_out
 from safeamp.report.safety import SAFETY
 
 PAPER = "on paper: clears no power"
+#: Internal share -> of what it is one; the key beside it is that of the value it stands for.
+SHARES = {
+    "supply.full_load_share": " of supply.no_load",
+    "heatsink.fins_share": " of the computed rise",
+    "loudspeaker.minimum_share": " of loudspeaker.nominal_impedance",
+    "loudspeaker.power_share": " of loudspeaker.rated_power",
+    "readings.midpoint_share": " of supply.no_load",
+}
 INVENTED = "Demonstration: this amplifier is invented; its readings clear nothing."
 
 
@@ -184,7 +192,7 @@ def input_text(item: Input) -> str:
     if item.value is None or isinstance(item.value, str):
         return item.value or "not known"
     key = written_key(item.key)
-    return show(item.value, kind_of(item.key, {key: item.unit}) or RATIO)
+    return show(item.value, kind_of(item.key, {key: item.unit}) or RATIO) + SHARES.get(item.key, "")
 
 
 def _notes(report: Report) -> Iterator[Note]:

@@ -11,9 +11,9 @@ from typing import Any
 from safeamp._version import __version__
 from safeamp.amplifier import Entry, written_key
 from safeamp.answers import Chance, FindingChances, StepChances, Tolerance
+from safeamp.checks.amounts import shown_kind
 from safeamp.findings import Verdict
-from safeamp.quantities import PERCENT, RATIO, TEMPERATURE, TEMPERATURE_DIFFERENCE, Kind, show
-from safeamp.report.amounts import PERCENTAGES, USES
+from safeamp.quantities import TEMPERATURE, TEMPERATURE_DIFFERENCE, show
 from safeamp.report.json_ import plain
 from safeamp.report.layout import block, paragraph, points
 from safeamp.report.safety import SAFETY
@@ -61,12 +61,6 @@ def key_text(path: str) -> str:
         return "mains"
     place = path.rpartition(".")[2]
     return written_key(path) + (f" ({int(place) + 1})" if place.isdigit() and place != "0" else "")
-
-
-def shown_kind(finding: FindingChances) -> Kind:
-    """Return the kind a value is printed in: a use as a percentage."""
-    ratio = finding.id in PERCENTAGES and finding.kind == RATIO
-    return PERCENT if finding.id in USES or ratio else finding.kind
 
 
 def render_tolerance(answer: Tolerance, *, width: int = 80) -> str:

@@ -10,6 +10,7 @@ import numpy as np
 from safeamp.amplifier import Amplifier, Curve, Entry, Fuse, Limiter, Sheet, value_at, written_key
 from safeamp.checks import Check
 from safeamp.checks.judging import Cases, Judgement, badness, bounds_of, judge, missing_word, nominal_bound
+from safeamp.checks.rails import rail_remarks
 from safeamp.checks.trace import Trace, watched
 from safeamp.findings import Bound, Finding, Input, Measure, NotApplicable, Remark, Step, Verdict
 from safeamp.limits import Limit, Limits
@@ -75,8 +76,9 @@ def _run(check: Check, amplifier: Amplifier, limits: Limits) -> Measure | NotApp
 
 
 def _remarks(check: Check, bench: Bench, trace: Trace) -> list[Remark]:
-    """Return what holds a finding back whatever its number: examples, keys not assessed, a bench load, a limiter."""
-    amplifier, found = bench.sheet.amplifier, []
+    """Return what holds a finding back whatever its number: examples, keys not assessed, rails, load, a limiter."""
+    amplifier = bench.sheet.amplifier
+    found = list(rail_remarks(amplifier, bench.limits, trace.reads))
     invented = [
         path for path in _with_items(bench.sheet, trace.inputs()) if amplifier.origin(path) is Origin.EXAMPLE
     ]

@@ -3,7 +3,7 @@
 import pytest
 
 from safeamp.findings import Verdict
-from tests.scenarios.sheets import finding, report
+from tests.scenarios.sheets import GONE, finding, report
 
 OPTIMUM = "Oliver's optimum for this resistor"
 
@@ -29,7 +29,7 @@ def test_a_stage_without_a_crossover_of_junctions_has_no_such_optimum(name):
 
 @pytest.mark.parametrize(("reading", "dead"), [("7.99 mV", True), ("8 mV", False), ("8.01 mV", False)])
 def test_a_bipolar_stage_below_eight_millivolts_has_a_dead_zone(reading, dead):
-    read = {"readings": {"idle_upper": [reading], "idle_lower": [reading]}}
+    read = {"readings": {"idle_upper": [reading], "idle_lower": [reading]}, "stage.idle": GONE}
     one = idle("split_rail", read)
     assert ("dead zone" in one.says) is dead
     assert one.verdict is Verdict.GO
@@ -40,3 +40,15 @@ def test_a_mosfet_is_not_said_to_have_a_dead_zone():
     one = idle("mosfet_substitute", read)
     assert "dead zone" not in one.says
     assert one.verdict is Verdict.CAUTION
+
+
+@pytest.mark.parametrize(
+    ("stated", "word"),
+    [("14 mV, measured", Verdict.GO), ("32 mV, measured", Verdict.STOP), ("32 mV", Verdict.GO)],
+)
+def test_of_readings_and_a_measured_idle_current_the_larger_is_judged(stated, word):
+    """Heat and safe area take the larger; what nobody measured is judged by the readings."""
+    read = {"readings.idle_upper": ["15 mV, measured"], "readings.idle_lower": ["15 mV, measured"]}
+    one = idle("healthy", read | {"stage.idle": stated, "stage.idle_specified": "15 mV, manual"})
+    assert one.verdict is word
+    assert one.nominal == pytest.approx(0.032 if word is Verdict.STOP else 0.015)

@@ -51,3 +51,40 @@ def test_a_heatsink_hardly_warmer_than_its_air_is_at_most_a_caution(read, level,
         report("healthy", {**changes, "readings.heatsink_air": "35 degC, measured"}), "heat.reading"
     )
     assert found.verdict is word
+
+
+HOT = {"readings.heatsink_level": "one third"}
+
+
+@pytest.mark.parametrize(
+    ("read", "beside", "word"),
+    [
+        ("44 degC, measured", "35 degC, measured", Verdict.GO),
+        (
+            "72 degC, measured",
+            "63 degC, measured",
+            Verdict.UNVERIFIED,
+        ),  # and the air is not that of the sheet
+        ("54 degC, measured", "45 degC, measured", Verdict.GO),
+        ("55 degC, measured", "46 degC, measured", Verdict.UNVERIFIED),
+        ("105 degC, measured", "88 degC, measured", Verdict.STOP),
+    ],
+)
+def test_a_rise_as_computed_excuses_neither_a_hot_heatsink_nor_another_air(read, beside, word):
+    changes = {**HOT, "readings.heatsink_temperature": read, "readings.heatsink_air": beside}
+    found = finding(report("healthy", {**changes, "heatsink.air": "35 degC, measured"}), "heat.reading")
+    assert found.verdict is word
+    said = any("heatsink.air" in one for one in found.because)
+    assert said is (word is not Verdict.GO)
+
+
+@pytest.mark.parametrize(
+    ("sink", "air", "word"), [(69, 60, Verdict.GO), (71, 62, Verdict.CAUTION), (101, 90, Verdict.STOP)]
+)
+def test_a_read_heatsink_is_held_against_the_limit_of_a_heatsink(sink, air, word):
+    beside = f"{air} degC, measured"
+    changes = {
+        **HOT, "readings.heatsink_temperature": f"{sink} degC, measured", "readings.heatsink_air": beside,
+        "heatsink.air": beside,
+    }  # fmt: skip
+    assert finding(report("healthy", changes), "heat.reading").verdict is word

@@ -103,6 +103,16 @@ def test_places_that_cannot_hold_figures_are_refused(tmp_path):
     assert {path.name for path in tmp_path.iterdir()} == {"file", "heat.svg"}
 
 
+@pytest.mark.parametrize("name", ["pictures", "pictures/overview.svg", "pictures/report.png"])
+def test_a_result_never_takes_the_place_of_a_figure(tmp_path, name):
+    folder, target = tmp_path / "pictures", tmp_path / name
+    if target != folder:
+        folder.mkdir()
+    refused(run("check", SPLIT, "--figures", folder, "--output", target), "would take the place of a figure")
+    assert [path.name for path in tmp_path.rglob("*")] == (["pictures"] if target != folder else [])
+    assert run("check", SPLIT, "--figures", folder, "--output", folder.parent / "report.txt").exit_code == 3
+
+
 def test_what_cannot_be_written_leaves_nothing_behind(tmp_path, monkeypatch, capsys):
     def broken(self, target):
         raise OSError(28, os.strerror(28))

@@ -8,6 +8,7 @@ import pytest
 import typer
 
 from safeamp.cli import output
+from safeamp.cli.files import FilesRead
 from safeamp.complaints import Complaint
 from tests.cli.test_commands import HEALTHY, run
 
@@ -69,6 +70,49 @@ def test_a_file_that_is_read_is_never_written_over(sheet: Path, way: str) -> Non
     assert result.exit_code == 2
     assert f"--output {target} is a file that is read" in result.stderr
     assert sheet.read_bytes() == before
+
+
+CURVE = "frequency [Hz], impedance [ohm], phase [deg]\n" + "".join(
+    f"{hertz}, {8 + hertz / 1000}, 10\n" for hertz in (20, 50, 100, 200, 500, 1000, 2000, 20000)
+)
+
+
+@pytest.mark.parametrize(
+    "words",
+    [
+        ("check", "SHEET"),
+        ("check", "SHEET", "--format", "csv"),
+        ("jobsheet", "SHEET"),
+        ("solve", "SHEET", "heatsink.air"),
+        ("tolerance", "SHEET", "--samples", "100"),
+        ("substitute", "SHEET", "to3-npn-140v-150w"),
+        ("overview", "FOLDER"),
+    ],
+    ids=" ".join,
+)
+def test_a_measured_curve_that_a_sheet_names_is_never_written_over(
+    sheet: Path, words: tuple[str, ...]
+) -> None:
+    curve = sheet.with_name("two way.csv")
+    curve.write_text(CURVE, encoding="utf-8")
+    text = sheet.read_text(encoding="utf-8")
+    sheet.write_text(text.replace("[loudspeaker]", f'[loudspeaker]\nimpedance_curve = "{curve.name}"'))
+    named = {"SHEET": sheet, "FOLDER": sheet.parent}
+    call = [named.get(word, word) for word in words]
+    assert "two way.csv" in run("check", sheet, "--format", "json").stdout
+    result = run(*call, "--output", curve)
+    assert result.exit_code == 2
+    assert f"--output {curve} is a file that is read" in result.stderr
+    assert curve.read_text(encoding="utf-8") == CURVE
+
+
+def test_what_a_broken_sheet_names_is_its_own_trouble(tmp_path: Path) -> None:
+    broken, odd = tmp_path / "broken.toml", tmp_path / "odd.toml"
+    broken.write_text("[[[", encoding="utf-8")
+    odd.write_text(f'a = ["{"x" * 5000}", "\\u0000", "", 3, {{b = "odd.toml"}}]', encoding="utf-8")
+    assert list(FilesRead(broken)) == [broken]
+    assert list(FilesRead(odd, limits=broken)) == [odd, odd, broken]
+    assert list(FilesRead(tmp_path / "none.toml")) == [tmp_path / "none.toml"]
 
 
 def test_only_files_are_written_into(sheet: Path) -> None:

@@ -4,9 +4,11 @@ import numpy as np
 import pytest
 
 from safeamp.checks import thermal
-from safeamp.figures.levels import FRACTIONS, heat_over_level, levels_of, worst_fraction
+from safeamp.figures.levels import FRACTIONS, heat_over_level, levels_of
+from safeamp.figures.look import VERMILLION
 from safeamp.figures.temperatures import ladder
-from tests.figures.drawing import axes, gallery, labels, line, picture
+from safeamp.quantities import POWER, show
+from tests.figures.drawing import axes, gallery, labels, line, picture, within
 from tests.scenarios.sheets import beside, finding, report, sheet
 
 SPLIT = gallery("split_rail", {})
@@ -76,13 +78,30 @@ def test_the_marks_of_the_levels_lie_on_the_curve():
     assert labels(plane)[-1].startswith("Worst sine (")
 
 
-def test_the_worst_sine_is_the_top_of_the_curve():
-    amplifier = sheet("split_rail").amplifier
-    heat = heat_over_level(amplifier)
-    worst = levels_of(amplifier)[-1]
-    assert worst.fraction == worst_fraction(heat) == FRACTIONS[int(np.argmax(heat))]
-    assert worst.watts == pytest.approx(heat.max())
+def test_the_worst_sine_is_the_top_of_the_curve_and_that_of_the_finding():
+    heat = heat_over_level(sheet("split_rail").amplifier)
+    worst = levels_of(sheet("split_rail").amplifier)[-1]
+    assert worst.fraction == pytest.approx(FRACTIONS[int(np.argmax(heat))], abs=0.005)
+    assert worst.watts == pytest.approx(heat.max(), rel=1e-4)
+    assert worst.hottest
+    judged = finding(report("split_rail"), "heat.heatsink")
+    assert worst.fraction == beside(judged, "worst level of a sine, share of clipping power")
+    assert worst.watts == beside(judged, "heat of the stage at the worst level of a sine")
     assert 0.3 < worst.fraction < 0.6  # class B: 4/pi**2 = 0.41, a little more where the rail sags
+
+
+def test_without_signal_hottest_there_is_no_worst_sine():
+    plane = axes("heat", gallery("class_a", {}))
+    assert [one.get_label().split(":")[0] for one in plane.lines[-3:]] == [
+        "No signal, the hottest", "One eighth", "One third",
+    ]  # fmt: skip
+    assert [one.get_color() for one in plane.lines[-3:]] == [VERMILLION, "white", "white"]
+    assert plane.lines[-3].get_ydata()[0] == plane.lines[0].get_ydata().max()
+    rows = [
+        one.get_text().split("\n")[0]
+        for one in axes("temperatures", gallery("class_a", {})).get_xticklabels()
+    ]
+    assert rows == ["no signal, the hottest", "one eighth", "one third"]
 
 
 def test_a_turned_load_makes_more_heat_and_is_drawn_otherwise():
@@ -90,3 +109,29 @@ def test_a_turned_load_makes_more_heat_and_is_drawn_otherwise():
     straight, turned = line(plane, "Into a resistor"), line(plane, "Same voltage into 8 ohm at 45 deg")
     assert np.all(turned.get_ydata()[1:] > straight.get_ydata()[1:])
     assert straight.get_linestyle() != turned.get_linestyle()
+
+
+@pytest.mark.parametrize(
+    ("changes", "of"),
+    [
+        ({}, ""),
+        ({"stage.bridged": True}, "one side of the bridge"),
+        ({"stage.series_resistor": "47 ohm"}, "load with its series resistor"),
+        ({"loudspeaker.parallel": 2, "loudspeaker.series": 2}, "all 4 loudspeakers together"),
+    ],
+)
+def test_a_power_that_is_not_that_of_the_loudspeaker_says_whose_it_is(changes, of):
+    found = gallery("split_rail", changes)
+    heated = finding(report("split_rail", changes), "heat.heatsink")
+    [name] = [one.at for one in heated.also if one.at.startswith("power at clipping into")]
+    watts = beside(heated, "of that each side of the bridge" if "stage.bridged" in changes else name)
+    said = show(watts, POWER)
+    first, _, second = axes("heat", found).get_xlabel().partition("\n")
+    assert first == f"Level of a sine: share of the {said} at clipping (%)"
+    assert second == (f"{said}: {of}" if of else "")
+    assert axes("temperatures", found).get_xlabel().partition("\n")[2] == of
+    assert picture("heat", found).says.count(f"({of})") == bool(of)
+    legend = labels(axes("heat", found))[0]
+    assert legend.endswith(", the load with its series resistor") is ("stage.series_resistor" in changes)
+    within(picture("heat", found))
+    within(picture("temperatures", found))

@@ -79,7 +79,14 @@ def test_a_coil_that_stays_cool_is_drawn_below_its_limit():
                "loudspeaker.minimum_impedance": "8 kohm"}  # fmt: skip
     shown = picture("coil", gallery("split_rail", changes))
     assert "is reached never" in shown.says
-    assert not [label for label in labels(shown.figure.axes[0]) if label.startswith("Limit reached")]
+    plane = shown.figure.axes[0]
+    assert not [label for label in labels(plane) if label.startswith("Limit reached")]
+    assert "Limit never reached" in labels(plane)
+    # to the end state: nothing moves any more over the last third of the time
+    seconds, degrees = line(plane, "Coil at").get_data()
+    assert seconds[-1] == plane.get_xlim()[1] > 4 * 25 * 60
+    third = np.interp(seconds[-1] * 2 / 3, seconds, degrees)
+    assert degrees[-1] - third < 0.05 * (degrees[-1] - degrees[0])
 
 
 def test_the_impedance_has_its_peak_at_the_resonance_and_its_lowest_marked():
@@ -131,6 +138,27 @@ def test_only_what_is_fitted_is_drawn(fitted, said):
     shown = drawn("coil", "so", lambda one: coil.draw(one, amplifier, limits()))
     assert labels(shown.figure.axes[0])[3:] == said
     assert shown.says.endswith("nothing stops it.") is (said == [])
+
+
+@pytest.mark.parametrize(
+    ("fuse", "said", "earliest", "words"),
+    [
+        # 34 V on 6.1 ohm are 5.6 A: 1.9 times 3 A, held for 0.6 s; 1.4 times 4 A, held for an hour; less than 6.3 A
+        ("T 3 A", "Fuse T 3 A: not for certain", 0.6, "the fuse T 3 A acts not for certain"),
+        ("T 4 A", "Fuse T 4 A: not for certain", 3600.0, "the fuse T 4 A acts not for certain"),
+        ("T 6.3 A", "Fuse T 6.3 A: does not act", None, "the fuse T 6.3 A does not act"),
+    ],
+)
+def test_a_fuse_that_does_not_act_for_certain_is_said(fuse, said, earliest, words):
+    changes = {**DRIVER, "protection.loudspeaker_fuse": fuse}
+    shown = picture("coil", gallery("split_rail", changes))
+    plane = shown.figure.axes[0]
+    assert said in labels(plane)
+    assert not [one for one in labels(plane) if one.startswith(("Fuse at the latest", "Fuse may"))]
+    spans = [(one.get_x(), one.get_x() + one.get_width()) for one in plane.patches]
+    low, high = plane.get_xlim()
+    assert spans == ([] if earliest is None else [pytest.approx((max(low, earliest), high))])
+    assert words in shown.says
 
 
 def test_without_a_target_or_a_linear_travel_none_is_drawn():

@@ -12,7 +12,9 @@ from safeamp.figures.look import picture as drawn
 from safeamp.figures.overview import Used, used
 from safeamp.findings import Bound, Finding, Step, Verdict
 from safeamp.quantities import RATIO, RESISTANCE, TEMPERATURE
+from safeamp.report.page import page_of
 from tests.figures.drawing import axes, gallery, within
+from tests.scenarios.sheets import finding as judged_of
 from tests.scenarios.sheets import report
 
 
@@ -69,7 +71,7 @@ def test_a_bar_ends_at_its_share_and_a_longer_one_carries_an_arrow():
     assert [bar.get_width() for bar in plane.patches] == pytest.approx([0.6, 1.5])
     assert [list(line.get_xdata()) for line in plane.lines if line.get_marker() == ">"] == [[1.5]]
     texts = [text.get_text() for text in plane.texts]
-    assert texts == ["loudspeaker", "soa.loudspeaker", "go", "0.6", "soa.loudspeaker", "stop", "7"]
+    assert texts == ["loudspeaker", "soa.loudspeaker", "go", "60 %", "soa.loudspeaker", "stop", "700 %"]
     ticks = next(one for one in plane.collections if one.get_segments())
     assert [segment[0][0] for segment in ticks.get_segments()] == [0.8, 0.8]
     assert [list(line.get_xdata()) for line in plane.lines[:2]] == [[0.6, 0.9], [0.9]]
@@ -97,20 +99,48 @@ def test_every_finding_has_its_row_under_its_step():
 
 
 def test_a_value_without_a_limit_is_shown_as_a_word_and_a_number():
-    plane = shown(finding(5.0, bound(None, None), kind=RESISTANCE)).figure.axes[0]
+    one = replace(finding(5.0, bound(None, None), kind=RESISTANCE), id="cold.devices")
+    plane = shown(one).figure.axes[0]
     assert [text.get_text() for text in plane.texts][2:] == ["go", "5 ohm"]
     assert not plane.patches
+
+
+@pytest.mark.parametrize("state", ["dark", "dim", "bright", "rising"])
+def test_a_state_is_a_word_without_a_bar(state):
+    judged = judged_of(report("healthy", {"readings.limiter_state": state}), "power_up.draw")
+    assert used(judged) == Used()
+    plane = shown(judged).figure.axes[0]
+    assert [text.get_text() for text in plane.texts][2:] == [judged.verdict.word, state]
+    assert not plane.patches
+
+
+def test_values_are_those_of_the_report():
+    found = report("split_rail")
+    words = [
+        text.get_text()
+        for text in axes("overview", gallery("split_rail", {})).texts
+        if text.get_fontweight() != "bold"
+    ]
+    for one, entry, said in zip(found.findings, page_of(found).entries, words[2::3], strict=True):
+        assert said in entry.number, one.id
 
 
 def test_the_margins_have_room_for_every_id_every_step_and_the_longest_numbers():
     longest = [
         replace(
-            finding(value, None, kind=check.kind, verdict=Verdict.UNVERIFIED, unbounded=value is None),
+            finding(
+                value,
+                bound(level, level),
+                kind=check.kind,
+                verdict=Verdict.UNVERIFIED,
+                unbounded=value is None,
+            ),
             id=check.id,
             step=check.step,
         )
         for check in CHECKS.values()
-        for value in (-0.123456, None)
+        # a value without bound, and one so near its limit that it needs many digits
+        for value, level in ((-0.123456, None), (None, None), (-0.12345678, -0.1234567))
     ]
     one = drawn(
         "overview",

@@ -11,7 +11,7 @@ from safeamp.figures import safe_area
 from safeamp.figures.look import picture as drawn
 from safeamp.figures.plane import finding_of, plane_of
 from safeamp.quantities import VOLTAGE, show
-from tests.figures.drawing import axes, full, gallery, labels, line, picture
+from tests.figures.drawing import axes, full, gallery, labels, line, picture, within
 from tests.scenarios.sheets import GONE, finding, report, sheet
 
 
@@ -167,3 +167,55 @@ def test_pulse_curves_are_drawn_above_the_dc_boundary():
 def test_what_is_said_names_the_worst_point():
     assert "Into 8 ohm at up to 45 deg" in picture("safe-area", gallery("split_rail", {})).says
     assert "90% of what is allowed" in picture("safe-area", full()).says
+
+
+def test_a_worst_point_at_nought_is_marked_at_the_edge_and_said():
+    """A logarithmic scale has no place for 0 V."""
+    whole = plane_of(sheet("split_rail").amplifier)
+    paths = tuple(one._replace(voltage=one.voltage - one.voltage.min()) for one in whole.paths)
+    at_nought = replace(whole, voltage=0.0, current=1.25, paths=paths)
+    figure = drawn("safe-area", "so", lambda one: safe_area.draw(one, at_nought))
+    shown = figure.figure.axes[0]
+    left, _ = shown.get_xlim()
+    assert 0.0 < left <= whole.rating.voltage / 100.0
+    worst = line(shown, "Worst point")
+    assert (worst.get_xdata()[0], worst.get_ydata()[0]) == (left, 1.25)
+    assert "(0 V, 1.25 A)\nmarked at the left edge: this scale has no 0 V" in worst.get_label()
+    within(figure)
+    assert "left edge" not in line(axes("safe-area", gallery("split_rail", {})), "Worst point").get_label()
+
+
+def test_where_nothing_is_allowed_no_line_is_promised():
+    hot = replace(plane_of(sheet("split_rail").amplifier), case=150.0, use=np.inf)
+    shown = drawn("safe-area", "so", lambda one: safe_area.draw(one, hot)).figure.axes[0]
+    assert labels(shown)[:2] == ["Allowed, case at 25 °C", "Nothing allowed, case at 150 °C"]
+    assert not [one for one in labels(shown) if one.startswith("Allowed, case at 150")]
+
+
+UNKNOWN = {
+    "device.fitted.voltage": "80 V",
+    "device.fitted.safe_area": [["40 V", "2.9 A"], ["60 V", "1.5 A"]],
+}
+LIMITED = {"protection.vi_limiter": [["0 V", "8 A"], ["60 V", "2.2 A"], ["100 V", "2.2 A"]]}
+
+
+@pytest.mark.parametrize("changes", [{}, UNKNOWN, LIMITED])
+def test_names_of_zones_stand_on_no_line_and_on_no_other_name(changes):
+    figure = drawn(
+        "safe-area", "so", lambda one: safe_area.draw(one, plane_of(sheet("split_rail", changes).amplifier))
+    ).figure
+    figure.draw_without_rendering()
+    plane = figure.axes[0]
+    boxes = {text.get_text(): text.get_window_extent() for text in plane.texts}
+    assert len(boxes) == 4 + (changes is UNKNOWN)
+    for name, box in boxes.items():
+        assert not [other for other, one in boxes.items() if other != name and box.overlaps(one)], name
+        assert plane.bbox.containsx(box.x0 + 1.0)
+        assert plane.bbox.containsx(box.x1 - 1.0)
+        crossing = [
+            one.get_label()
+            for one in plane.lines
+            if len(one.get_xdata()) > 1
+            and one.get_transform().transform_path(one.get_path()).intersects_bbox(box, filled=False)
+        ]
+        assert not crossing, name

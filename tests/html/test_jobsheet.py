@@ -13,6 +13,7 @@ from tests.html.test_in_the_browser import CONTRAST, WIDER, bare
 from tests.scenarios import sheets
 
 NAMES = ("healthy", "split_rail", "single_rail", "old_mains", "bench_mockup", "mosfet_substitute")
+AMPLIFIERS = ("30w_single_rail_to3", "40w_split_rail_to3", "120w_three_pairs")
 
 
 @pytest.fixture
@@ -28,7 +29,7 @@ def opened(chromium, tmp_path):
 
 
 @pytest.mark.parametrize("size", [A4, LETTER], ids=["A4", "Letter"])
-@pytest.mark.parametrize("name", NAMES)
+@pytest.mark.parametrize("name", [*NAMES, *AMPLIFIERS])
 def test_the_first_sheet_of_paper_is_the_page_and_nothing_else(opened, name, size):
     first, second, *_ = (
         bare(one.extract_text()) for one in PdfReader(io.BytesIO(opened(name).pdf(size))).pages

@@ -73,6 +73,7 @@ EXTRA = {
     ("heat.reading", "cool_below"): 0.5,
     ("heat.reading", "cool_from_computed"): 5,
     ("heat.reading", "small_rise_below"): 5,
+    ("heat.reading", "air_above_stated"): 10,
     ("heat.junction", "span_from"): 25,
     ("heat.junction", "go_share_of_span"): 0.8,
     ("soa.loudspeaker", "as_built_ceiling"): 1.8,

@@ -104,7 +104,7 @@ def test_idle_is_volts_or_amperes_and_the_unit_stands_beside(tmp_path):
 )  # fmt: skip
 def test_fuse(tmp_path, text, fuse):
     sheet = load(tmp_path, {"supply.rail_fuse": f"{text}, marked"})
-    assert sheet.amplifier.supply.rail_fuse == Fuse(*fuse, f"{text}, marked")
+    assert sheet.amplifier.supply.rail_fuse == Fuse(*fuse, text)  # where it comes from is said beside it
     assert sheet.amplifier.origin("supply.rail_fuse") is Origin.MARKED
     assert load(tmp_path, {"supply.rail_fuse": text}).amplifier.origin("supply.rail_fuse") is Origin.STATED
 
@@ -122,6 +122,10 @@ def test_fuse(tmp_path, text, fuse):
 )
 def test_limiter(tmp_path, text, limiter):
     assert load(tmp_path, {"readings.limiter": text}).amplifier.readings.limiter == Limiter(*limiter, text)
+    if limiter[0] != "bench":
+        marked = load(tmp_path, {"readings.limiter": f"{text}, marked"})
+        assert marked.amplifier.readings.limiter == Limiter(*limiter, text)
+        assert marked.amplifier.origin("readings.limiter") is Origin.MARKED
 
 
 @pytest.mark.parametrize(

@@ -147,6 +147,20 @@ def test_a_number_stays_with_its_unit():
     assert "180\u00a0kohm" in as_html(report_of(DEVICES), {})
 
 
+def test_a_share_says_of_what_it_is_one_and_an_origin_stands_once():
+    given = {one.key: one for section in page_of(sheets.report("healthy")).sections for entry in section.entries
+             for one in entry.inputs}  # fmt: skip
+    assert given["loudspeaker.power_word"].value == "100 % of loudspeaker.rated_power"
+    assert given["supply.rail_fuse"].value == "T 2 A"
+    assumed = sheets.report(
+        "healthy", {"supply.full_load": sheets.GONE, "loudspeaker.minimum_impedance": sheets.GONE}
+    )
+    given = {one.key: one for section in page_of(assumed).sections for entry in section.entries
+             for one in entry.inputs}  # fmt: skip
+    assert given["supply.full_load"].value == "87.5 % of supply.no_load"
+    assert given["loudspeaker.minimum_impedance"].value == "80 % of loudspeaker.nominal_impedance"
+
+
 def test_figures_and_what_is_left_out_stand_in_the_page():
     page = Page(
         as_html(report_of(DEVICES), {}, [Drawing("A plane", "What it shows.", "<svg></svg>")], ["heat: no"])

@@ -7,6 +7,7 @@ import pytest
 from safeamp.amplifier import TABLES, keys_of
 from safeamp.checks import CHECKS
 from safeamp.findings import Step
+from safeamp.quantities import POWER, show
 from safeamp.report.jobsheet import RECORD, examples_left, jobsheet_html, jobsheet_markdown, jobsheet_text
 from safeamp.report.jobsheet_page import job_page, last_cleared
 from safeamp.report.page import page_of
@@ -95,6 +96,23 @@ def test_a_cleared_amplifier_may_drive_what_was_judged_and_nothing_less():
     )
     two = page("healthy", {"loudspeaker.series": 2})
     assert "2 loudspeakers (2 in series, 1 such in parallel) of 8 ohm" in said(two, "What it may drive")[0]
+
+
+@pytest.mark.parametrize(
+    "changes",
+    [
+        {"stage.series_resistor": "8 ohm, marked"},
+        {"loudspeaker.parallel": 2, "loudspeaker.nominal_impedance": "16 ohm, marked"},
+        {"stage.series_resistor": "2 ohm, marked", "loudspeaker.series": 2},
+    ],
+)
+def test_the_power_of_the_page_is_the_power_of_the_record(changes):
+    found = sheets.finding(sheets.report("healthy", changes), "loudspeaker.power")
+    watts = next(one.value for one in found.also if one.at == "power at clipping")
+    drives = [text for note in page("healthy", changes).notes for text in note.texts if "gives up to" in text]
+    several = any(key.startswith("loudspeaker.") for key in changes)
+    end = "into each of them" if several else "into that"
+    assert drives == [f"It gives up to {show(watts, POWER)} (sine, at clipping) {end}."]
 
 
 def test_a_bench_load_is_no_loudspeaker():

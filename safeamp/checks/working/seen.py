@@ -61,17 +61,20 @@ def _behind(paper: Paper, seen: tuple[str, str], most: float, worst: checks.Wors
     own = paper.value(magnitude) * np.sin(angle)
     paper.put("R_real", "real part of the load", f"{magnitude} * cos({turn}){esr}", real, RESISTANCE)
     paper.put("X_own", "reactance of the loudspeaker", f"{magnitude} * sin({turn})", own, RESISTANCE)
-    lowest = own + 1.0 / (2.0 * np.pi * paper.value("f_low") * paper.value("C"))
+    reactance = 1.0 / (2.0 * np.pi * paper.value("f_low") * paper.value("C"))
     paper.put(
-        "X_low",
-        "with the capacitor at the lowest note",
-        "X_own + 1 / (2 * pi * f_low * C)",
-        lowest,
+        "X_C",
+        "reactance of the capacitor at the lowest note",
+        "1 / (2 * pi * f_low * C)",
+        reactance,
         RESISTANCE,
     )
+    words = "least reactance of both, on the inductive side of the loudspeaker"
+    paper.put("X_least", words, "max(X_own - X_C, 0)", np.maximum(own - reactance, 0.0), RESISTANCE)
+    paper.put("X_most", "largest, on its capacitive side", "X_own + X_C", own + reactance, RESISTANCE)
     turned = np.tan(np.deg2rad(worst.load.angle))
     asked = min(most, 89.9)
-    formula = f"min(max(tan({asked:g}), X_own / R_real), X_low / R_real)"
+    formula = f"min(max(tan({asked:g}), X_least / R_real), X_most / R_real)"
     words = f"tangent of the angle at a low note, {asked:g} deg where the notes reach it"
     paper.put("t", words, formula, turned)
     name = paper.put("Z_low", "load at that note", "R_real * sqrt(1 + t^2)", worst.load.magnitude, RESISTANCE)
