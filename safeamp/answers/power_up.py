@@ -147,8 +147,3 @@ class PowerUp:
     def missing(self) -> tuple[str, ...]:
         """The keys that would settle what is unverified."""
         return tuple(dict.fromkeys(key for state in self.states for key in state.needs))
-
-    @property
-    def exit_status(self) -> int:
-        """Return the status of the cold checks: 0 go, 3 caution, 4 unverified, 5 stop."""
-        return self.verdict.exit_status

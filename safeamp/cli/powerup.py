@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from safeamp.cli.judged import files_read
+from safeamp.cli.files import FilesRead
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
 from safeamp.cli.output import check_output, colourful, columns, complaining, emit, fail
 from safeamp.complaints import ReadingError
@@ -40,11 +40,11 @@ def powerup(
     limits: LimitsOption = None,
     device_folder: DeviceFolderOption = None,
 ) -> None:
-    """Print the card for the first power-up: limiter, readings, when to switch off; ends as the cold checks do."""
+    """Print the card for the first power-up: limiter, readings, when to switch off; clears nothing."""
     from safeamp.reading.limits import load_limits
     from safeamp.studies.power_up import power_up
 
-    never = tuple(files_read(sheet, limits, device_folder))
+    never = FilesRead(sheet, limits=limits, device_folder=device_folder)
     if output is not None:
         check_output(output, never)
     with complaining():
@@ -52,7 +52,6 @@ def powerup(
         read = _read(sheet, limiter, rules, device_folder)
     card = power_up(read, rules)
     emit(_text(card, format_, output), output, never=never)
-    raise typer.Exit(card.exit_status)
 
 
 def _read(path: Path, limiter: str | None, limits: Limits, device_folder: Path | None) -> Sheet:
