@@ -15,13 +15,14 @@ from safeamp.physics import (
     loudspeaker,
     offset,
     settling,
+    soak,
     supply,
     zobel,
 )
 
 MODULES: tuple[ModuleType, ...] = (
-    bias, capacitor, coil_heating, feedback, fuse, heat, lamp, limiter, loudspeaker, offset, settling, supply,
-    zobel,
+    bias, capacitor, coil_heating, feedback, fuse, heat, lamp, limiter, loudspeaker, offset, settling, soak,
+    supply, zobel,
 )  # fmt: skip
 
 P, N, F = "greater than zero", "zero or more", "free"
@@ -255,6 +256,12 @@ FORMULAS = (
     }),
     Formula(fuse, "slowest_time", None, {"times_rating": (3.0, N, "")}, {"gates": fuse.GATES["T"]}),
     Formula(fuse, "fastest_time", None, {"times_rating": (3.0, N, "")}, {"gates": fuse.GATES["T"]}),
+    Formula(soak, "settling_temperature", "K", {
+        "time": (600.0, F, "s"), "start": (24.0, F, "K"), "end": (62.0, F, "K"), "time_constant": (1200.0, P, "s"),
+    }),
+    Formula(soak, "soak_resistance", "K/W", {
+        "sink": (62.0, F, "K"), "air": (24.0, F, "K"), "power": (38.0, P, "W"),
+    }),
     Formula(lamp, "hot_resistance", "ohm", LAMP),
     Formula(lamp, "lamp_resistance", "ohm", {
         "voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, ""),
@@ -267,5 +274,5 @@ FORMULAS = (
 )  # fmt: skip
 """Formulas whose parameters are plain numbers; the others (tables, pairs) are tested with their topic."""
 
-ELSEWHERE = {"foster_impedance", "periodic_rise", "mains_band", "untracked"}
+ELSEWHERE = {"foster_impedance", "periodic_rise", "mains_band", "untracked", "soak_fit", "time_needed"}
 """Formulas that take more than numbers, or return a pair: tested with their topic."""
