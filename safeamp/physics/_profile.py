@@ -93,6 +93,13 @@ class Profile:
         """The best curve that settles, or the straight line where that is best."""
         return self._best(self.bends, self.on_grid.squares)
 
+    def left_by_settling(self) -> Array:
+        """Return what the best settling curve leaves of the readings, K."""
+        bend = self.settling.bend
+        bent = np.expm1(-bend * self.x) / np.expm1(-bend)
+        left: Array = self.sink - self.settling.start - self.settling.rise * bent
+        return left
+
     @cached_property
     def best(self) -> Curve:
         """The best curve of all: one that settles, or one that grows faster and faster."""
@@ -147,8 +154,9 @@ class Profile:
         """The grid, and closer and closer around the best: good thermometers leave a pass narrower than its mesh."""
         near = np.geomspace(1e-12, 1.0, 12 * _NEAR)
         close = self.settling.bend * np.exp(np.concatenate([-near, [0.0], near]))
-        found: Array = np.unique(np.concatenate([self.bends, close]))
-        return found[(found >= self.bends[0]) & (found <= self.bends[-1])]
+        found = np.unique(np.concatenate([self.bends, close]))
+        inside: Array = found[(found >= self.bends[0]) & (found <= self.bends[-1])]
+        return inside
 
     def within(self, allowed: float, span: float) -> bool:
         """Whether both halves of the interval are within a span."""

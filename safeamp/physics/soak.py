@@ -20,8 +20,8 @@ LEVEL = 0.95
 """Of the interval."""
 SURE = 0.9973
 """Three standard errors: from there on a rise, a fall or an acceleration is none of the reading error's doing."""
-FURTHEST = 20.0
-"""So many times the length of a log are looked ahead for the time at which its end is known."""
+FURTHEST, MOST = 20.0, 2000
+"""So many lengths of a log, and so many readings, are looked ahead for the time at which its end is known."""
 
 
 class SoakFit(NamedTuple):
@@ -43,6 +43,9 @@ class SoakFit(NamedTuple):
         1 rising, -1 falling, 0 neither beyond the reading error.
     accelerating : bool
         The readings rise faster and faster, beyond the reading error.
+    lagging : bool
+        The later half rises more steeply than the best curve, beyond the reading error that was said: something with a
+        longer time constant, such as the air of a cabinet, still warms, and the end lies higher than the curve says.
     """
 
     end: float
@@ -54,6 +57,7 @@ class SoakFit(NamedTuple):
     error: float
     trend: int
     accelerating: bool
+    lagging: bool
 
 
 def settling_temperature(
@@ -152,6 +156,7 @@ def soak_fit(*, time: ArrayLike, sink: ArrayLike, reading_error: float) -> SoakF
         error=error.used,
         trend=trend,
         accelerating=accelerating,
+        lagging=not unknown and _lagging(profile, reading_error),
     )
 
 
@@ -171,7 +176,7 @@ def time_needed(*, time: ArrayLike, sink: ArrayLike, reading_error: float, withi
     -------
     float
         0 where they are already; inf where that cannot be foreseen: nothing rises, a straight line fits best, or not
-        within `FURTHEST` lengths of the log.
+        within `FURTHEST` lengths of the log or `MOST` readings.
 
     Raises
     ------
@@ -190,7 +195,7 @@ def time_needed(*, time: ArrayLike, sink: ArrayLike, reading_error: float, withi
         return float("inf")
     allowed = error.allowed(LEVEL) ** 2
     step = float(np.median(np.diff(profile.time)))
-    most = int(np.ceil(FURTHEST * profile.length / step))
+    most = min(int(np.ceil(FURTHEST * profile.length / step)), MOST)
 
     def enough(count: int) -> bool:
         return profile.continued(count, step).within(allowed, within)
@@ -228,6 +233,13 @@ def _accelerating(profile: Profile, error: _Error) -> bool:
     """Whether no curve that settles fits nearly as well as one that grows faster and faster."""
     worse = profile.settling.squares - profile.best.squares
     return _trend(profile, error) > 0 and worse > error.allowed(SURE) ** 2
+
+
+def _lagging(profile: Profile, said: float) -> bool:
+    """Whether what the best curve leaves of the later half rises, by three errors of that: the scatter hides it."""
+    half = slice(-max(3, (profile.x.size + 1) // 2), None)
+    left, apart = profile.left_by_settling()[half], profile.x[half] - profile.x[half].mean()
+    return bool(np.sum(apart * left) > two_sided(SURE) * said * np.sqrt(np.sum(apart * apart)))
 
 
 class _Error:

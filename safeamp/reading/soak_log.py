@@ -10,7 +10,7 @@ from safeamp.quantities import POWER, TEMPERATURE, TIME
 from safeamp.reading.tables import Column, Form, Row, read_table
 
 _CELSIUS = ("degC", "°C")
-#: Up to a week; three readings are the fewest that three unknowns can be found from.
+#: Up to a week; three readings are the fewest that three unknowns can be found from, and a thousand say it all.
 SOAK = Form(
     name="log",
     rows="readings",
@@ -22,7 +22,7 @@ SOAK = Form(
     },
     head="time [min], heatsink [degC] and, where read, air [degC], power [W]",
     least=3,
-    most=10_000,
+    most=1000,
 )
 
 

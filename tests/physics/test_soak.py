@@ -149,6 +149,21 @@ def test_a_step_between_two_readings_has_an_end_and_no_time_constant():
     assert np.isnan(found.time_constant)
 
 
+def test_something_slower_that_still_warms_is_seen():
+    """A heatsink of 5 minutes in air that climbs by 12 K an hour: its curve has settled and the readings have not."""
+    climbing = 24.0 + 30.0 * (1.0 - np.exp(-TIME / 300.0)) + 0.2 * TIME / 60.0
+    assert fit(climbing).lagging
+    assert not fit(climbing - 0.2 * TIME / 60.0).lagging
+    assert not fit(2.0 * warm() - climbing).lagging  # less steeply is no lag
+    assert not fit(climbing[::3]).lagging  # any three readings lie on some curve
+
+
+def test_noise_is_rarely_taken_for_something_slower():
+    random = np.random.default_rng(7)
+    sinks = warm() + random.normal(0.0, 1.0, (200, TIME.size))
+    assert np.mean([fit(sink).lagging for sink in sinks]) < 0.01
+
+
 def test_scatter_beyond_what_was_said_widens_the_interval():
     sink = warm() + 0.8 * np.array([1, -1, 1, -1, 1, -1, 1])
     believed, not_believed = fit(sink, error=1.0), fit(sink, error=0.1)
