@@ -151,6 +151,14 @@ def test_a_straight_line_that_must_end_beyond_stop_is_a_stop(tmp_path):
     assert answer(file, reading_error="5 K")["verdict"] == "unverified"
 
 
+def test_three_readings_are_at_best_a_caution(tmp_path):
+    three = answer(write(tmp_path, warm()[:3]), **FINE)
+    assert (three["verdict"], three["status"]) == ("caution", 3)
+    assert values(three)["end_temperature"] == pytest.approx(62.0, rel=1e-6)
+    assert "a fourth tells whether this one holds" in str(three["findings"])
+    assert answer(write(tmp_path, warm()[:4]), **FINE)["verdict"] == "go"
+
+
 def test_more_time_is_what_another_log_confirms(tmp_path):
     few = TIME[:4]
     found = answer(write(tmp_path, few, warm(time=few)), reading_error="2 K")
@@ -224,6 +232,8 @@ def test_air_that_moves_is_taken_off_and_its_highest_added(tmp_path):
     assert results["end_temperature"] >= 68.0 - 1e-6  # 38 K above the highest air
     assert "The air moved by more than 3 K" in str(found["cautions"])
     assert "air of 30 °C" in found["holds_for"]
+    # The rise is a difference of two readings: its error is that of one times the root of two.
+    assert "error of a reading 0.01414 K" in str(found["formulas"])
 
 
 def test_air_that_goes_on_warming_is_never_forgotten(tmp_path):

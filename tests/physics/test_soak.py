@@ -114,6 +114,7 @@ def test_a_straight_line_has_no_upper_end():
         ([25.0, 27.0, 30.0, 35.0, 43.0], True),
         ([40.0, 42.0, 45.0, 49.0, 54.0, 60.0], True),
         ([25.0, 27.0, 30.0, 33.0, 36.0], False),  # within the reading error
+        ([25.0, 27.0, 30.3, 34.9, 40.8], False),  # beyond its 95 %, and that is one straight line in forty
         ([25.0, 35.0, 42.0, 47.0, 50.0], False),
         ([25.0, 27.0, 29.0, 31.0, 33.0], False),
         ([60.0, 58.0, 55.0, 50.0, 42.0], False),  # falls faster and faster

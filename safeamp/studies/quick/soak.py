@@ -28,6 +28,7 @@ from safeamp.studies.quick.soak_words import cautions, next_reading, says, switc
 
 END, RISE = "end_temperature", "rise"
 NOT_YET = "cannot be told yet"
+UNCHECKED = "three readings lie on some curve whatever they are: a fourth tells whether this one holds"
 
 
 def soak_answer(desk: Desk, log: SoakLog) -> QuickAnswer:
@@ -175,6 +176,8 @@ def _judge(page: Page, found: Told, power_moves: bool) -> None:
         share = show(page.cases.desk.limits.default("soak.power_moves").nominal, PERCENT)
         because = f"the heat moved by more than {share} from its mean: a forecast needs steady heat"
         remarks.append(Remark(Verdict.UNVERIFIED, because))
+    if np.isnan(found.scatter):
+        remarks.append(Remark(Verdict.CAUTION, UNCHECKED))
     measure = Measure(
         _value(page, found),
         says(found),
