@@ -27,8 +27,6 @@ def two_sided(level: float, freedom: int | None = None) -> float:
     while high - low > 1e-12 * high:
         middle = (low + high) / 2.0
         low, high = (middle, high) if _share(middle, freedom) < level else (low, middle)
-        if middle in (low, high) and high - low <= 4e-16 * high:
-            break
     return (low + high) / 2.0
 
 

@@ -6,6 +6,7 @@ from collections.abc import Iterator
 
 import numpy as np
 
+from safeamp.checks.words import level
 from safeamp.quantities import RATIO, TEMPERATURE, TEMPERATURE_DIFFERENCE, TIME, show
 from safeamp.studies.quick.desk import Desk, shown
 from safeamp.studies.quick.soak_told import Told
@@ -96,13 +97,12 @@ def cautions(desk: Desk, found: Told) -> Iterator[str]:
 
 
 def _switch_off(desk: Desk, found: Told) -> Iterator[str]:
-    stop = desk.limits["heat.heatsink"].stop
-    if isinstance(stop, float):
-        yield f"Switch off when the heatsink reaches {shown(stop, TEMPERATURE)}, whatever is forecast."
+    stop = level(desk.limits["heat.heatsink"], "stop")
+    yield f"Switch off when the heatsink reaches {shown(stop, TEMPERATURE)}, whatever is forecast."
     if found.expected is not None and found.rising:
         due, expected = found.expected
         most = expected + ABOVE * found.error
-        if not isinstance(stop, float) or most < stop:
+        if most < stop:
             yield (
                 f"By the curve it is at {shown(expected, TEMPERATURE)} {shown(due, TIME)} into the log: switch off "
                 f"when it is above {shown(most, TEMPERATURE)} then."
