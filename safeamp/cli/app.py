@@ -27,6 +27,7 @@ FILES = {
     "capacitor": "capacitor",
     "soa": "soa",
     "heatsink": "heatsink",
+    "soak": "soak",
     "offset": "offset",
     "loudspeaker": "loudspeaker",
     "solve": "solve",

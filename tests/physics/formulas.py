@@ -16,12 +16,13 @@ from safeamp.physics import (
     offset,
     power_up,
     settling,
+    soak,
     supply,
     zobel,
 )
 
 MODULES: tuple[ModuleType, ...] = (
-    bias, capacitor, coil_heating, feedback, fuse, heat, lamp, limiter, loudspeaker, offset, power_up, settling,
+    bias, capacitor, coil_heating, feedback, fuse, heat, lamp, limiter, loudspeaker, offset, power_up, settling, soak,
     supply, zobel,
 )  # fmt: skip
 
@@ -261,6 +262,12 @@ FORMULAS = (
     }),
     Formula(fuse, "slowest_time", None, {"times_rating": (3.0, N, "")}, {"gates": fuse.GATES["T"]}),
     Formula(fuse, "fastest_time", None, {"times_rating": (3.0, N, "")}, {"gates": fuse.GATES["T"]}),
+    Formula(soak, "settling_temperature", "K", {
+        "time": (600.0, F, "s"), "start": (24.0, F, "K"), "end": (62.0, F, "K"), "time_constant": (1200.0, P, "s"),
+    }),
+    Formula(soak, "soak_resistance", "K/W", {
+        "sink": (62.0, F, "K"), "air": (24.0, F, "K"), "power": (38.0, P, "W"),
+    }),
     Formula(lamp, "hot_resistance", "ohm", LAMP),
     Formula(lamp, "lamp_resistance", "ohm", {
         "voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, ""),
@@ -290,5 +297,5 @@ FORMULAS = (
 )  # fmt: skip
 """Formulas whose parameters are plain numbers; the others (tables, pairs) are tested with their topic."""
 
-ELSEWHERE = {"foster_impedance", "periodic_rise", "mains_band", "untracked"}
+ELSEWHERE = {"foster_impedance", "periodic_rise", "mains_band", "untracked", "soak_fit", "time_needed"}
 """Formulas that take more than numbers, or return a pair: tested with their topic."""

@@ -25,6 +25,7 @@ from safeamp.physics import (
     power_up,
     safe_area,
     settling,
+    soak,
     stage,
     supply,
     transient,
@@ -180,6 +181,18 @@ def motor(u):
     return {"force_factor": u(8.0, "N/A")}
 
 
+def warming(u):
+    times, read = [0.0, 300.0, 600.0, 1200.0, 2400.0], [24.0, 35.0, 42.0, 52.0, 57.5]
+    return {
+        "time": u(np.array(times), "s"), "sink": u(np.array(read), "K"), "reading_error": u(0.5, "K"),
+    }  # fmt: skip
+
+
+def soaked(u):
+    found = soak.soak_fit(**warming(u))
+    return found.end, found.low, found.high, found.time_constant, found.scatter
+
+
 def elements(found):
     return found.resistance, found.capacitance, found.inductance
 
@@ -278,6 +291,8 @@ SCALED = {
     "safe_area.limiter_use": (let_through, ("", "A")),
     "settling.settled_idle": (settled, "A"),
     "bias.settled_idle": (lambda u: settled(u, transconductance_parameter=u(3.0, "A/V**2")), "A"),
+    "soak.soak_fit": (soaked, ("K", "K", "K", "s", "K")),
+    "soak.time_needed": (lambda u: soak.time_needed(**warming(u), within=u(1.0, "K")), "s"),
     "stage.device_currents": (lambda u: currents(u, Law.BIPOLAR), ("A", "A")),
     "stage.heat_of_currents": (heat_of_means, "W"),
     "supply.mains_band": (lambda u: supply.mains_band(nominal=u(230.0, "V")), ("V", "V")),
