@@ -1,4 +1,4 @@
-"""The value of a finding as people read it: its kind, its digits, its word."""
+"""The value of a finding as people read it: its kind, its digits, its word; and a share."""
 
 from __future__ import annotations
 
@@ -31,6 +31,8 @@ PERCENTAGES = frozenset(
 )
 #: Findings that rest on a state, and its words; a number would say nothing.
 STATES = {"power_up.draw": ("dark", "dim", "bright", "rising")}
+#: A percentage is rounded by less than this part of its distance from 0 or 100.
+ROUNDING = 0.05
 
 
 class Valued(Protocol):
@@ -86,3 +88,12 @@ def value_text(finding: Finding) -> str:
         said = finding.says.split()
         return next((state for state in STATES[finding.id] if state in said), finding.says)
     return amount(finding.nominal, shown_kind(finding), levels_in(finding.bound))
+
+
+def percent(share: float) -> str:
+    """Return a share as a percentage that reads 0 or 100 only where it is just that."""
+    if share in (0.0, 1.0):
+        return f"{100.0 * share:.0f} %"
+    exact, rest = 100.0 * share, 100.0 * min(share, 1.0 - share)
+    texts = (f"{exact:.{digits}f}" for digits in range(1, 13))
+    return next((f"{text} %" for text in texts if abs(float(text) - exact) < ROUNDING * rest), f"{exact} %")

@@ -85,7 +85,7 @@ def _histograms(answer: Tolerance, sheet: Sheet, limits: Limits) -> Gallery:
     from safeamp.studies.verdict import verdict
 
     judged = verdict(sheet, limits).findings
-    return histograms_of(answer, {one.id: one.bound for one in judged if one.bound is not None})
+    return histograms_of(answer, {one.id: one.bound for one in judged if one.bound is not None}, limits)
 
 
 def _text(answer: Tolerance, format_: Format, width: int) -> str:

@@ -10,7 +10,7 @@ import numpy as np
 from matplotlib.axes import Axes
 
 from safeamp.amplifier import Amplifier, Sheet
-from safeamp.answers import Bass, Plane, Report, Tolerance
+from safeamp.answers import Bass, FindingChances, Plane, Report, Tolerance
 from safeamp.checks.trace import Trace, watched
 from safeamp.figures import chances, coil, driver, heat, look, overview, response, safe_area, temperatures
 from safeamp.figures.look import NotDrawnError, Picture
@@ -103,7 +103,7 @@ def bass_pictures(bass: Bass) -> Gallery:
     return _gallery([plan], Amplifier())
 
 
-def histograms_of(tolerance: Tolerance, bounds: Mapping[str, Bound]) -> Gallery:
+def histograms_of(tolerance: Tolerance, bounds: Mapping[str, Bound], limits: Limits) -> Gallery:
     """Return one histogram for each finding that varies.
 
     Parameters
@@ -112,18 +112,31 @@ def histograms_of(tolerance: Tolerance, bounds: Mapping[str, Bound]) -> Gallery:
         The answer over many samples.
     bounds : mapping of str to Bound
         Id of a finding -> its nominal limit, as a report has it.
+    limits : Limits
+        Where that limit has no levels, because something else decides at the nominal values, those of its rule.
     """
     plans = [
         _Plan(
             f"tolerance-{one.id.replace('.', '-').replace('_', '-')}",
             chances.title_of(one),
-            partial(lambda one, axes, _: chances.draw(axes, one, bounds.get(one.id)), one),
+            partial(_histogram, one, bounds.get(one.id), limits),
             chances.HEIGHT,
         )
         for one in tolerance.findings
         if one.sampled
     ]
     return _gallery(plans, Amplifier())
+
+
+def _histogram(one: FindingChances, bound: Bound | None, limits: Limits, axes: Axes, _: Amplifier) -> str:
+    if bound is not None and (bound.go is not None or bound.stop is not None):
+        return chances.draw(axes, one, bound)
+    rule = limits[one.id]
+    stop = rule.stop[1] if isinstance(rule.stop, tuple) else rule.stop
+    if rule.go is None and stop is None:
+        return chances.draw(axes, one, None)
+    own = Bound(rule.go, stop, rule.sense, rule.source, rule.evidence, rule.overridden)
+    return chances.draw(axes, one, own, alone=False)
 
 
 def _gallery(plans: list[_Plan], amplifier: Amplifier) -> Gallery:

@@ -173,7 +173,8 @@ def rendered(figure: Figure, format_: Format = "svg") -> bytes:
     return file.getvalue()
 
 
-def _plain(value: float, _: int | None = None) -> str:
+def plain_number(value: float, _: int | None = None) -> str:
+    """Return a number on an axis as people write it."""
     return f"{value:.10g}".replace("-", "\N{MINUS SIGN}")
 
 
@@ -187,7 +188,7 @@ def logarithmic(
     axis = axes.xaxis if which == "x" else axes.yaxis
     axis.set_major_locator(FixedLocator([one for one in places if low * 0.999 <= one <= high * 1.001]))
     axis.set_minor_locator(NullLocator())
-    axis.set_major_formatter(FuncFormatter(_plain))
+    axis.set_major_formatter(FuncFormatter(plain_number))
 
 
 def apart(places: Sequence[float], least: float) -> list[float]:

@@ -11,7 +11,7 @@ from typing import Any
 from safeamp._version import __version__
 from safeamp.amplifier import Entry, written_key
 from safeamp.answers import Chance, FindingChances, StepChances, Tolerance
-from safeamp.checks.amounts import shown_kind
+from safeamp.checks.amounts import percent, shown_kind
 from safeamp.findings import Verdict
 from safeamp.quantities import TEMPERATURE, TEMPERATURE_DIFFERENCE, show
 from safeamp.report.json_ import plain
@@ -24,18 +24,7 @@ WARNING = (
 MAINS = "mains, from today's reading up to the highest"
 #: Smaller parts of the variance are not worth a line.
 LEAST_SHARE = 0.01
-#: A percentage is rounded by less than this part of its distance from 0 or 100.
-ROUNDING = 0.05
 _WORST_FIRST = sorted(Verdict, reverse=True)
-
-
-def percent(share: float) -> str:
-    """Return a share as a percentage that reads 0 or 100 only where it is just that."""
-    if share in (0.0, 1.0):
-        return f"{100.0 * share:.0f} %"
-    exact, rest = 100.0 * share, 100.0 * min(share, 1.0 - share)
-    texts = (f"{exact:.{digits}f}" for digits in range(1, 13))
-    return next((f"{text} %" for text in texts if abs(float(text) - exact) < ROUNDING * rest), f"{exact} %")
 
 
 def chance_text(chance: Chance) -> str:

@@ -4,7 +4,7 @@ from dataclasses import replace
 
 import pytest
 
-from safeamp.checks.amounts import amount, shown_kind, value_text
+from safeamp.checks.amounts import amount, percent, shown_kind, value_text
 from safeamp.findings import Bound, Finding, Step, Verdict
 from safeamp.quantities import PERCENT, RATIO, TEMPERATURE, VOLTAGE
 from tests.scenarios.sheets import finding, report
@@ -47,3 +47,20 @@ def test_enough_digits_keep_a_value_apart_from_its_limits():
     assert amount(0.1, VOLTAGE, [0.1]) == "100 mV"
     assert amount(0.10001, VOLTAGE) == "100 mV"
     assert shown_kind(of("capacitor.voltage", 0.5)) == PERCENT
+
+
+@pytest.mark.parametrize(
+    ("share", "text"),
+    [
+        (0.0, "0 %"),
+        (1.0, "100 %"),
+        (0.331, "33.1 %"),
+        (0.00002, "0.002 %"),
+        (0.99998, "99.998 %"),
+        (0.9999631, "99.9963 %"),
+        (0.05, "5.0 %"),
+        (1e-7, "0.00001 %"),
+    ],
+)
+def test_percent(share, text):
+    assert percent(share) == text

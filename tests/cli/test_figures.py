@@ -74,7 +74,7 @@ def test_histograms_of_the_samples(tmp_path):
     names = {path.name for path in tmp_path.iterdir()}
     assert {"tolerance-soa-loudspeaker.svg", "tolerance-heat-heatsink.svg"} <= names
     assert "figure tolerance-bias-idle is left out: it has the same value" in done.stderr
-    assert "stop above 1<" in (tmp_path / "tolerance-soa-loudspeaker.svg").read_text(encoding="utf-8")
+    assert "stop above 100 %<" in (tmp_path / "tolerance-soa-loudspeaker.svg").read_text(encoding="utf-8")
 
 
 def refused(done, words):

@@ -32,7 +32,43 @@ def test_printed_dc_that_a_share_of_the_excursion_allows():
     found = answer("offset", share="10 %", linear_excursion="6.5 mm", **driver)
     assert found["results"]["reading"]["value"] == printed("offset-3", "allowed_dc")
     assert found["results"]["excursion_share"]["value"] == pytest.approx(0.1)
-    assert (found["verdict"], found["status"]) == (None, 0)
+    assert (found["verdict"], found["status"]) == ("stop", 5)
+
+
+DRIVER = {"dc_resistance": "6 ohm", "force_factor": "7.5 N/A", "compliance": "1.2 mm/N"}
+
+
+# Derived: 5 mm x 6 ohm / (7.5 N/A x 1.2 mm/N) = 3.333 V for the whole excursion.
+@pytest.mark.parametrize(
+    ("share", "word", "status"),
+    [
+        ("10 %", "stop", 5), ("2.9 %", "caution", 3), ("1.4 %", "go", 0), ("2.9..3.2 %", "stop", 5), ("2.6..3.2 %", "caution", 3),
+        ("1.3..1.5 %", "go", 0), ("0.01 %", "go", 0), ("1 %, example", "unverified", 4),
+    ],
+)  # fmt: skip
+def test_dc_that_the_cone_would_stand_is_judged_as_if_it_were_read(share, word, status):
+    found = answer("offset", share=share, linear_excursion="5 mm", **DRIVER)
+    assert (found["verdict"], found["status"]) == (word, status)
+    assert found["holds_for"] == "this DC if it stood at the output"
+
+
+def test_it_is_said_that_the_cone_would_stand_more_than_the_output_may_have():
+    found = answer("offset", share="10 %", linear_excursion="5 mm", **DRIVER)["findings"][0]
+    assert (found["id"], found["says"]) == (
+        "offset.output",
+        "333.3 mV of DC at the output, as the share allows",
+    )
+    assert found["next"] == "what the cone stands is not what the output may have: allow a smaller share"
+
+
+def test_a_range_that_crosses_zero_starts_at_no_power():
+    # Derived: from -18 mV to 82 mV; (82 mV)^2 / 6 ohm = 1.121 mW, and 0 W in between.
+    found = answer("offset", reading="32 mV ±50 mV", linear_excursion="5 mm", **DRIVER)["results"]
+    assert (found["power"]["low"], found["power"]["high"]) == (0.0, pytest.approx(1.1207e-3, rel=1e-4))
+    assert found["excursion_share"]["low"] == 0.0
+    assert found["current"]["low"] == pytest.approx(-3e-3)
+    sure = answer("offset", reading="32 mV ±20 mV", **DRIVER)["results"]
+    assert sure["power"]["low"] == pytest.approx(0.012**2 / 6.0)
 
 
 def test_cone_displacement_keeps_the_sign():

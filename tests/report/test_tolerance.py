@@ -3,35 +3,17 @@
 import pytest
 
 from safeamp.answers import Chance, FindingChances
+from safeamp.checks.amounts import shown_kind
 from safeamp.findings import Step, Verdict
 from safeamp.quantities import PERCENT, RATIO, TEMPERATURE
 from safeamp.report.tolerance import (
     chance_text,
     key_text,
-    percent,
     render_tolerance,
-    shown_kind,
     tolerance_mapping,
 )
 from safeamp.studies.tolerance import tolerance
 from tests.scenarios.sheets import limits, sheet
-
-
-@pytest.mark.parametrize(
-    ("share", "text"),
-    [
-        (0.0, "0 %"),
-        (1.0, "100 %"),
-        (0.331, "33.1 %"),
-        (0.00002, "0.002 %"),
-        (0.99998, "99.998 %"),
-        (0.9999631, "99.9963 %"),
-        (0.05, "5.0 %"),
-        (1e-7, "0.00001 %"),
-    ],
-)
-def test_percent(share, text):
-    assert percent(share) == text
 
 
 @pytest.mark.parametrize(

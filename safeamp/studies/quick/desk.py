@@ -248,9 +248,12 @@ class Page:
     formulas: list[Formula] = field(default_factory=list)
     judged: list[Finding] = field(default_factory=list)
 
-    def add(self, name: str, value: Number, kind: Kind) -> None:
-        """Add a result over the cases."""
-        self.results.append(self.cases.amount(name, value, kind))
+    def add(self, name: str, value: Number, kind: Kind, *, through_zero: bool = False) -> None:
+        """Add a result over the cases; one that falls to zero between its ends starts there."""
+        found = self.cases.amount(name, value, kind)
+        if through_zero and found.low is not None:
+            found = replace(found, low=0.0)
+        self.results.append(found)
 
     def add_one(self, name: str, value: float | str | None, kind: Kind | None = None) -> None:
         """Add a result that has no ends of its own: a worst one, a purchase, a word."""

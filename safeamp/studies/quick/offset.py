@@ -42,15 +42,16 @@ def offset_answer(desk: Desk) -> QuickAnswer:
     _ask(desk)
     page = Page(desk.cases())
     if desk.has("reading"):
-        volts = page.cases["reading"]
+        volts, holds_for = page.cases["reading"], "this one reading, at the moment it was taken"
         _judge(page, volts)
     else:
-        volts = _allowed(page)
+        volts, holds_for = _allowed(page), "this DC if it stood at the output"
+        _judge_allowed(page, volts)
     if desk.has("dc_resistance"):
         _coil(page, volts)
     if desk.has("force_factor"):
         _cone(page, volts)
-    return page.answer("DC at the output", "this one reading, at the moment it was taken", CAUTIONS)
+    return page.answer("DC at the output", holds_for, CAUTIONS)
 
 
 def _ask(desk: Desk) -> None:
@@ -95,12 +96,17 @@ def _compliance(cases: Cases) -> str:
     return shown(cases["compliance"], COMPLIANCE)
 
 
+def _crosses_zero(volts: Number) -> bool:
+    """Whether the ends of a reading lie on both sides of 0 V."""
+    return bool(np.min(volts) < 0.0 < np.max(volts))
+
+
 def _coil(page: Page, volts: Number) -> None:
     coil, put = page.cases["dc_resistance"], f"({shown(volts, VOLTAGE)})"
     current = offset.coil_current(voltage=volts, dc_resistance=coil)
     power = offset.coil_power(voltage=volts, dc_resistance=coil)
     page.add("current", current, CURRENT)
-    page.add("power", power, POWER)
+    page.add("power", power, POWER, through_zero=_crosses_zero(volts))
     ohms = _ohms(page.cases)
     page.say("current = DC / DC resistance of the coil", f"{put} / {ohms} = {shown(current, CURRENT)}")
     page.say("power = DC squared / DC resistance", f"{put}^2 / {ohms} = {shown(power, POWER)}")
@@ -116,7 +122,12 @@ def _cone(page: Page, volts: Number) -> None:
     )
     page.add("cone_displacement", shift, LENGTH)
     if cases.desk.has("linear_excursion"):
-        page.add("excursion_share", np.abs(shift) / cases["linear_excursion"], RATIO)
+        page.add(
+            "excursion_share",
+            np.abs(shift) / cases["linear_excursion"],
+            RATIO,
+            through_zero=_crosses_zero(volts),
+        )
     current = shown(np.asarray(volts) / cases["dc_resistance"], CURRENT)
     page.say(
         "cone displacement = force factor x current x compliance",
@@ -133,3 +144,13 @@ def _judge(page: Page, volts: Number) -> None:
     remarks = (Remark(Verdict.UNVERIFIED, because),) if float(size.flat[0]) <= PERHAPS_OPEN else ()
     measure = Measure(size, says, remarks=remarks, next="read again after 40 minutes and with signal")
     page.judge("offset.output", measure, ("reading",))
+
+
+def _judge_allowed(page: Page, volts: Number) -> None:
+    """Judge the DC that a share of the excursion allows as if it were read at the output."""
+    measure = Measure(
+        volts,
+        f"{shown(volts, VOLTAGE)} of DC at the output, as the share allows",
+        next="what the cone stands is not what the output may have: allow a smaller share",
+    )
+    page.judge("offset.output", measure, (*DRIVER, "linear_excursion", "share"))
