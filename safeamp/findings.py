@@ -84,7 +84,7 @@ class Measure:
     are None where the limit of the same id holds as it stands, and `without_stop` says that no number is a
     stop here. `word` is a verdict that follows from structure alone; `unknown` marks the cases in which
     nothing can be said; with `everywhere` go must hold in every case; `kind` replaces the kind of the
-    register; `needs` are keys that would settle a remark.
+    register; `needs` are keys that would settle a remark; `corner` says what the cases are, for the text.
     """
 
     value: Number
@@ -103,6 +103,7 @@ class Measure:
     unknown: Number | None = None
     everywhere: bool = False
     needs: tuple[str, ...] = ()
+    corner: str = "a corner of the tolerances or at the highest mains"
 
 
 class AsBuilt(NamedTuple):

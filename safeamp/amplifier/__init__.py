@@ -8,6 +8,7 @@ from safeamp.amplifier.keys import Key, keys_of
 from safeamp.amplifier.load import Curve, Limiter, Loudspeaker, Readings
 from safeamp.amplifier.power import Fins, Fuse, Heatsink, Mains, Protection, Supply
 from safeamp.amplifier.sheet import Assumption, Entry, Sheet
+from safeamp.amplifier.soak import SoakLog
 from safeamp.amplifier.stage import Device, OutputCapacitor, Stage
 from safeamp.amplifier.tree import TABLES, Amplifier, is_mapping, value_at, with_values, written_key
 
@@ -29,6 +30,7 @@ __all__ = [
     "Protection",
     "Readings",
     "Sheet",
+    "SoakLog",
     "Stage",
     "Supply",
     "at_case",

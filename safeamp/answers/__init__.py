@@ -9,6 +9,16 @@ if TYPE_CHECKING:
     from safeamp.answers.chances import Chance, FindingChances, Histogram, StepChances, Tolerance
     from safeamp.answers.overview import Overview, OverviewRow
     from safeamp.answers.plane import Path, Plane
+    from safeamp.answers.power_up import (
+        Choice,
+        Expected,
+        Extent,
+        Pattern,
+        PowerUp,
+        SeriesLimiter,
+        State,
+        SwitchOff,
+    )
     from safeamp.answers.quick import Amount, Bass, Formula, PutIn, QuickAnswer
     from safeamp.answers.report import NotApplying, Report, StepVerdict
     from safeamp.answers.solution import Edge, Forbidding, Interval, Solution
@@ -20,8 +30,11 @@ __all__ = [
     "AtWork",
     "Bass",
     "Chance",
+    "Choice",
     "Compared",
     "Edge",
+    "Expected",
+    "Extent",
     "FindingChances",
     "Forbidding",
     "Formula",
@@ -34,16 +47,21 @@ __all__ = [
     "OverviewRow",
     "Pair",
     "Path",
+    "Pattern",
     "Plane",
+    "PowerUp",
     "PutIn",
     "QuickAnswer",
     "Range",
     "Ratings",
     "Report",
+    "SeriesLimiter",
     "Solution",
+    "State",
     "StepChances",
     "StepVerdict",
     "Substitute",
+    "SwitchOff",
     "Tolerance",
     "Working",
 ]
@@ -52,6 +70,16 @@ _FILES = {
     "chances": ("Chance", "FindingChances", "Histogram", "StepChances", "Tolerance"),
     "overview": ("Overview", "OverviewRow"),
     "plane": ("Path", "Plane"),
+    "power_up": (
+        "Choice",
+        "Expected",
+        "Extent",
+        "Pattern",
+        "PowerUp",
+        "SeriesLimiter",
+        "State",
+        "SwitchOff",
+    ),
     "quick": ("Amount", "Bass", "Formula", "PutIn", "QuickAnswer"),
     "report": ("NotApplying", "Report", "StepVerdict"),
     "solution": ("Edge", "Forbidding", "Interval", "Solution"),

@@ -22,13 +22,17 @@ class PutIn(NamedTuple):
 
 @dataclass(frozen=True)
 class Amount:
-    """One result of a quick answer, SI unit of its kind, with its ends when an input had a tolerance; or a word."""
+    """One result of a quick answer, SI unit of its kind, with its ends when an input had a tolerance; or a word.
+
+    `unknown` is what the text says where there is no value.
+    """
 
     name: str
     value: float | str | None
     kind: Kind | None = None
     low: float | None = None
     high: float | None = None
+    unknown: str = "none"
 
 
 class Formula(NamedTuple):

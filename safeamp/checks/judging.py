@@ -225,9 +225,7 @@ def _from_corners(
 ) -> tuple[Verdict, tuple[str, ...]]:
     excused = _without_excuse(measure.as_built, value) < Verdict.STOP
     if np.any(beyond & ~guessed) or (np.any(beyond) and np.all(excused[beyond])):
-        return Verdict.CAUTION, (
-            "beyond the stop level at a corner of the tolerances or at the highest mains",
-        )
+        return Verdict.CAUTION, (f"beyond the stop level at {measure.corner}",)
     if np.any(beyond):
         moved = ", ".join(words) or "a guess"
         return Verdict.UNVERIFIED, (
@@ -237,7 +235,7 @@ def _from_corners(
     if bool(outside[0]):
         return Verdict.CAUTION, ()
     if measure.everywhere and np.any(outside):
-        return Verdict.CAUTION, ("not so at a corner of the tolerances or at the highest mains",)
+        return Verdict.CAUTION, (f"not so at {measure.corner}",)
     return Verdict.GO, ()
 
 

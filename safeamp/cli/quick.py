@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping
 from enum import StrEnum
 from pathlib import Path
-from typing import TYPE_CHECKING, Annotated
+from typing import TYPE_CHECKING, Annotated, TypeVar
 
 import typer
 
@@ -14,6 +14,9 @@ from safeamp.cli.output import colourful, columns, complaining, emit, fail
 if TYPE_CHECKING:
     from safeamp.answers import QuickAnswer
     from safeamp.studies.quick.desk import Desk
+
+
+_Read = TypeVar("_Read")
 
 
 class Format(StrEnum):
@@ -43,16 +46,28 @@ def run(
     limits: Path | None,
 ) -> None:
     """Read the options, compute, print, and end with the status of the verdict."""
+    run_beside(command, options, lambda: None, lambda desk, _: study(desk), format_, limits)
+
+
+def run_beside(
+    command: str,
+    options: Mapping[str, str | None],
+    file: Callable[[], _Read],
+    study: Callable[[Desk, _Read], QuickAnswer],
+    format_: Format,
+    limits: Path | None,
+) -> None:
+    """Do the same with a file that the options go with; troubles of both are said at once."""
     from safeamp.complaints import OptionsError
     from safeamp.reading.limits import load_limits
-    from safeamp.reading.quick_options import read_options
+    from safeamp.reading.quick_options import read_beside, read_options
     from safeamp.studies.quick.desk import Desk
 
     try:
         with complaining():
             rules = load_limits(limits)
-            entries = read_options(command, options)
-            answer = study(Desk(command, rules, entries))
+            entries, found = read_beside(lambda: read_options(command, options), file)
+            answer = study(Desk(command, rules, entries), found)
     except OptionsError as trouble:
         fail(f"{command}: {trouble}")
     except ValueError as trouble:

@@ -84,6 +84,31 @@ def lamp_current(
     )
 
 
+def power_share(
+    *, voltage: ArrayLike, rated_power: ArrayLike, rated_voltage: ArrayLike, cold_ratio: ArrayLike = 15.0
+) -> Array:
+    """Return the power of a lamp over its rated power, by which it looks dark, dim or bright.
+
+    Parameters
+    ----------
+    voltage, rated_power, rated_voltage, cold_ratio : array_like
+        As for `lamp_resistance`.
+
+    Raises
+    ------
+    ValueError
+        If a value is outside its range.
+
+    References
+    ----------
+    Derived: (V/V_rated)^1.55 while the filament glows.
+    """
+    current = lamp_current(
+        voltage=voltage, rated_power=rated_power, rated_voltage=rated_voltage, cold_ratio=cold_ratio
+    )
+    return array(voltage) * current / array(rated_power)
+
+
 def worst_fault_power(*, rated_power: ArrayLike) -> Array:
     """Return the most heat, W, that a resistive fault can draw through the lamp on its rated voltage.
 

@@ -1,7 +1,7 @@
 """The only place that calls pint: one small registry, and the scale of each unit as exact decimals.
 
-pint is loaded by the first unit that is more than a prefix before the unit of its kind: it costs a start more than
-all else together, and a prefix is only a shift of the decimal point.
+pint is loaded by the first unit that is more than a prefix before the unit of its kind, or a minute or an hour: it
+costs a start more than all else together, and a prefix is only a shift of the decimal point.
 """
 
 from __future__ import annotations
@@ -30,6 +30,8 @@ _PLACES = {
     "kilo": 3,
     "mega": 6,
 }
+#: What a log is kept in: not decimal, and yet no reason to load pint.
+_SECONDS = {"minute": Decimal(60), "hour": Decimal(3600)}
 
 
 @cache
@@ -71,6 +73,8 @@ def scale(unit: str, base: str) -> tuple[Decimal, Decimal]:
 
     As decimals (1e-6, not its nearest float) they make the product with the user's digits correctly rounded.
     """
+    if base == "second" and unit in _SECONDS:
+        return _SECONDS[unit], Decimal(0)
     places = _PLACES.get(unit.removesuffix(base)) if unit.endswith(base) else None
     return scale_of_pint(unit, base) if places is None else (Decimal(1).scaleb(places), Decimal(0))
 

@@ -3,8 +3,8 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Mapping
-from typing import Any
+from collections.abc import Callable, Mapping
+from typing import Any, TypeVar
 
 from safeamp.amplifier import Device as DeviceNoun
 from safeamp.amplifier import (
@@ -31,6 +31,7 @@ from safeamp.quantities import (
     RATIO,
     RESISTANCE,
     TEMPERATURE,
+    TEMPERATURE_DIFFERENCE,
     Origin,
     QuantityError,
     Reading,
@@ -75,6 +76,9 @@ OWN_KEYS: Mapping[str, Key] = {
     "case_temperature": Key("case temperature", (TEMPERATURE,), believable=(-10.0, 250.0)),
     "junction": Key("junction temperature", (TEMPERATURE,), believable=(0.0, 400.0)),
     "sink_temperature": Key("heatsink temperature", (TEMPERATURE,), believable=(-10.0, 300.0)),
+    "reading_error": Key(
+        "reading error", (TEMPERATURE_DIFFERENCE,), sign=Sign.MAGNITUDE, believable=(0.01, 20.0)
+    ),
     "share": Key("share of the linear excursion", (PERCENT,), believable=(1e-4, 1.0)),
 }
 _FIN_NAMES = ("width", "height", "depth")
@@ -111,6 +115,30 @@ def read_options(command: str, texts: Mapping[str, str | None]) -> dict[str, Ent
     return found
 
 
+_Read = TypeVar("_Read")
+
+
+def read_beside(
+    entries: Callable[[], dict[str, Entry]], file: Callable[[], _Read]
+) -> tuple[dict[str, Entry], _Read]:
+    """Return options and the file that they go with.
+
+    Raises
+    ------
+    ReadingError
+        With every complaint about either: nobody wants to hear of the second trouble after the first is mended.
+    """
+    try:
+        found = entries()
+    except ReadingError as trouble:
+        try:
+            file()
+        except ReadingError as another:
+            raise ReadingError((*trouble.complaints, *another.complaints)) from None
+        raise
+    return found, file()
+
+
 def complaint(command: str, name: str, text: str) -> Complaint:
     """Return a complaint of one option."""
     return Complaint(command, None, f"--{name.replace('_', '-')}", text)
@@ -129,7 +157,7 @@ def _entry(name: str, text: str) -> Entry:
     if key.none == "zero" and text.strip().lower() == "none":
         return Entry(name, 0.0, 0.0, 0.0, Origin.STATED, kind, "none")
     sign = None if key.sign is Sign.POSITIVE else key.sign
-    value = _bare(text) if name == "tolerance" else text
+    value = _bare(text) if name in ("tolerance", "reading_error") else text
     try:
         reading = read(value, kind, sign=sign, believable=key.believable)
     except QuantityError as trouble:
@@ -148,7 +176,7 @@ def _of(name: str, reading: Reading) -> Entry:
 
 
 def _bare(text: str) -> str:
-    """Return the low end of a tolerance as a percentage: ``±20 %``, ``-20 %`` and ``-20/+50 %`` are 20 %."""
+    """Return a span without its sign, of a tolerance the low end: ``±20 %``, ``-20 %`` and ``-20/+50 %`` are 20 %."""
     uneven = re.fullmatch(_UNEVEN, text.replace("\u2212", "-"))
     return f"{uneven[1]} %" if uneven else text.strip().removeprefix("+/-").lstrip("±-\u2212 ")
 

@@ -44,7 +44,7 @@ def _amount(amount: Amount) -> str:
     if isinstance(amount.value, str):
         return amount.value
     if amount.kind is None or amount.value is None:
-        return "none"
+        return amount.unknown
     text = show(amount.value, amount.kind, 4)
     if amount.low is None or amount.high is None:
         return text

@@ -5,7 +5,7 @@ from math import inf, log10, sqrt
 import pytest
 
 from safeamp.limits import EVIDENCE
-from safeamp.quantities import ANGLE, TEMPERATURE, VOLTAGE, read
+from safeamp.quantities import ANGLE, POWER, TEMPERATURE, VOLTAGE, read
 from safeamp.reading.limits import load_limits
 from tests.published_cases import case
 
@@ -54,6 +54,22 @@ def test_rated_voltages_rise(limits):
     series = limits.series["electrolytic_voltage"]
     assert series.kind == VOLTAGE
     assert series.values == (6.3, 10, 16, 25, 35, 40, 50, 63, 80, 100, 160)
+
+
+def test_lamps_for_the_mains_rise_in_power(limits):
+    assert limits.series["series_lamps"].kind == POWER
+    assert limits.series["series_lamps"].values == (25, 40, 60, 100)
+
+
+def test_cold_filaments_are_the_printed_ones(limits):
+    ratio = limits.default("power_up.cold_ratio")
+    assert [ratio.low, ratio.high] == case("lamp-1")["expected"]["cold_ratio"]
+
+
+def test_a_lamp_that_lets_the_most_heat_through_is_bright(limits):
+    # Derived: at a share s of its voltage the rest takes (1 - s) s^0.55, most at s = 0.55/1.55; the lamp s^1.55.
+    share = 0.55 / 1.55
+    assert share**1.55 > limits.default("power_up.dim_up_to").nominal
 
 
 def test_declared_mains_voltages(limits):
@@ -116,9 +132,25 @@ DEFAULTS = {
     "loudspeaker.phase_angle.beside": (60, 60, 60),
     "loudspeaker.lowest_note": (20, 20, 20),
     "loudspeaker.rated_power": (0.5, 0.25, 0.5),
+    "soak.reading_error": (1, 1, 1),
+    "soak.scatter": (3, 3, 3),
+    "soak.air_moves": (3, 3, 3),
+    "soak.power_moves": (0.2, 0.2, 0.2),
+    "soak.end_uncertainty": (5, 5, 5),
     "guess.value": (1, 0.75, 1.25),
     "guess.temperature": (0, -10, 10),
     "guess.angle": (0, -15, 15),
+    "power_up.other_draw": (5, 1, 12),
+    "power_up.rails_draw": (2, 0.5, 6),
+    "power_up.channels": (2, 1, 2),
+    "power_up.apparent": (1.2, 1, 1.4),
+    "power_up.idle_exponent": (1, 1, 2),
+    "power_up.cold_ratio": (12.5, 10, 15),
+    "power_up.dark_up_to": (0.02, 0.02, 0.02),
+    "power_up.dim_up_to": (0.15, 0.15, 0.15),
+    "power_up.rails_left": (0.8, 0.8, 0.8),
+    "power_up.wait": (5, 5, 5),
+    "power_up.bench_limit": (2, 2, 2),
 }
 
 

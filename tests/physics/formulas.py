@@ -14,14 +14,16 @@ from safeamp.physics import (
     limiter,
     loudspeaker,
     offset,
+    power_up,
     settling,
+    soak,
     supply,
     zobel,
 )
 
 MODULES: tuple[ModuleType, ...] = (
-    bias, capacitor, coil_heating, feedback, fuse, heat, lamp, limiter, loudspeaker, offset, settling, supply,
-    zobel,
+    bias, capacitor, coil_heating, feedback, fuse, heat, lamp, limiter, loudspeaker, offset, power_up, settling, soak,
+    supply, zobel,
 )  # fmt: skip
 
 P, N, F = "greater than zero", "zero or more", "free"
@@ -56,6 +58,11 @@ FAULT = {
     "air": (25.0, F, "K"),
 }
 LAMP = {"rated_power": (60.0, P, "W"), "rated_voltage": (230.0, P, "V")}
+IDLE_DRAW = {
+    "mains": (230.0, P, "V"),
+    "apparent_power": (15.0, N, "W"),
+    "exponent": (1.5, F, ""),
+}
 CHARGE = {
     "supply": (15.0, F, "V"),
     "resistance": (1e4, P, "ohm"),
@@ -255,17 +262,40 @@ FORMULAS = (
     }),
     Formula(fuse, "slowest_time", None, {"times_rating": (3.0, N, "")}, {"gates": fuse.GATES["T"]}),
     Formula(fuse, "fastest_time", None, {"times_rating": (3.0, N, "")}, {"gates": fuse.GATES["T"]}),
+    Formula(soak, "settling_temperature", "K", {
+        "time": (600.0, F, "s"), "start": (24.0, F, "K"), "end": (62.0, F, "K"), "time_constant": (1200.0, P, "s"),
+    }),
+    Formula(soak, "soak_resistance", "K/W", {
+        "sink": (62.0, F, "K"), "air": (24.0, F, "K"), "power": (38.0, P, "W"),
+    }),
     Formula(lamp, "hot_resistance", "ohm", LAMP),
     Formula(lamp, "lamp_resistance", "ohm", {
         "voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, ""),
     }),
     Formula(lamp, "lamp_current", "A", {"voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, "")}),
     Formula(lamp, "worst_fault_power", "W", {"rated_power": (60.0, P, "W")}),
+    Formula(lamp, "power_share", "", {"voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, "")}),
     Formula(lamp, "voltage_behind_lamp", None, {
         "mains": (230.0, P, "V"), "resistance": (500.0, N, "ohm"), **LAMP, "cold_ratio": (12.0, F, ""),
+    }),
+    Formula(power_up, "winding_resistance", "ohm", {
+        "no_load": (34.0, P, "V"), "full_load": (31.0, P, "V"), "mean_current": (1.1, P, "A"),
+    }),
+    Formula(power_up, "seen_from_mains", "ohm", {
+        "resistance": (6.0, N, "ohm"), "mains": (230.0, P, "V"), "no_load": (68.0, P, "V"),
+    }),
+    Formula(power_up, "idle_mains_current", "A", {"voltage": (200.0, N, "V"), **IDLE_DRAW}),
+    Formula(power_up, "idle_behind_lamp", None, {**IDLE_DRAW, **LAMP, "cold_ratio": (12.0, F, "")}),
+    Formula(power_up, "idle_behind_resistor", None, {**IDLE_DRAW, "resistance": (680.0, P, "ohm")}),
+    Formula(power_up, "most_through_lamp", "W", {"mains": (230.0, P, "V"), **LAMP}),
+    Formula(power_up, "most_through_resistor", "W", {
+        "mains": (230.0, P, "V"), "resistance": (680.0, P, "ohm"),
+    }),
+    Formula(power_up, "flash_time", "s", {
+        "mains": (230.0, P, "V"), "capacitance": (3e-4, N, "F"), **LAMP,
     }),
 )  # fmt: skip
 """Formulas whose parameters are plain numbers; the others (tables, pairs) are tested with their topic."""
 
-ELSEWHERE = {"foster_impedance", "periodic_rise", "mains_band", "untracked"}
+ELSEWHERE = {"foster_impedance", "periodic_rise", "mains_band", "untracked", "soak_fit", "time_needed"}
 """Formulas that take more than numbers, or return a pair: tested with their topic."""

@@ -22,8 +22,10 @@ from safeamp.physics import (
     fins,
     heat,
     lamp,
+    power_up,
     safe_area,
     settling,
+    soak,
     stage,
     supply,
     transient,
@@ -161,6 +163,10 @@ def lit(u):
     )
 
 
+def idle(u, function, **limiter):
+    return function(mains=u(230.0, "V"), apparent_power=u(15.0, "W"), exponent=1.4, **limiter)
+
+
 def heat_of_means(u):
     means = SimpleNamespace(mean=u(0.6, "A"), mean_square=u(0.9, "A**2"))
     keys = ("half_supply", "peak", "load_magnitude", "phase_angle", "conducting", "emitter_resistor")
@@ -173,6 +179,18 @@ def moving(u):
 
 def motor(u):
     return {"force_factor": u(8.0, "N/A")}
+
+
+def warming(u):
+    times, read = [0.0, 300.0, 600.0, 1200.0, 2400.0], [24.0, 35.0, 42.0, 52.0, 57.5]
+    return {
+        "time": u(np.array(times), "s"), "sink": u(np.array(read), "K"), "reading_error": u(0.5, "K"),
+    }  # fmt: skip
+
+
+def soaked(u):
+    found = soak.soak_fit(**warming(u))
+    return found.end, found.low, found.high, found.time_constant, found.scatter
 
 
 def elements(found):
@@ -253,6 +271,10 @@ SCALED = {
         "K"),
     "transient.cycle_dissipation": (lambda u: transient.cycle_dissipation(**of_stage(u)), "W"),
     "lamp.voltage_behind_lamp": (lit, "V"),
+    "power_up.idle_behind_lamp": (
+        lambda u: idle(u, power_up.idle_behind_lamp, rated_power=u(60.0, "W"), rated_voltage=u(230.0, "V")), "V"),
+    "power_up.idle_behind_resistor": (
+        lambda u: idle(u, power_up.idle_behind_resistor, resistance=u(680.0, "ohm")), "V"),
     "safe_area.allowed_current": (
         lambda u: safe_area.allowed_current(
             voltage=u(np.array([10.0, 50.0, 120.0]), "V"), case_temperature=u(60.0, "K"), rating=of_device(u)), "A"),
@@ -269,6 +291,8 @@ SCALED = {
     "safe_area.limiter_use": (let_through, ("", "A")),
     "settling.settled_idle": (settled, "A"),
     "bias.settled_idle": (lambda u: settled(u, transconductance_parameter=u(3.0, "A/V**2")), "A"),
+    "soak.soak_fit": (soaked, ("K", "K", "K", "s", "K")),
+    "soak.time_needed": (lambda u: soak.time_needed(**warming(u), within=u(1.0, "K")), "s"),
     "stage.device_currents": (lambda u: currents(u, Law.BIPOLAR), ("A", "A")),
     "stage.heat_of_currents": (heat_of_means, "W"),
     "supply.mains_band": (lambda u: supply.mains_band(nominal=u(230.0, "V")), ("V", "V")),

@@ -57,15 +57,15 @@ def test_differences_of_temperature_are_what_pint_says():
 def test_a_prefix_alone_loads_no_pint():
     code = (
         "import sys; from safeamp import quantities as q\n"
-        "texts = (('22 mV', q.VOLTAGE), ('35 degC \u00b15 K', q.TEMPERATURE), ('20 %', q.PERCENT))\n"
+        "texts = (('22 mV', q.VOLTAGE), ('35 degC \u00b15 K', q.TEMPERATURE), ('20 %', q.PERCENT), ('5 min', q.TIME))\n"
         "print(*(q.show_reading(q.read(text, kind)) for text, kind in texts), 'pint' in sys.modules, sep='; ')\n"
-        "q.read('5 min', q.TIME)\n"
+        "q.read('300 K', q.TEMPERATURE)\n"
         "print('pint' in sys.modules)"
     )
     done = subprocess.run([sys.executable, "-X", "utf8", "-c", code], capture_output=True, check=False)
     assert (done.returncode, done.stderr.decode()) == (0, "")
     assert done.stdout.decode().split("\n") == [
-        "22 mV, stated; 35 °C ±5 K, stated; 20 %, stated; False",
+        "22 mV, stated; 35 °C ±5 K, stated; 20 %, stated; 5 min, stated; False",
         "True",
         "",
     ]

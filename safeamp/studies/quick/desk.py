@@ -206,7 +206,8 @@ class Cases:
         return (Remark(Verdict.UNVERIFIED, f"{dashed(*names)}: an example value clears nothing"),)
 
     def _moved(self) -> tuple[str, ...]:
-        return tuple(dashed(entry.path) for entry in self.design.entries if corners.is_estimated(entry))
+        moved = [entry.path for entry in self.design.entries if corners.is_estimated(entry)]
+        return tuple(dashed(path) if path in self.desk.entries else _spoken(path) for path in moved)
 
 
 def _spoken(path: str) -> str:
