@@ -72,6 +72,7 @@ def check_cutoff(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicabl
         f"-3 dB at {text(value, FREQUENCY)} with {text(farads, CAPACITANCE)} into {into}",
         go=target,
         without_stop=True,
+        everywhere=True,
         remarks=_unfinished(amplifier, driver),
         needs=() if driver is not None or not is_started(amplifier) else parameters_of(amplifier).missing(),
         also=(*_peak(amplifier, driver, farads, plain), *_size(target, ohms)),
@@ -203,7 +204,7 @@ def check_leakage(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicab
         current / allowed,
         f"{text(current, CURRENT)} leak ({trend or 'trend not given'}), {text(allowed, CURRENT)} is usual",
         stop=_leakage_stop(trend, limits),
-        remarks=_trend_remarks(trend),
+        remarks=(*_trend_remarks(trend), *_flood(amplifier, drop, current / allowed, limits)),
         needs=() if trend else ("readings.capacitor_leakage_trend",),
         also=_leakage_also(amplifier, current, drop),
         next="load the terminal with 100 ohm to 1 kohm, never open, and read for ten minutes: it must fall",
@@ -223,6 +224,22 @@ def _trend_remarks(trend: str | None) -> tuple[Remark, ...]:
     if trend is not None:
         return ()
     return (Remark(Verdict.UNVERIFIED, "whether the leakage falls or rises is not given"),)
+
+
+def _flood(amplifier: Amplifier, drop: Number, times: Number, limits: Limits) -> tuple[Remark, ...]:
+    """Return what holds back a leakage that falls and is still far too large to be left to fall unread."""
+    if amplifier.readings.capacitor_leakage_trend != "falling":
+        return ()
+    extra, apart = limits["capacitor.leakage"].extra, aside(amplifier)
+    midpoint = operating.midpoint_share(apart) * operating.rails_as_read(apart)[0]
+    if np.abs(nominal(drop)) > extra["falling_share_of_midpoint"] * nominal(midpoint):
+        found = f"takes {text(np.abs(drop), VOLTAGE)} of the {text(midpoint, VOLTAGE)} at the midpoint"
+    elif nominal(times) > extra["falling_times_usual"]:
+        found = f"is {nominal(times):.0f} times what is usual"
+    else:
+        return ()
+    because = f"it falls, and still {found}: wait until it has fallen, and read again"
+    return (Remark(Verdict.UNVERIFIED, because),)
 
 
 def _leakage_also(amplifier: Amplifier, current: Number, drop: Number) -> tuple[Also, ...]:

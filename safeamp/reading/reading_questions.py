@@ -73,6 +73,22 @@ def _leakage(draft: Draft) -> None:
         draft.complain("readings.capacitor_leakage_resistor", text)
 
 
+def _leakage_drop(draft: Draft) -> None:
+    """Complain of more volts than stand across capacitor and resistor together."""
+    path, rails = "readings.capacitor_leakage_drop", draft.numbers("supply.no_load")
+    drop, midpoint = draft.number(path), draft.number("readings.midpoint")
+    if drop is None or not rails or draft.word("stage.coupling") != "capacitor":
+        return
+    most = midpoint or rails[0] / 2 * (1 + FAR_MIDPOINT)
+    if abs(drop) <= most * (1 + ROUNDING):
+        return
+    holds = "holds" if midpoint else "can hold"
+    text = (
+        f"{show(drop, VOLTAGE)} across the resistor is more than the midpoint {holds}, {show(most, VOLTAGE)}"
+    )
+    draft.complain(path, f"{text}: did you mean {show(drop / 1e3, VOLTAGE)}? read both again")
+
+
 def _heatsink(draft: Draft) -> None:
     sink, air = draft.number("readings.heatsink_temperature"), draft.number("readings.heatsink_air")
     if sink is not None and air is not None and sink < air:
@@ -121,6 +137,7 @@ READING_QUESTIONS: tuple[Callable[[Draft], None], ...] = (
     _bridge,
     _midpoint,
     _leakage,
+    _leakage_drop,
     _heatsink,
     _limiter_rails,
     _idle,

@@ -57,6 +57,8 @@ EXTRA = {
     ("supply.reservoir_voltage", "stop_at_highest"): 1.1,
     ("capacitor.voltage", "whole_rail_caution_above"): 1,
     ("capacitor.leakage", "leakage_per_charge"): 0.01,
+    ("capacitor.leakage", "falling_share_of_midpoint"): 0.1,
+    ("capacitor.leakage", "falling_times_usual"): 300.0,
     ("power_up.draw", "dark"): 0,
     ("power_up.draw", "dim"): 1,
     ("power_up.draw", "bright"): 2,

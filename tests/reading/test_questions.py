@@ -9,6 +9,8 @@ from tests.reading.desk import GONE, complaints, load
 
 POINTS = "device.fitted.safe_area"
 SINGLE = "single_rail"
+DROP = "readings.capacitor_leakage_drop"
+LEAKING = {"readings.capacitor_leakage_resistor": "100 ohm", "readings.capacitor_leakage_trend": "falling"}
 
 # Sheet, what is inside the boundary, what is outside, and the words.
 BOUNDARIES = [
@@ -68,6 +70,9 @@ BOUNDARIES = [
     (SINGLE, {"readings.limiter_rails": "9 V"}, {"readings.limiter_rails": ["9 V", "9 V"]}, "readings.limiter_rails: 2 given, and supply.rails is single; write 1"),
     ("leaky_capacitor", {"readings.capacitor_leakage_resistor": "10 kohm"}, {"readings.capacitor_leakage_resistor": "10.1 kohm"}, "readings.capacitor_leakage_resistor: 10.1 kohm is above 10 kohm: across so much, as across open terminals"),
     ("leaky_capacitor", {"readings.capacitor_leakage_resistor": "100 ohm"}, {"readings.capacitor_leakage_resistor": GONE}, "readings.capacitor_leakage_resistor: is missing: volts alone are no leakage"),
+    # The resistor lies in series with the capacitor: it takes no more than the midpoint holds; unread, 0.65 of 64 V.
+    (SINGLE, {"readings.midpoint": "30 V", **LEAKING, DROP: "30 V"}, {"readings.midpoint": "30 V", **LEAKING, DROP: "30.1 V"}, "readings.capacitor_leakage_drop: 30.1 V across the resistor is more than the midpoint holds, 30 V: did you mean 30.1 mV? read both again"),
+    (SINGLE, {"readings.midpoint": GONE, **LEAKING, DROP: "41.6 V"}, {"readings.midpoint": GONE, **LEAKING, DROP: "41.7 V"}, "readings.capacitor_leakage_drop: 41.7 V across the resistor is more than the midpoint can hold, 41.6 V: did you mean 41.7 mV? read both again"),
     (SINGLE, {"output_capacitor.marked_capacitance": "3400 uF"}, {"output_capacitor.marked_capacitance": "3410 uF"}, "output_capacitor.marked_capacitance: 3410 µF is marked and 680 µF is there"),
     (SINGLE, {"output_capacitor.marked_capacitance": "136 uF"}, {"output_capacitor.marked_capacitance": "135 uF"}, "output_capacitor.marked_capacitance: 135 µF is marked"),
     ("healthy", {"readings.heatsink_temperature": "35 degC"}, {"readings.heatsink_temperature": "34.9 degC"}, "readings.heatsink_temperature: 34.9 °C is below heatsink_air, 35 °C"),
