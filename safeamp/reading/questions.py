@@ -15,6 +15,7 @@ from safeamp.quantities import (
     Origin,
     show,
 )
+from safeamp.reading.curve_questions import ask_curve
 from safeamp.reading.device_questions import ask_devices
 from safeamp.reading.draft import Draft
 from safeamp.reading.reading_questions import ask_readings
@@ -26,7 +27,7 @@ MOST_IDLE_ACROSS_RESISTOR = 10.0
 
 def ask(draft: Draft) -> None:
     """Complain of every contradiction."""
-    for question in (ask_supply, *QUESTIONS, ask_devices, ask_readings):
+    for question in (ask_supply, *QUESTIONS, ask_curve, ask_devices, ask_readings):
         question(draft)
 
 

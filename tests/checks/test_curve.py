@@ -121,11 +121,11 @@ def test_no_assumed_angle_and_no_word_of_a_key_not_assessed(tmp_path):
 
 def test_a_curve_with_a_bad_point_stops_what_the_rule_would_pass(tmp_path):
     good, bad = flat_curve(8.0, 20.0), flat_curve(8.0, 20.0)
-    low = type(bad)(bad.frequencies, (8.0, 2.2, 8.0), (20.0, -60.0, 20.0))
+    low = type(bad)(bad.frequencies, (8.0, 8.0, 3.3), (20.0, 20.0, -60.0))
     assert finding(judged(tmp_path, good, "split_rail"), "soa.loudspeaker").nominal < 1.0
     one = finding(judged(tmp_path, low, "split_rail"), "soa.loudspeaker")
     assert one.verdict is Verdict.STOP
-    assert one.at["frequency"] == 200.0
+    assert one.at["frequency"] == 2000.0
 
 
 def test_as_built_needs_an_amplifier_without_a_curve(tmp_path):

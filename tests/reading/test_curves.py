@@ -3,7 +3,9 @@
 import pytest
 
 from safeamp.complaints import ReadingError
-from tests.reading.desk import load
+from safeamp.reading.curves import read_curve
+from safeamp.reading.draft import Draft
+from tests.reading.desk import GONE, complaints, load
 
 KEY = {"loudspeaker.impedance_curve": "curve.csv"}
 HEAD = "frequency [Hz], impedance [ohm], phase [deg]"
@@ -92,7 +94,8 @@ def test_refusals(tmp_path, content, wanted):
 
 def test_ends_of_what_is_believed(tmp_path):
     ends = f"{HEAD}\n0.1, 0.1, -90\n1e6, 1e5, 90\n"
-    assert read(tmp_path, ends).phases == (-90.0, 90.0)
+    (tmp_path / "ends.csv").write_text(ends)
+    assert read_curve(tmp_path / "ends.csv", "ends.csv", Draft(places=None)).phases == (-90.0, 90.0)
     assert refused(tmp_path, ends.replace("0.1, 0.1", "0.0999, 0.1")) == [
         "2: 0.0999 in the column frequency is not believable; it lies between 0.1 Hz and 1000 kHz"
     ]
@@ -132,3 +135,51 @@ def test_a_curve_is_found_beside_the_sheet_and_not_beside_the_user(tmp_path, mon
     (tmp_path / "elsewhere").mkdir()
     monkeypatch.chdir(tmp_path / "elsewhere")
     assert read(tmp_path, GOOD).text == "curve.csv"
+
+
+COIL = "loudspeaker.dc_resistance"
+
+
+def asked(folder, low, high, **changes):
+    """Return what is asked about a curve of two points, at 100 Hz and 5 kHz, beside a label of 8 ohm."""
+    (folder / "curve.csv").write_text(f"{HEAD}\n100, {low}, 0\n5000, {high}, 0\n")
+    return complaints(folder, {**KEY, COIL: "6 ohm, measured", **changes})
+
+
+def test_a_curve_below_the_coil_at_low_notes_is_asked_about(tmp_path):
+    # 0.95 of 6 ohm is 5.7 ohm: so far the meter may be off.
+    assert asked(tmp_path, 5.7, 9) == []
+    assert asked(tmp_path, 5.69, 9) == [
+        (
+            "loudspeaker.impedance_curve: 5.69 ohm at 100 Hz is below dc_resistance, 6 ohm: at low notes no loudspeaker"
+            " has less than its coil; is it the curve of this one, in ohm? read the coil again"
+        )
+    ]
+
+
+def test_of_a_coil_with_a_tolerance_its_low_end_counts(tmp_path):
+    assert asked(tmp_path, 4.9, 9, **{COIL: "6 ohm ±20 %"}) == []
+    assert asked(tmp_path, 4.7, 9, **{COIL: "6 ohm ±20 %"})
+
+
+def test_at_high_notes_another_way_of_the_box_may_draw_more_than_the_coil(tmp_path):
+    assert asked(tmp_path, 6.5, 3.2) == []
+
+
+@pytest.mark.parametrize(("inside", "outside"), [(3.2, 3.1), (12, 12.1)])
+def test_a_curve_far_from_the_label_is_asked_about(tmp_path, inside, outside):
+    # 0.4 and 1.5 of 8 ohm; nobody read the coil.
+    assert asked(tmp_path, inside, inside, **{COIL: GONE}) == []
+    assert asked(tmp_path, outside, outside, **{COIL: GONE}) == [
+        (
+            f"loudspeaker.impedance_curve: its lowest, {outside:g} ohm, is far from nominal_impedance, 8 ohm:"
+            " is it the curve of one loudspeaker alone, in ohm? read label and curve again"
+        )
+    ]
+
+
+def test_a_curve_that_the_coil_confirms_is_not_held_against_the_label(tmp_path):
+    # A label of 8 ohm on 3 ohm of coil is judged by loudspeaker.label.
+    assert asked(tmp_path, 3.1, 3.1, **{COIL: "3 ohm"}) == []
+    assert asked(tmp_path, 12.5, 12.5, **{COIL: "9 ohm"}) == []
+    assert asked(tmp_path, 13.6, 13.6, **{COIL: "9 ohm"})
