@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from dataclasses import dataclass, replace
+from decimal import Context, Decimal
 from typing import Any
 
 from safeamp.amplifier import TABLES, Entry, Key, Sheet, keys_of
@@ -14,6 +15,8 @@ from safeamp.reading.walk import tables_of
 
 #: Plus, and the two characters written as minus.
 SIGNS = ("+", "-", "\u2212")
+#: Significant digits of an item of a list that is scaled with its largest.
+FEWEST_DIGITS, MOST_DIGITS = 4, 12
 
 
 @dataclass(frozen=True)
@@ -50,13 +53,15 @@ class Movable:
     def written(self, value: float) -> Any:
         """Return what stands in the file for a value: its tolerance in proportion, its origin as it was.
 
-        The items of a list keep their proportions to the largest, which becomes `value`.
+        The items of a list keep their proportions to the largest, which becomes `value`: with as many digits as
+        `value` has, as rounding of floats is nothing to be copied.
         """
         if len(self.entries) < 2:
             return self._one(self.entries[0] if self.entries else None, value)
         largest = self.now or 0.0
         return [
-            self._one(item, item.nominal * (value / largest) if largest else value) for item in self.entries
+            self._one(item, _scaled(item.nominal, value, largest) if largest else value)
+            for item in self.entries
         ]
 
     def _one(self, entry: Entry | None, value: float) -> Any:
@@ -82,6 +87,20 @@ class Movable:
             If the sheet cannot have that value.
         """
         return self.source.sheet({self.path: self.written(value)})
+
+
+def _scaled(nominal: float, value: float, largest: float) -> float:
+    """Return a number in proportion, with the digits of the numbers that it comes from, within bounds."""
+    if value == largest:
+        return nominal
+    digits = max(_digits(value), _digits(nominal))
+    kept = min(max(digits, FEWEST_DIGITS), MOST_DIGITS)
+    exact = Decimal(repr(nominal)) * Decimal(repr(value)) / Decimal(repr(largest))
+    return float(Context(prec=kept).plus(exact)) if abs(nominal) != abs(largest) else float(exact)
+
+
+def _digits(number: float) -> int:
+    return len(Decimal(repr(number)).normalize().as_tuple().digits)
 
 
 def movable(source: Source, typed: str) -> Movable:

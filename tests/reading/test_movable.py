@@ -60,7 +60,7 @@ def test_a_list_keeps_its_proportions_to_the_largest():
     [
         (0.01386, ["13.86 mV", "13.12 mV"]), (0.0138612, ["13.8612 mV", "13.1219 mV"]),
         (0.014, ["14 mV", "13.25 mV"]), (0.015, ["15 mV", "14.2 mV"]),
-        (0.013861234567890123, ["13.861234567890123 mV", "13.1219687243 mV"]),
+        (0.013861234567890123, ["13.861234567890122 mV", "13.1219687243 mV"]),
     ],
 )  # fmt: skip
 def test_what_is_scaled_in_a_list_has_the_digits_of_the_value_and_no_noise(value, expected):

@@ -64,7 +64,22 @@ def test_a_list_moves_as_one():
     assert high.value == pytest.approx(50.0 * 0.9 / 1.1, rel=1e-3)
     first, second = (float(text.split()[0]) for text in tomllib.loads(f"x = {high.written}")["x"])
     assert second == high.value
-    assert first / second == pytest.approx(30 / 34)
+    assert first / second == pytest.approx(30 / 34, rel=2e-4)
+    assert len(f"{first:.15g}") <= len("36.09")
+
+
+# The other readings of a list are scaled: what stands there to be copied has no more digits than the value itself.
+@pytest.mark.parametrize("name", ["60w_two_pairs", "80w_two_pairs_shared_heatsink", "120w_three_pairs"])
+def test_what_is_to_be_copied_from_a_list_has_no_noise_and_still_holds(name):
+    moved = number(name, "readings.idle_upper")
+    interval = only(solve(moved, limits(), findings=["bias.balance"]))
+    for edge in (interval.smallest, interval.largest):
+        value = tomllib.loads(f"x = {edge.written}")["x"]
+        lengths = [len(item.split()[0]) for item in value]
+        assert max(lengths) <= max(len("12.34"), lengths[0]), edge.written
+        found = words(changed(tables(name), {moved.path: value}))
+        assert found["bias.balance"] is Verdict.GO
+        assert max(found.values()) is edge.verdict
 
 
 def test_a_key_that_nothing_reads():
