@@ -26,11 +26,16 @@ RAIL_VOLTS = (1.0, 300.0)
 
 @dataclass(frozen=True)
 class Fuse:
-    """A fuse link: letter of its time characteristic (FF, F, M, T, TT) and rated current in A."""
+    """A fuse link: letter of its time characteristic (FF, F, M, T, TT), rated current in A.
+
+    Where they are imprinted the letter of its breaking capacity (L, E, H) and its rated voltage in V.
+    """
 
     letter: str
     rating: float
     text: str = ""
+    capacity: str = ""
+    voltage: float | None = None
 
 
 @dataclass(frozen=True, eq=False, kw_only=True)

@@ -17,6 +17,9 @@ from safeamp.quantities import CURRENT, RATIO, VOLTAGE, Number, show
 
 NEXT_FUSE = "read the fuse fitted and the one printed on plate or board: letter, amperes"
 
+#: Letters of the breaking capacity, rising: 35 A or ten times the rating, 150 A, 1500 A (IEC 60127-2, memory).
+BREAKING = "LEH"
+
 
 def mean_rail_current(amplifier: Amplifier) -> Number:
     """Return the mean current of one rail at clipping into the nominal load, both bridged sides together, A."""
@@ -49,7 +52,21 @@ def _missing_fuses(fitted: Fuse | None, plate: Fuse | None) -> list[str]:
 
 
 def _named(fuse: Fuse) -> str:
-    return f"{fuse.letter} {show(fuse.rating, CURRENT)}"
+    volts = "" if fuse.voltage is None else show(fuse.voltage, VOLTAGE)
+    return " ".join(part for part in (fuse.letter, show(fuse.rating, CURRENT), fuse.capacity, volts) if part)
+
+
+def _imprint_remarks(fitted: Fuse, plate: Fuse) -> tuple[Remark, ...]:
+    """Return what the fitted fuse does less than the printed one, where both say it."""
+    found = []
+    if fitted.capacity and plate.capacity:
+        one, other = BREAKING.index(fitted.capacity), BREAKING.index(plate.capacity)
+        if one < other:
+            found.append(f"it interrupts less ({fitted.capacity}) than the one printed ({plate.capacity})")
+    if fitted.voltage is not None and plate.voltage is not None and fitted.voltage < plate.voltage:
+        fits, prints = show(fitted.voltage, VOLTAGE), show(plate.voltage, VOLTAGE)
+        found.append(f"it is made for {fits}, the one printed for {prints}")
+    return tuple(Remark(Verdict.CAUTION, f"{one}: at a short it may arc on or burst") for one in found)
 
 
 def _against_plate(fitted: Fuse, plate: Fuse) -> Measure:
@@ -62,6 +79,7 @@ def _against_plate(fitted: Fuse, plate: Fuse) -> Measure:
     return Measure(
         ratio,
         says,
+        remarks=_imprint_remarks(fitted, plate),
         next="fit the fuse that is printed, never the next size up",
         method="rated currents compared",
     )

@@ -23,7 +23,7 @@ LETTERS = {
 
 _FUSE = (
     r"(?P<letter>[A-Za-z -]*?)\s*(?P<rating>[\d.,]+\s*m?A)\s*"
-    r"(?:[LHE]?\s*/?\s*\d{2,3}\s*V|[LHE])?\s*(?:,(?P<origin>[^,]*))?"
+    r"(?P<capacity>[LHE])?\s*(?:/?\s*(?P<volts>\d{2,3})\s*V)?\s*(?:,(?P<origin>[^,]*))?"
 )
 _LAMP = r"(?:lamp\s*)?(?P<watts>[^,]*?W)\s*(?:lamp\s*)?(?P<rest>,.*)?"
 _FUSE_FORM = 'write letter and rating, such as "T 2 A", or the imprint, such as "T2AL250V"'
@@ -35,7 +35,8 @@ def fuse(text: str, _: Draft) -> tuple[Fuse, Origin]:
 
     References
     ----------
-    IEC 60127-2: letters of the time characteristics; preferred ratings lie within 0.03 A to 63 A.
+    IEC 60127-2: letters of the time characteristics and of the breaking capacity; preferred ratings lie within
+    0.03 A to 63 A.
     """
     found = re.fullmatch(_FUSE, text.strip())
     if found is None:
@@ -50,7 +51,9 @@ def fuse(text: str, _: Draft) -> tuple[Fuse, Origin]:
         )
     origin = f", {found['origin'].strip()}" if found["origin"] else ""
     reading = _read_off(text, rating + origin, CURRENT, (0.03, 63.0))
-    return Fuse(LETTERS[word], reading.nominal, _without_origin(text)), reading.origin
+    volts = float(found["volts"]) if found["volts"] else None
+    imprint = (found["capacity"] or "", volts)
+    return Fuse(LETTERS[word], reading.nominal, _without_origin(text), *imprint), reading.origin
 
 
 def _without_origin(text: str) -> str:

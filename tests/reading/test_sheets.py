@@ -88,23 +88,28 @@ def test_idle_is_volts_or_amperes_and_the_unit_stands_beside(tmp_path):
     [
         ("T 2 A", ("T", 2.0)),
         ("T2A", ("T", 2.0)),
-        ("T2AL250V", ("T", 2.0)),
-        ("T3.15AH250V", ("T", 3.15)),
-        ("F500mAL250V", ("F", 0.5)),
+        ("T2AL250V", ("T", 2.0, "L", 250.0)),
+        ("T3.15AH250V", ("T", 3.15, "H", 250.0)),
+        ("F500mAL250V", ("F", 0.5, "L", 250.0)),
+        ("T2AE", ("T", 2.0, "E")),
+        ("T 2 A L / 63 V", ("T", 2.0, "L", 63.0)),
         ("F 500 mA", ("F", 0.5)),
         ("T 3.15 A", ("T", 3.15)),
         ("FF 1 A", ("FF", 1.0)),
         ("M 1 A", ("M", 1.0)),
         ("TT 1 A", ("TT", 1.0)),
-        ("T 2 A 250 V", ("T", 2.0)),
-        ("T2A/250V", ("T", 2.0)),
+        ("T 2 A 250 V", ("T", 2.0, "", 250.0)),
+        ("T2A/250V", ("T", 2.0, "", 250.0)),
         ("quick 2 A", ("F", 2.0)),
         ("Time-lag 2 A", ("T", 2.0)),
     ],
 )  # fmt: skip
 def test_fuse(tmp_path, text, fuse):
     sheet = load(tmp_path, {"supply.rail_fuse": f"{text}, marked"})
-    assert sheet.amplifier.supply.rail_fuse == Fuse(*fuse, text)  # where it comes from is said beside it
+    letter, rating, *imprint = fuse
+    assert sheet.amplifier.supply.rail_fuse == Fuse(
+        letter, rating, text, *imprint
+    )  # its origin stands beside it
     assert sheet.amplifier.origin("supply.rail_fuse") is Origin.MARKED
     assert load(tmp_path, {"supply.rail_fuse": text}).amplifier.origin("supply.rail_fuse") is Origin.STATED
 
