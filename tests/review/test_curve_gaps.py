@@ -40,5 +40,5 @@ def test_the_lowest_note_that_is_played_settles_where_a_curve_must_begin(tmp_pat
 
 
 def test_a_point_beyond_the_safe_area_stays_a_stop(tmp_path):
-    curve = Curve((100.0, 200.0), (1.0, 1.0), (60.0, 60.0), "low.csv")
-    assert finding(judged(tmp_path, curve, "healthy"), "soa.loudspeaker").verdict is Verdict.STOP
+    curve = Curve((300.0, 600.0), (3.2, 3.2), (80.0, 80.0), "low.csv")
+    assert finding(judged(tmp_path, curve, "split_rail"), "soa.loudspeaker").verdict is Verdict.STOP
