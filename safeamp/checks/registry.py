@@ -15,27 +15,31 @@ CheckFunction = Callable[[Amplifier, Limits], Measure | NotApplicable | None]
 
 @dataclass(frozen=True)
 class Check:
-    """A finding's id, its step, the kind of its value, whether it is read at the bench, and how it is computed."""
+    """A finding's id, its step, the kind of its value, whether it is read at the bench, and how it is computed.
+
+    `unpowered` says that its readings are taken with the mains plug pulled, whatever fed the amplifier at the others.
+    """
 
     id: str
     step: Step
     kind: Kind
     at_bench: bool
     run: CheckFunction
+    unpowered: bool = False
 
 
 CHECKS: dict[str, Check] = {}
 
 
 def finding(
-    identity: str, step: Step, kind: Kind, *, at_bench: bool = False
+    identity: str, step: Step, kind: Kind, *, at_bench: bool = False, unpowered: bool = False
 ) -> Callable[[CheckFunction], CheckFunction]:
     """Register a check under the id of its finding."""
 
     def register(function: CheckFunction) -> CheckFunction:
         if identity in CHECKS:
             raise ValueError(f"{identity} is registered twice")
-        CHECKS[identity] = Check(identity, step, kind, at_bench, function)
+        CHECKS[identity] = Check(identity, step, kind, at_bench, function, unpowered)
         return function
 
     return register

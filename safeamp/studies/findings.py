@@ -97,6 +97,7 @@ def _remarks(check: Check, bench: Bench, trace: Trace) -> list[Remark]:
         )
     if (
         check.at_bench
+        and not check.unpowered
         and check.step.place > Step.FIRST_POWER_UP.place
         and amplifier.readings.taken_on == "limiter"
     ):

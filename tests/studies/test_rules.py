@@ -55,9 +55,9 @@ def test_readings_on_the_limiter_clear_first_power_up_only():
     answer, sound = report("healthy", {"readings.taken_on": "limiter"}), report("healthy")
     for one in answer.findings:
         later = one.step.place > Step.FIRST_POWER_UP.place
-        held = CHECKS[one.id].at_bench and later
+        held = CHECKS[one.id].at_bench and later and one.id != "touch.mains"  # read with the plug pulled
         assert one.verdict is (UNVERIFIED if held else finding(sound, one.id).verdict), one.id
-    assert {"bias.idle", "offset.output", "heat.reading", "touch.mains"} <= {
+    assert {"bias.idle", "offset.output", "heat.reading"} <= {
         one.id for one in answer.findings if one.verdict is UNVERIFIED
     }
 
