@@ -9,11 +9,12 @@ import numpy as np
 from safeamp.amplifier import Amplifier
 from safeamp.checks import operating
 from safeamp.checks.registry import finding
-from safeamp.checks.trace import miss, needed
-from safeamp.checks.words import text
-from safeamp.findings import Measure, NotApplicable, Step
+from safeamp.checks.trace import aside, miss, needed
+from safeamp.checks.words import nominal, text
+from safeamp.findings import Measure, NotApplicable, Remark, Step, Verdict
 from safeamp.limits import Limits
-from safeamp.quantities import PERCENT, RATIO, VOLTAGE, Number
+from safeamp.physics import lamp
+from safeamp.quantities import PERCENT, POWER, RATIO, VOLTAGE, Number, show
 
 
 @finding("power_up.draw", Step.FIRST_POWER_UP, RATIO, at_bench=True)
@@ -24,8 +25,13 @@ def check_draw(amplifier: Amplifier, limits: Limits) -> Measure:
     if state is None:
         miss(amplifier, "readings.limiter_state")
         return Measure(np.nan, "the state of the limiter is not given", next=following)
+    needed(amplifier, "readings.limiter_rails")  # dark is a lamp that has blown, too: the rails tell it
     return Measure(
-        limits["power_up.draw"].extra[state], f"the limiter is {state} after the first flash", next=following
+        limits["power_up.draw"].extra[state],
+        f"the limiter is {state} after the first flash",
+        next=following,
+        remarks=(*_powered_remarks(amplifier, limits), *_size_remarks(amplifier, limits)),
+        needs=("readings.limiter",) if amplifier.readings.limiter is None else (),
     )
 
 
@@ -44,6 +50,8 @@ def check_rails(amplifier: Amplifier, limits: Limits) -> Measure | NotApplicable
         value,
         f"rails {text(one, VOLTAGE)} and {text(other, VOLTAGE)} on the limiter, {text(value, PERCENT)} apart",
         next=following,
+        remarks=_powered_remarks(amplifier, limits),
+        word=_word_of_a_ratio(amplifier, limits),
         method="difference over mean",
     )
 
@@ -54,10 +62,12 @@ def check_output(amplifier: Amplifier, limits: Limits) -> Measure:
     (output,) = needed(amplifier, "readings.limiter_output")
     if operating.is_single(amplifier):
         return _midpoint(amplifier, output, limits)
+    needed(amplifier, "readings.limiter_rails")  # without a rail every output reads 0 V
     return Measure(
         np.abs(output),
         f"{text(output, VOLTAGE)} at the output on the limiter",
         next="a volt or more at the output means a stage stuck at a rail: switch off",
+        remarks=_powered_remarks(amplifier, limits),
         method="magnitude of the reading",
     )
 
@@ -73,5 +83,69 @@ def _midpoint(amplifier: Amplifier, output: Number, limits: Limits) -> Measure:
         stop=bounds.stop if not isinstance(bounds.stop, tuple) else None,
         kind=RATIO,
         next="read the midpoint and the rail behind the limiter; they must stand near two to one",
+        remarks=_powered_remarks(amplifier, limits),
+        word=_word_of_a_ratio(amplifier, limits),
         method="departure from half the rail, over half the rail",
     )
+
+
+def _read(amplifier: Amplifier) -> float:
+    """Return the larger rail on the limiter, V; nan where none was read."""
+    rails = aside(amplifier).readings.limiter_rails
+    return max(map(nominal, rails)) if rails else float("nan")
+
+
+def _expected(amplifier: Amplifier, limits: Limits) -> tuple[float, float]:
+    """Return the rail without load at the mains of today and at its highest, V.
+
+    Where the mains is not given the rail stands as it was read, and what a public supply may rise to above it: that
+    is near enough to tell a rail from none, and from one that cannot be.
+    """
+    whole = aside(amplifier)
+    rail = max(map(nominal, operating.rails_as_read(whole)))
+    today, highest = (nominal(operating.mains_factor(whole, at)) for at in ("mains.present", "mains.highest"))
+    rise = limits.default("mains.present").high
+    return rail * (1.0 if np.isnan(today) else today), rail * (rise if np.isnan(highest) else highest)
+
+
+def _hardly_any(amplifier: Amplifier, limits: Limits) -> bool:
+    """Whether so little of the rail came up that nothing was tested."""
+    least = limits["power_up.rails"].extra["nothing_below"] * _expected(amplifier, limits)[0]
+    return _read(amplifier) < least * (1.0 - 1e-9)
+
+
+def _word_of_a_ratio(amplifier: Amplifier, limits: Limits) -> Verdict | None:
+    """Return the word of a ratio of readings: near 0 V it is noise, and a stop by it as little worth as a go."""
+    return Verdict.UNVERIFIED if _hardly_any(amplifier, limits) else None
+
+
+def _powered_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
+    """Return what keeps all readings on the limiter from being judged: no rail, or one that cannot be."""
+    read, (today, highest) = _read(amplifier), _expected(amplifier, limits)
+    said = f"{show(read, VOLTAGE)} on the limiter"
+    if _hardly_any(amplifier, limits):
+        because = (
+            f"hardly any rail: nothing was tested; {said} where {show(today, VOLTAGE)} is expected without it: "
+            "look for a blown lamp or fuse, or a switch that is off"
+        )
+        return (Remark(Verdict.UNVERIFIED, because),)
+    if read > limits["power_up.rails"].extra["contradicts_above"] * highest * (1.0 + 1e-9):
+        most = f"at most {show(highest, VOLTAGE)} at the highest mains"
+        because = f"{said} contradicts supply.no_load, {most}: read both again"
+        return (Remark(Verdict.UNVERIFIED, because),)
+    return ()
+
+
+def _size_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
+    """Return what keeps the draw at caution: a lamp that lets a fault draw too much, or a limiter nobody named."""
+    limiter = amplifier.readings.limiter
+    if limiter is None:
+        because = "readings.limiter is not given: how much a fault could have drawn is not known"
+        return (Remark(Verdict.CAUTION, because),)
+    if limiter.kind != "lamp" or limiter.value is None:
+        return ()
+    most = float(lamp.worst_fault_power(rated_power=limiter.value))
+    if most <= limits["power_up.draw"].extra["fault_power_caution_above"] * (1.0 + 1e-9):
+        return ()
+    because = f"{limiter.text} lets a fault draw up to {show(most, POWER)}"
+    return (Remark(Verdict.CAUTION, f"{because}: a lamp of 60 W to 100 W limits, this one hardly does"),)
