@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 import numpy as np
+import numpy.typing as npt
 
 from safeamp.amplifier import Amplifier
 from safeamp.checks import operating
@@ -12,14 +13,16 @@ from safeamp.checks.fault_also import fault_current, rail_fuse_also, until_stopp
 from safeamp.checks.fuses import gates_of
 from safeamp.checks.programme import ROOM, programme_also
 from safeamp.checks.registry import finding
-from safeamp.checks.trace import miss, needed
-from safeamp.checks.words import nominal, text
+from safeamp.checks.trace import aside, miss, needed
+from safeamp.checks.words import level, nominal, text
 from safeamp.findings import Also, Measure, Remark, Step, Verdict
 from safeamp.limits import Limits
 from safeamp.physics import capacitor, loudspeaker
 from safeamp.physics.coil_heating import time_to_temperature
 from safeamp.physics.fuse import slowest_time
-from safeamp.quantities import CURRENT, ENERGY, POWER, RATIO, RESISTANCE, TIME, VOLTAGE, Number
+from safeamp.quantities import CURRENT, ENERGY, POWER, RATIO, RESISTANCE, TIME, VOLTAGE, Number, show
+
+Marks = npt.NDArray[np.bool_]
 
 COPPER = 0.00393
 THERMAL = (
@@ -154,16 +157,19 @@ def _stopped_in_time(
     acts_after = np.fmin(relay, fuse)
     if np.all(np.isnan(acts_after)):
         acts_after = np.where(_nothing_fitted(amplifier), np.inf, acts_after)
-    in_time = np.asarray(acts_after) < burns_after
+    leans = _leans_on_relay(relay, fuse, burns_after)
+    holds = (np.asarray(acts_after) < burns_after) & ~(
+        leans & (_whole(amplifier, fault) > _breaks_up_to(limits, "contacts_caution_above_at_highest"))
+    )
     return Measure(
         power,
         _fault_text(fault, power, acts_after, burns_after, relay),
-        go=np.where(in_time, np.inf, -np.inf),
+        go=np.where(holds & ~_trips_late(amplifier, limits), np.inf, -np.inf),
         without_stop=True,
         everywhere=True,
         remarks=(
             *_trip_remarks(amplifier, limits),
-            *_contact_remarks(amplifier, fault, relay, fuse, burns_after, limits),
+            *(_contact_remarks(amplifier, fault, limits) if np.ravel(leans)[0] else ()),
         ),
         also=(
             *also,
@@ -245,26 +251,51 @@ def _fault_text(fault: Fault, power: Number, acts: Number, burns: Number, relay:
     return f"{said}; {what} stops it after {text(acts, TIME)}, the coil reaches its limit after {text(burns, TIME)}"
 
 
+def _trips_late(amplifier: Amplifier, limits: Limits) -> Marks:
+    """Return where the relay opens only above the level of a detector that protects."""
+    trip = amplifier.protection.trip_voltage
+    if amplifier.protection.trip_delay is None or trip is None:
+        return np.asarray(False)
+    late: Marks = np.asarray(trip) > level(limits["loudspeaker.dc_fault.trip_voltage"], "go") * (1.0 + 1e-9)
+    return late
+
+
 def _trip_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
     if amplifier.protection.trip_delay is None:
         return ()
-    bound = limits["loudspeaker.dc_fault.trip_voltage"].go
     trip = amplifier.protection.trip_voltage
     if trip is None:
         return (Remark(Verdict.CAUTION, "protection.trip_voltage is not given: at what DC the relay opens"),)
-    if isinstance(bound, (int, float)) and np.any(np.asarray(trip) > bound * (1.0 + 1e-9)):
+    if np.ravel(_trips_late(amplifier, limits))[0]:
         return (Remark(Verdict.CAUTION, f"the relay opens only above {text(trip, VOLTAGE)}"),)
     return ()
 
 
-def _contact_remarks(
-    amplifier: Amplifier, fault: Fault, relay: Number, fuse: Number, burns_after: Number, limits: Limits
-) -> tuple[Remark, ...]:
-    above = limits["loudspeaker.dc_fault"].extra["contacts_caution_above"]
-    leans_on_relay = np.isfinite(nominal(relay)) and not nominal(fuse) < nominal(burns_after)
-    whole = np.asarray(fault.volts) * needed(amplifier, "loudspeaker.series")[0]
-    if not leans_on_relay or not np.any(whole > above * (1.0 + 1e-9)):
-        return ()
-    return (
-        Remark(Verdict.CAUTION, f"relay contacts on more than {above:.0f} V DC: are they rated to break it?"),
-    )
+def _leans_on_relay(relay: Number, fuse: Number, burns_after: Number) -> Marks:
+    """Return where a relay is all that acts in time."""
+    leans: Marks = np.isfinite(relay) & ~(np.asarray(fuse) < burns_after)
+    return leans
+
+
+def _whole(amplifier: Amplifier, fault: Fault) -> Number:
+    """Return the direct voltage that the contacts must break, V: that of all loudspeakers in series."""
+    whole: Number = np.asarray(fault.volts) * needed(amplifier, "loudspeaker.series")[0]
+    return whole
+
+
+def _breaks_up_to(limits: Limits, name: str) -> float:
+    """Return up to what direct voltage relay contacts are believed to break the current, V."""
+    return limits["loudspeaker.dc_fault"].extra[name] * (1.0 + 1e-9)
+
+
+def _contact_remarks(amplifier: Amplifier, fault: Fault, limits: Limits) -> tuple[Remark, ...]:
+    today, name, asks = _whole(amplifier, fault), "contacts_caution_above", "are they rated to break it?"
+    if nominal(today) > _breaks_up_to(limits, name):
+        above = show(limits["loudspeaker.dc_fault"].extra[name], VOLTAGE)
+        return (Remark(Verdict.CAUTION, f"relay contacts on more than {above} DC: {asks}"),)
+    whole = aside(amplifier)
+    highest = today / operating.mains_factor(whole) * operating.mains_factor(whole, "mains.highest")
+    if nominal(highest) > _breaks_up_to(limits, f"{name}_at_highest"):
+        said = f"relay contacts on {text(highest, VOLTAGE)} DC at the highest mains"
+        return (Remark(Verdict.CAUTION, f"{said}: {asks}"),)
+    return ()

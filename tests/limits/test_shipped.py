@@ -63,6 +63,9 @@ EXTRA = {
     ("power_up.draw", "dim"): 1,
     ("power_up.draw", "bright"): 2,
     ("power_up.draw", "rising"): 3,
+    ("power_up.draw", "fault_power_caution_above"): 75,
+    ("power_up.rails", "nothing_below"): 0.1,
+    ("power_up.rails", "contradicts_above"): 1.1,
     ("bias.idle", "class_ab_share_of_peak"): 0.1,
     ("bias.idle", "dead_zone_below"): 0.008,
     ("bias.idle", "go_times_specified"): 1.3,
@@ -81,6 +84,7 @@ EXTRA = {
     ("soa.loudspeaker", "as_built_ceiling"): 1.8,
     ("soa.loudspeaker", "as_built_mains_over_rated"): 1.05,
     ("loudspeaker.dc_fault", "contacts_caution_above"): 35,
+    ("loudspeaker.dc_fault", "contacts_caution_above_at_highest"): 38.5,
     ("touch.temperature", "guard_above"): 70,
     ("touch.temperature", "room"): 25,
 }
