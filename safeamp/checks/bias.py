@@ -32,6 +32,11 @@ def _has_resistor(amplifier: Amplifier) -> bool:
     return "stage.emitter_resistor" not in amplifier.absent
 
 
+def set_was_measured(amplifier: Amplifier) -> bool:
+    """Whether `stage.idle` is a measured value."""
+    return amplifier.stage.idle is not None and _measured(amplifier, "stage.idle")
+
+
 def bench_idle(amplifier: Amplifier) -> Number:
     """Return the idle current of each device as read at the bench, A; noted as missing when nobody read it.
 
@@ -40,7 +45,7 @@ def bench_idle(amplifier: Amplifier) -> Number:
     found, read = [], operating.read_idle(amplifier)
     if read is not None:
         found.append(operating.as_current(amplifier, read, "V"))
-    if amplifier.stage.idle is not None and _measured(amplifier, "stage.idle"):
+    if set_was_measured(amplifier):
         found.append(operating.as_current(amplifier, amplifier.stage.idle, amplifier.stage.idle_unit))
     if not found:
         miss(amplifier, "readings.idle_upper", "readings.idle_lower")
@@ -50,10 +55,13 @@ def bench_idle(amplifier: Amplifier) -> Number:
 
 def _warm_idle(amplifier: Amplifier) -> Number:
     """Return the idle current as read warm, A: one that was set and read cold says nothing of a drift."""
-    if operating.read_idle(amplifier) is None and amplifier.stage.idle_at == "cold":
+    if amplifier.stage.idle_at != "cold":
+        return bench_idle(amplifier)
+    read = operating.read_idle(amplifier)
+    if read is None:
         miss(amplifier, "readings.idle_upper", "readings.idle_lower")
         return np.nan
-    return bench_idle(amplifier)
+    return operating.as_current(amplifier, read, "V")
 
 
 def _shown(amplifier: Amplifier, current: Number) -> Number:
@@ -86,7 +94,7 @@ def check_idle(amplifier: Amplifier, limits: Limits) -> Measure:
         also=_idle_also(amplifier, idle, limits),
         kind=VOLTAGE if _has_resistor(amplifier) else CURRENT,
         next=NEXT_IDLE,
-        method="reading across one emitter resistor; the larger mean of the two sides",
+        method="reading across one emitter resistor; the larger of both sides and of a measured stage.idle",
     )
 
 

@@ -52,3 +52,12 @@ def test_of_readings_and_a_measured_idle_current_the_larger_is_judged(stated, wo
     one = idle("healthy", read | {"stage.idle": stated, "stage.idle_specified": "15 mV, manual"})
     assert one.verdict is word
     assert one.nominal == pytest.approx(0.032 if word is Verdict.STOP else 0.015)
+
+
+def test_an_idle_current_that_was_set_cold_is_no_warm_reading():
+    read = {"readings.idle_upper": ["13 mV, measured"], "readings.idle_lower": ["13 mV, measured"]}
+    changes = read | {"stage.idle": "25 mV, measured", "readings.idle_cold": "12.5 mV, measured"}
+    warm = finding(report("healthy", changes), "bias.drift")
+    assert warm.nominal == pytest.approx(2.0)
+    cold = finding(report("healthy", changes | {"stage.idle_at": "cold"}), "bias.drift")
+    assert cold.nominal == pytest.approx(13.0 / 12.5)

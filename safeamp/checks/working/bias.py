@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from safeamp.checks import operating
-from safeamp.checks.bias import bench_idle
+from safeamp.checks.bias import bench_idle, set_was_measured
 from safeamp.checks.working.paper import Paper
 from safeamp.checks.working.rails import many, resistors
 from safeamp.checks.working.register import working
@@ -13,15 +13,20 @@ from safeamp.quantities import CURRENT, VOLTAGE, Number
 NOT_READ = "nobody read it: readings.idle_upper, readings.idle_lower"
 
 
-def warm(paper: Paper) -> str:
-    """Write down the idle current read at the bench, as volts across one resistor where there is one."""
+def warm(paper: Paper, *, settled: bool = False) -> str:
+    """Write down the idle current read at the bench, as volts across one resistor where there is one.
+
+    `settled`: one that was set and read cold does not count.
+    """
     amplifier = paper.amplifier
     resistors(paper)
     bare = "stage.emitter_resistor" in amplifier.absent
     current = bench_idle(amplifier)
     if operating.read_idle(amplifier) is not None:
         volts = mean_reading(paper)
-        return volts if not bare else paper.put("I_idle", "idle current", f"{volts} / R_e", current, CURRENT)
+        if bare:
+            return paper.put("I_idle", "idle current", f"{volts} / R_e", current, CURRENT)
+        return _larger(paper, volts, settled=settled)
     if amplifier.stage.idle is None or current != current:
         return paper.taken("V_idle", "idle, read at the bench", None, VOLTAGE, NOT_READ)
     if amplifier.stage.idle_unit != "A":
@@ -31,6 +36,22 @@ def warm(paper: Paper) -> str:
         return "I_idle"
     return paper.put(
         "V_idle", "V across one emitter resistor", "I_idle * R_e", current * paper.value("R_e"), VOLTAGE
+    )
+
+
+def _larger(paper: Paper, volts: str, *, settled: bool) -> str:
+    """Write down the larger of the mean reading and a measured `stage.idle`."""
+    amplifier = paper.amplifier
+    if not set_was_measured(amplifier) or (settled and amplifier.stage.idle_at == "cold"):
+        return volts
+    if amplifier.stage.idle_unit == "A":
+        paper.given("I_set", "stage.idle", CURRENT, "current of each device")
+        own, value = "I_set * R_e", paper.value("I_set") * paper.value("R_e")
+    else:
+        own = paper.given("V_set", "stage.idle", VOLTAGE, "V across one emitter resistor")
+        value = paper.value(own)
+    return paper.put(
+        "V_idle", "the larger of both", f"max({volts}, {own})", max(paper.value(volts), value), VOLTAGE
     )
 
 
@@ -84,4 +105,4 @@ def write_balance(paper: Paper, value: Number) -> None:
 def write_drift(paper: Paper, value: Number) -> None:
     """Warm over cold."""
     paper.given("V_cold", "readings.idle_cold", VOLTAGE, "V across one resistor just after switch-on")
-    paper.put("r", "warm reading over cold reading", f"{warm(paper)} / V_cold", value)
+    paper.put("r", "warm reading over cold reading", f"{warm(paper, settled=True)} / V_cold", value)
