@@ -43,6 +43,22 @@ def test_junction_is_judged_by_its_limit(limit, word):
     assert answer("heatsink", power="100 W", air="25 degC", **CHAIN, **more)["verdict"] == word
 
 
+@pytest.mark.parametrize(
+    ("options", "added"),
+    [
+        ({"junction_limit": "150 degC"}, "--case-to-sink and --junction-to-case"),
+        ({"junction_limit": "150 degC", "junction_to_case": "9 K/W"}, "--case-to-sink"),
+        ({"junction_limit": "150 degC", "case_to_sink": "0.5 K/W"}, "--junction-to-case"),
+        ({"junction_to_case": "9 K/W"}, "--case-to-sink"),
+    ],
+)
+def test_a_junction_that_cannot_be_computed_is_asked_for_and_not_left_out(options, added):
+    plain = {"power": "20 W", "air": "40 degC", "sink_to_air": "1 K/W"}
+    fins = {"power": "20 W", "air": "40 degC", "fins": "150x75x35 mm", "thickness": "2 mm", "count": "14"}
+    for given in (plain, fins):
+        assert f"says nothing alone; add {added}" in refusal("heatsink", **given, **options)
+
+
 def test_a_measured_chain_well_below_its_limit_is_go():
     measured = {name: f"{text}, measured" for name, text in CHAIN.items()}
     found = answer("heatsink", power="60 W", air="30 degC, measured", junction_limit="200 degC", **measured)

@@ -49,6 +49,7 @@ def heatsink_answer(desk: Desk) -> QuickAnswer:
         If too little is given or options contradict one another.
     """
     by_ruler = desk.has("width")
+    _ask_device(desk)
     solved = _ask_ruler(desk) if by_ruler else _ask(desk)
     _fill(desk, by_ruler=by_ruler)
     page = Page(desk.cases())
@@ -94,6 +95,14 @@ def _add(page: Page, chain: _Chain, case: Number, junction: Number) -> None:
     page.add("power", chain.power, POWER)
     if chain.solved == "air":
         page.add("air", chain.air, TEMPERATURE)
+
+
+def _ask_device(desk: Desk) -> None:
+    """Refuse what names a junction that cannot be computed: left out unsaid, it would pass for judged."""
+    for name in ("junction_limit", "junction_to_case"):
+        lacks = [one for one in DEVICE if not desk.has(one)]
+        if desk.has(name) and lacks:
+            raise OptionsError(f"{dashed(name)} says nothing alone; add {dashed(*lacks)}")
 
 
 def _ask_ruler(desk: Desk) -> str:
