@@ -49,9 +49,16 @@ class Overview:
         return max((row.verdict for row in self.rows if row.verdict is not None), default=None)
 
     @property
+    def unread(self) -> int:
+        """How many sheets could not be read."""
+        return sum(row.verdict is None for row in self.rows)
+
+    @property
+    def verdict(self) -> Verdict | None:
+        """The word of the whole folder; None where a sheet could not be read and none is stop."""
+        return None if self.unread and self.worst is not Verdict.STOP else self.worst
+
+    @property
     def exit_status(self) -> int:
-        """5 when one is stop, else 2 when one could not be read, else that of the worst word."""
-        unread = any(row.verdict is None for row in self.rows)
-        if self.worst is None or (unread and self.worst is not Verdict.STOP):
-            return 2
-        return self.worst.exit_status
+        """That of the word of the whole folder; 2 where it has none."""
+        return 2 if self.verdict is None else self.verdict.exit_status

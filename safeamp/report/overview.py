@@ -105,11 +105,12 @@ def overview_markdown(overview: Overview) -> str:
 
 def overview_json(overview: Overview) -> str:
     """Return the table as a JSON text that ends with a line feed."""
-    worst = None if overview.worst is None else overview.worst.word
     whole = {
         "safeamp": __version__,
         "command": "overview",
-        "verdict": worst,
+        "verdict": None if overview.verdict is None else overview.verdict.word,
+        "unread": overview.unread,
+        "exit_status": overview.exit_status,
         "on_paper": overview.on_paper,
         "sheets": _rows_json(overview.rows),
         "safety": list(SAFETY),

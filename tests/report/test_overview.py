@@ -4,6 +4,8 @@ import csv
 import io
 import json
 
+import pytest
+
 from safeamp.answers import Overview, OverviewRow
 from safeamp.complaints import Complaint
 from safeamp.findings import Step, Verdict
@@ -102,3 +104,24 @@ def test_json():
     assert found["sheets"][2]["verdict"] is None
     assert found["safety"]
     assert json.loads(overview_json(Overview(ROWS[2:])))["verdict"] is None
+
+
+def _sheet(word):
+    return OverviewRow(file="x.toml", verdict=word)
+
+
+@pytest.mark.parametrize(
+    ("rows", "word", "unread", "status"),
+    [
+        ([_sheet(Verdict.CAUTION)], "caution", 0, 3),
+        ([_sheet(Verdict.CAUTION), ROWS[2]], None, 1, 2),
+        ([_sheet(Verdict.GO), ROWS[2], ROWS[2]], None, 2, 2),
+        ([_sheet(Verdict.STOP), ROWS[2]], "stop", 1, 5),
+        ([ROWS[2]], None, 1, 2),
+    ],
+)
+def test_json_says_what_the_exit_status_says(rows, word, unread, status):
+    whole = Overview(tuple(rows))
+    found = json.loads(overview_json(whole))
+    assert (found["verdict"], found["unread"], found["exit_status"]) == (word, unread, status)
+    assert whole.exit_status == status
