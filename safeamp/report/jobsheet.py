@@ -11,7 +11,7 @@ from safeamp.complaints import Complaint
 from safeamp.quantities import Origin
 from safeamp.report.cells import markdown
 from safeamp.report.html import Drawing, filled
-from safeamp.report.jobsheet_page import JobPage, job_page
+from safeamp.report.jobsheet_page import FAILED, JobPage, job_page
 from safeamp.report.layout import block, paragraph, points
 from safeamp.report.markdown import as_markdown
 from safeamp.report.page import Note, page_of
@@ -23,6 +23,7 @@ _LINE = "_" * 40
 #: Heads under which many short things stand.
 RUN_ON = frozenset(
     {
+        FAILED,
         "What it may drive",
         "On which mains",
         "In which position",

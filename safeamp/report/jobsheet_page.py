@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterator
 from dataclasses import dataclass
 
@@ -14,10 +13,9 @@ from safeamp.checks import operating
 from safeamp.findings import Finding, Step, Verdict
 from safeamp.quantities import CURRENT, POWER, RESISTANCE, TEMPERATURE, VOLTAGE, Origin, show
 from safeamp.report.page import Note
-from safeamp.report.plain_words import BRIDGED, LOOKS_AT, MEASURED, NEVER, RULES
+from safeamp.report.plain_words import BRIDGED, CARE, LOOKS_AT, MEASURED, NEVER, RULES
 
-#: A key in brackets says something only to whoever writes the sheet.
-_KEY = re.compile(r" \((?:[a-z_]+\.)+[a-z_]+\)")
+FAILED = "What is not in order"
 
 
 @dataclass(frozen=True)
@@ -34,6 +32,7 @@ def job_page(sheet: Sheet, report: Report) -> JobPage:
     """Return the customer's page of a sheet and its report."""
     amplifier = sheet.amplifier
     notes = (
+        Note(FAILED, tuple(_failed(report))),
         Note("What it may drive", tuple(_drives(amplifier, report))),
         Note("On which mains", tuple(_mains(amplifier))),
         Note("In which position", (_position(sheet),)),
@@ -170,8 +169,14 @@ def _cautions(report: Report) -> Iterator[str]:
         return
     for finding in report.findings:
         if finding.verdict is Verdict.CAUTION and not _unknown(finding):
-            said = "; ".join(finding.because) or finding.says
-            yield f"{_looks_at(finding)}: {_KEY.sub('', said)}"
+            yield f"{_looks_at(finding)}: {CARE[finding.id]}"
+
+
+def _failed(report: Report) -> Iterator[str]:
+    """Yield what stops, whichever step it belongs to: all of it is to be put right."""
+    for finding in report.findings:
+        if finding.verdict is Verdict.STOP:
+            yield _looks_at(finding)
 
 
 def _unknown(finding: Finding) -> bool:

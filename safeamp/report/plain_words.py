@@ -42,6 +42,47 @@ LOOKS_AT: Final = {
     "touch.temperature": "hot metal within reach",
 }
 
+#: What a finding that is cleared only with care means for whoever uses the amplifier, whatever the number.
+CARE: Final = {
+    "cold.devices": "less clear than usual",
+    "cold.insulation": "less than it should be",
+    "supply.fuse": "not all that its maker asks for, or its maker asks for nothing",
+    "supply.rail_to_rail": "near the most that they stand, or not known of each of them",
+    "supply.reservoir_voltage": "near the most that they stand",
+    "supply.mains": "they do not quite agree",
+    "supply.transformer": "more than is written on it, no loud music for long",
+    "touch.rails": "enough to hurt, the lid stays on",
+    "capacitor.wear": "it has aged",
+    "capacitor.cutoff": "the bass may sound thin",
+    "capacitor.voltage": "near the most that it stands, or more than that should a device fail",
+    "capacitor.ripple": "loud music ages it",
+    "capacitor.leakage": "more than usual",
+    "power_up.draw": "less clear than usual",
+    "power_up.rails": "they differ more than usual",
+    "power_up.output": "more than usual",
+    "bias.idle": "not what it should be",
+    "bias.imbalance": "they share it less evenly than they should",
+    "bias.balance": "the sides differ more than they should",
+    "bias.drift": "it moves more than usual",
+    "bias.runaway": "it may creep up in great heat, keep the amplifier cool",
+    "offset.output": "more than usual",
+    "offset.drift": "it moves more than usual",
+    "offset.midpoint": "not quite in the middle",
+    "heat.heatsink": "it gets hot, or may in warm air: leave room around it",
+    "heat.junction": "they get hot, or may in warm air: no loud music for long",
+    "heat.reading": "not quite what was computed",
+    "soa.resistive_load": "near the most that they stand, or beyond it at worst: no loud bass for long",
+    "soa.loudspeaker": "near the most that they stand, or beyond it at worst: no loud bass for long",
+    "stability.output": "a little of it, or it was not looked for",
+    "loudspeaker.label": "label and coil do not quite agree",
+    "loudspeaker.power": "the amplifier may give more than it stands: turn back when it sounds strained",
+    "loudspeaker.dc_fault": "it may burn before anything takes it off",
+    "protection.short": "the amplifier may break, never let them touch",
+    "touch.mains": "less clear than it should be",
+    "touch.voltage": "it can be felt, keep your hands off them while it plays",
+    "touch.temperature": "too hot to hold, or it may get so",
+}
+
 #: What no finding covers; common practice, no source.
 NEVER: Final = (
     "noise, hum, distortion, tone and stereo",
