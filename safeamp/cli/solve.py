@@ -71,6 +71,7 @@ def _solve(
     from safeamp.findings import Verdict
     from safeamp.reading import open_sheet
     from safeamp.reading.limits import load_limits
+    from safeamp.studies.solve import QuestionError
     from safeamp.studies.solve import solve as answer
 
     _check_ids(findings, on_paper=on_paper)
@@ -78,7 +79,10 @@ def _solve(
         rules = load_limits(limits)
         number = _number(open_sheet(path, device_folder=device_folder, limits=rules), key)
         word = Verdict.from_word(until.value)
-        return answer(number, rules, findings=findings, until=word, on_paper=on_paper)
+        try:
+            return answer(number, rules, findings=findings, until=word, on_paper=on_paper)
+        except QuestionError as trouble:
+            fail(str(trouble))
 
 
 def _check_ids(findings: tuple[str, ...], *, on_paper: bool) -> None:

@@ -8,11 +8,15 @@ from itertools import groupby
 
 from safeamp.answers import Forbidding, Interval, Solution
 from safeamp.checks import CHECKS, Check
-from safeamp.findings import Finding, Verdict
+from safeamp.findings import Finding, NotApplicable, Verdict
 from safeamp.limits import Limits, nearest
 from safeamp.studies.edges import Asked, edge_at
 from safeamp.studies.findings import Bench, find, look
 from safeamp.studies.search import Field, Movable, Trial, first_values, holds, look_closer, sharpen
+
+
+class QuestionError(ValueError):
+    """A question that has no answer; its text says why in one line."""
 
 
 def solve(
@@ -44,6 +48,8 @@ def solve(
         If there is no such finding.
     ValueError
         If `until` clears nothing.
+    QuestionError
+        If a finding asked for does not apply, or does not read the key.
     ReadingError
         If the sheet can have no value at all there.
     """
@@ -55,6 +61,7 @@ def solve(
     readable = [trial for trial in field.ordered if trial.bench is not None]
     if not readable:
         raise _refusal(field)
+    _refuse_unread(key, named, readable)
     field.checks = [
         check for check in (named or _reading(key, readable)) if not (on_paper and check.at_bench)
     ]
@@ -83,6 +90,19 @@ def _reading(key: Movable, trials: list[Trial]) -> list[Check]:
         for check in CHECKS.values()
         if any(_list_of(path) in moved for bench in seen if bench for path in look(check, bench)[1].reads)
     ]
+
+
+def _refuse_unread(key: Movable, named: list[Check], trials: list[Trial]) -> None:
+    """Refuse a finding asked for that applies at no value, or whose word no value can change."""
+    moved = _moved(trials) | {key.path}
+    for check in named:
+        seen = [look(check, trial.bench) for trial in trials if trial.bench]
+        idle = [measure for measure, _ in seen if isinstance(measure, NotApplicable)]
+        if len(idle) == len(seen):
+            raise QuestionError(f"{check.id} does not apply: {idle[0].because}")
+        # What lacks a reading may stop before it comes to the key: it says itself what to give.
+        if not any(trace.missing or not moved.isdisjoint(map(_list_of, trace.reads)) for _, trace in seen):
+            raise QuestionError(f"{check.id} does not read {key.path}")
 
 
 def _moved(trials: list[Trial]) -> set[str]:

@@ -74,6 +74,14 @@ def test_limits_of_the_user_count(tmp_path):
             ["readings.offset_warm", "--on-paper", "--finding", "offset.output"],
             "--finding offset.output is read at the bench, which --on-paper leaves out",
         ),
+        (
+            ["supply.no_load", "--finding", "capacitor.cutoff"],
+            'safeamp: capacitor.cutoff does not apply: stage.coupling is "direct"',
+        ),
+        (
+            ["readings.offset_warm", "--finding", "supply.reservoir_voltage"],
+            "safeamp: supply.reservoir_voltage does not read readings.offset_warm\n",
+        ),
         (["stage.clipped_peak"], "clipped_peak and swing_loss say the same thing twice"),
         (["supply.no_load", "--output", SHEET], "is a file that is read"),
     ],
