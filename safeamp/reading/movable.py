@@ -78,6 +78,16 @@ class Movable:
                 pass
         return plain_text(self.kind, value)
 
+    def bought(self, value: float) -> Sheet:
+        """Return the sheet with a new part of a value: printed on it, with the tolerance of what is sold so.
+
+        Raises
+        ------
+        ReadingError
+            If no amplifier has such a value.
+        """
+        return self.source.sheet({self.path: f"{plain_text(self.kind, value)}, marked"})
+
     def at(self, value: float) -> Sheet:
         """Return the sheet with another value at this key.
 

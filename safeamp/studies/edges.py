@@ -22,6 +22,8 @@ from safeamp.studies.verdict import verdict
 
 #: Significant digits tried for a rounded end, fewest first.
 DIGITS = (4, 6, 8, 12)
+#: Preferred values tried beyond an end, and what takes one on to the next of any series.
+BEYOND, NEXT = 3, 0.01
 #: Two values this far apart look different in a message.
 PLAIN = 0.01
 
@@ -36,10 +38,10 @@ class Asked:
     until: Verdict
     on_paper: bool
 
-    def judged(self, value: float) -> Report | None:
-        """Return the whole report at a value; None where a finding asked for does not hold in it."""
+    def judged(self, value: float, *, bought: bool = False) -> Report | None:
+        """Return the whole report at a value, or with a new part of it; None where a finding does not hold in it."""
         try:
-            sheet = self.key.at(value)
+            sheet = self.key.bought(value) if bought else self.key.at(value)
         except ReadingError:
             return None
         report = verdict(sheet, self.limits, on_paper=self.on_paper)
@@ -135,11 +137,19 @@ def _binding(asked: Asked, bad: Trial) -> Iterator[Finding]:
 def _preferred(
     asked: Asked, value: float, ends: tuple[float, float], *, upward: bool
 ) -> tuple[float | None, str]:
-    """Return the next value that can be bought on the safe side, judged in full, and its series."""
+    """Return the next value on the safe side that holds when a part of it is bought, and its series.
+
+    The part that is fitted may be measured; a new one has the tolerance of what is sold, which takes its low end over
+    a limit that the value itself keeps. Then the one beyond it is taken.
+    """
     found, series = next_value(asked.key, value, upward=upward)
-    if found is None or not ends[0] <= found <= ends[1] or asked.judged(found) is None:
-        return None, series
-    return found, series
+    for _ in range(BEYOND):
+        if found is None or not ends[0] <= found <= ends[1]:
+            break
+        if asked.judged(found) is not None and asked.judged(found, bought=True) is not None:
+            return found, series
+        found, _ = next_value(asked.key, found * (1.0 + NEXT if upward else 1.0 - NEXT), upward=upward)
+    return None, series
 
 
 def next_value(key: Movable, value: float, *, upward: bool) -> tuple[float | None, str]:
