@@ -46,7 +46,7 @@ def test_the_smallest_capacitance_and_the_next_that_is_made():
     edge = only(solution).smallest
     # Rounded to four digits, to the side that holds.
     assert edge.value == pytest.approx(1.244e-3, rel=1e-12)
-    assert (edge.preferred, edge.series) == (pytest.approx(1.5e-3), "E6")
+    assert (edge.preferred, edge.series) == (pytest.approx(2.2e-3), "E6")
 
 
 def test_a_count_is_a_whole_number():
