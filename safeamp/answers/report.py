@@ -47,6 +47,8 @@ class Report:
         The file as the user named it, and the SHA-256 of its bytes.
     overridden : tuple of str
         The limit entries that a file of the user changed.
+    notes : str
+        What the sheet says in words of its own.
     unassessed : mapping of str to tuple of str
         Key that this version does not use -> ids of the findings it would change.
 
@@ -70,6 +72,7 @@ class Report:
     up_to: Step | None = None
     source: str = ""
     digest: str = ""
+    notes: str = ""
     overridden: tuple[str, ...] = ()
     unassessed: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
 

@@ -10,13 +10,15 @@ from safeamp.answers import Report
 from safeamp.report.amounts import also_text, at_text, place_text
 from safeamp.report.cells import harmless
 from safeamp.report.json_ import finding_mapping
-from safeamp.report.page import Entry, page_of
+from safeamp.report.page import Entry, Page, page_of
 
+#: Whose finding it is, the same on each row: rows of several reports may stand in one table.
+ABOUT = ("title", "sheet", "sha256", "version", "scope", "verdict_for_scope")
 COLUMNS = (
     "id", "step", "reached", "verdict", "says", "shown", "nominal", "worst", "unit", "unbounded", "also",
     "limit_shown", "limit_go", "limit_stop", "limit_sense", "limit_unit", "limit_source", "limit_evidence",
     "limit_overridden", "worst_case", "at", "inputs", "needs", "next", "method", "because", "overturned_by",
-    "explanation", "to_be_read",
+    "explanation", "to_be_read", *ABOUT,
 )  # fmt: skip
 
 
@@ -26,10 +28,16 @@ def as_csv(report: Report) -> str:
     writer = csv.DictWriter(text, COLUMNS, lineterminator="\r\n")
     writer.writeheader()
     reached = {entry.step: entry.reached for entry in report.steps}
-    for entry in page_of(report).entries:
-        cells = {**_row(entry), "reached": reached[entry.finding.step]}
+    page = page_of(report)
+    about = dict(zip(ABOUT, _about(page), strict=True))
+    for entry in page.entries:
+        cells = {**_row(entry), "reached": reached[entry.finding.step], **about}
         writer.writerow({name: _cell(cell) for name, cell in cells.items()})
     return text.getvalue()
+
+
+def _about(page: Page) -> tuple[str, ...]:
+    return page.title, page.source, page.digest, page.version, page.scope, page.verdict.word
 
 
 def _row(entry: Entry) -> dict[str, Any]:

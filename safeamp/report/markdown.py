@@ -24,7 +24,8 @@ def as_markdown(report: Report, workings: Mapping[str, Working] = NO_WORKINGS) -
         lines += ["", f"## {markdown(section.head)}"]
         for entry in section.entries:
             lines += ["", *_finding(entry, workings.get(entry.finding.id))]
-    notes = [*((note.head, note.texts) for note in page.notes), ("Safety", page.safety)]
+    notes = [(note.head, note.texts) for note in (*page.notes, page.own_words) if note is not None]
+    notes += [("Safety", page.safety)]
     notes += [(page.way_on.head, page.way_on.texts)] if page.way_on else []
     for head, texts in notes:
         lines += ["", f"## {markdown(head)}", "", *(f"- {markdown(text)}" for text in texts)]

@@ -88,6 +88,7 @@ class Page:
     steps: tuple[StepLine, ...]
     sections: tuple[Section, ...]
     notes: tuple[Note, ...]
+    own_words: Note | None
     safety: tuple[str, ...]
     way_on: Note | None
     last: str
@@ -117,6 +118,7 @@ def page_of(report: Report) -> Page:
         steps=tuple(_step(entry, report) for entry in report.steps),
         sections=tuple(_sections(report)),
         notes=tuple(note for note in _notes(report) if note.texts),
+        own_words=_own_words(report),
         safety=SAFETY,
         way_on=_way_on(report),
         last=_last(report),
@@ -206,6 +208,12 @@ def _notes(report: Report) -> Iterator[Note]:
     yield Note("Assumed, because the sheet does not say", tuple(map(assumed_text, report.assumptions)))
     yield Note("Remarks", (*report.remarks, *unassessed))
     yield Note("Limits changed by your own file", report.overridden)
+
+
+def _own_words(report: Report) -> Note | None:
+    """Return what the sheet notes, line by line; None where it notes nothing."""
+    lines = tuple(line.strip() for line in report.notes.splitlines() if line.strip())
+    return Note("Notes", lines) if lines else None
 
 
 def assumed_text(assumption: Assumption) -> str:

@@ -57,6 +57,7 @@ def verdict(
         up_to=up_to,
         source=sheet.source,
         digest=sheet.digest,
+        notes=sheet.amplifier.notes,
         overridden=tuple(limit.id for limit in limits.overridden),
         unassessed=sheet.unassessed,
     )

@@ -8,9 +8,11 @@ from dataclasses import replace
 import pytest
 from markdown_it import MarkdownIt
 
+from safeamp._version import __version__
 from safeamp.quantities import show
 from safeamp.report.amounts import amount, number_text, shown_kind
-from safeamp.report.csv_ import COLUMNS, as_csv
+from safeamp.report.csv_ import ABOUT, COLUMNS, as_csv
+from safeamp.report.html import as_html
 from safeamp.report.json_ import as_mapping
 from safeamp.report.markdown import as_markdown
 from safeamp.report.page import page_of
@@ -116,7 +118,55 @@ def test_csv_has_a_column_for_each_key_of_a_finding_in_json():
     found = as_mapping(report_of(SAFE_AREA))["findings"][0]
     flat = {*found} - {"value", "limit"}
     flat |= {*found["value"]} | {f"limit_{key}" for key in found["limit"]} | {"unbounded"}
-    assert set(COLUMNS) == flat | {"reached", "shown", "limit_shown"}
+    assert set(COLUMNS) == flat | {"reached", "shown", "limit_shown"} | set(ABOUT)
+
+
+def test_each_row_of_csv_says_what_it_is_about():
+    # Whoever joins the rows of several channels and dates must still tell them apart.
+    report = replace(report_of(DEVICES, OFFSET, SAFE_AREA), source="amp.toml", digest="ab12")
+    found = rows(report)
+    about = {name: cell for name, cell in found[0].items() if name in ABOUT}
+    assert about == {
+        "title": report.title,
+        "sheet": "amp.toml",
+        "sha256": "ab12",
+        "version": __version__,
+        "scope": page_of(report).scope,
+        "verdict_for_scope": "stop",
+    }
+    assert all({name: row[name] for name in ABOUT} == about for row in found)
+    assert COLUMNS[-len(ABOUT) :] == ABOUT  # who reads by place finds the others where they were
+
+
+def test_a_hostile_title_is_no_formula_in_csv():
+    [row] = rows(replace(report_of(DEVICES), title="=1+1", source="@a.toml"))
+    assert (row["title"], row["sheet"]) == ("'=1+1", "'@a.toml")
+
+
+NOTES = "Knob loose.\n\n<script>alert(1)</script> **x** \x1b[31m"
+
+
+def test_the_notes_of_the_sheet_stand_in_page_and_markdown_as_they_are():
+    report = replace(report_of(DEVICES), notes=NOTES)
+    text, page = as_markdown(report), as_html(report, {})
+    assert "\n## Notes\n\n- Knob loose.\n- \\<script\\>" in text
+    assert text.index("## Notes") > text.index("cold.devices")
+    assert "<h2>Notes</h2>\n<ul>\n<li>Knob loose.</li>\n<li>&lt;script&gt;alert(1)" in page
+    for found in (MarkdownIt("commonmark").render(text), page):
+        assert "<script>alert" not in found
+        assert "\x1b" not in found
+
+
+@pytest.mark.parametrize("notes", ["", " \n\t\n"])
+def test_a_sheet_without_notes_has_no_head_for_them(notes):
+    report = replace(report_of(DEVICES), notes=notes)
+    assert "Notes" not in as_markdown(report)
+    assert "<h2>Notes</h2>" not in as_html(report, {})
+
+
+def test_the_notes_of_a_sheet_are_those_of_its_report():
+    assert sheets.report("healthy", {"notes": "Knob loose."}).notes == "Knob loose."
+    assert sheets.report("healthy").notes == ""
 
 
 def test_csv_says_what_is_not_known_and_what_is_not_reached():
