@@ -137,15 +137,21 @@ def _powered_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]
 
 
 def _size_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
-    """Return what keeps the draw at caution: a lamp that lets a fault draw too much, or a limiter nobody named."""
+    """Return what keeps the draw at caution: a limiter that lets a fault draw too much, or one that nobody named."""
     limiter = amplifier.readings.limiter
     if limiter is None:
         because = "readings.limiter is not given: how much a fault could have drawn is not known"
         return (Remark(Verdict.CAUTION, because),)
-    if limiter.kind != "lamp" or limiter.value is None:
-        return ()
-    most = float(lamp.worst_fault_power(rated_power=limiter.value))
+    if limiter.value is None:
+        return ()  # a bench supply limits the current by itself
+    if limiter.kind == "lamp":
+        most, where = float(lamp.worst_fault_power(rated_power=limiter.value)), ""
+        follows = ": a lamp of 60 W to 100 W limits, this one hardly does"
+    else:
+        rail = _expected(amplifier, limits)[0]
+        most, where = float(lamp.matched_fault_power(voltage=rail, resistance=limiter.value)), " in a rail"
+        follows = ", in the mains still more: take more ohms, or a lamp"
     if most <= limits["power_up.draw"].extra["fault_power_caution_above"] * (1.0 + 1e-9):
         return ()
-    because = f"{limiter.text} lets a fault draw up to {show(most, POWER)}"
-    return (Remark(Verdict.CAUTION, f"{because}: a lamp of 60 W to 100 W limits, this one hardly does"),)
+    because = f"{limiter.text}{where} lets a fault draw up to {show(most, POWER)}{follows}"
+    return (Remark(Verdict.CAUTION, because),)

@@ -109,6 +109,21 @@ def test_a_lamp_that_limits_nothing_guards_nothing(limiter, word):
     assert one.verdict is word
 
 
+# In a rail of 39.5 V a fault draws at most 39.5 V squared over four times the resistor; in the mains still more.
+@pytest.mark.parametrize(
+    ("limiter", "word"), [("22 ohm", GO), ("5.3 ohm", GO), ("5.1 ohm", CAUTION), ("1 ohm", CAUTION)]
+)
+def test_a_resistor_that_limits_nothing_guards_nothing(limiter, word):
+    assert finding(report(SPLIT, {LIMITER: limiter}), "power_up.draw").verdict is word
+
+
+def test_the_most_that_a_fault_can_draw_through_a_resistor_is_said():
+    one = finding(report(SPLIT, {LIMITER: "1 ohm"}), "power_up.draw")
+    assert one.because == (
+        "1 ohm in a rail lets a fault draw up to 390 W, in the mains still more: take more ohms, or a lamp",
+    )
+
+
 def test_the_most_that_a_fault_can_draw_is_said():
     one = finding(report(SPLIT, {LIMITER: "2000 W lamp"}), "power_up.draw")
     assert one.because == (
