@@ -67,7 +67,9 @@ def edge_at(asked: Asked, inside: Sequence[Trial], outside: Sequence[Trial]) -> 
     RuntimeError
         If no value holds when its sheet is judged in full: none must be handed on.
     """
-    bad, far = outside[0], inside[-1].value
+    # Among many values at once the last digits differ: the one beyond must fail alone too.
+    bad = next((trial for trial in outside if asked.judged(trial.value) is None), outside[0])
+    far = inside[-1].value
     upward = bad.value < far
     value, report = _rounded(asked, inside, bad.value)
     ends = (min(value, far), max(value, far))
