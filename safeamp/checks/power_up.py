@@ -13,7 +13,7 @@ from safeamp.checks.trace import aside, miss, needed
 from safeamp.checks.words import nominal, text
 from safeamp.findings import Measure, NotApplicable, Remark, Step, Verdict
 from safeamp.limits import Limits
-from safeamp.physics import lamp
+from safeamp.physics import lamp, power_up
 from safeamp.quantities import PERCENT, POWER, RATIO, VOLTAGE, Number, show
 
 
@@ -31,7 +31,7 @@ def check_draw(amplifier: Amplifier, limits: Limits) -> Measure:
         f"the limiter is {state} after the first flash",
         next=following,
         remarks=(*_powered_remarks(amplifier, limits), *_size_remarks(amplifier, limits)),
-        needs=("readings.limiter",) if amplifier.readings.limiter is None else (),
+        needs=_missing_for_the_size(amplifier),
     )
 
 
@@ -137,21 +137,45 @@ def _powered_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]
 
 
 def _size_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]:
-    """Return what keeps the draw at caution: a limiter that lets a fault draw too much, or one that nobody named."""
-    limiter = amplifier.readings.limiter
-    if limiter is None:
-        because = "readings.limiter is not given: how much a fault could have drawn is not known"
+    """Return what keeps the draw at caution: a limiter that lets a fault draw too much, or nobody knows how much."""
+    limiter, most = amplifier.readings.limiter, _most_of_a_fault(amplifier, limits)
+    if limiter is None or np.isnan(most):
+        missing = _missing_for_the_size(amplifier)[0]
+        because = f"{missing} is not given: how much a fault could have drawn is not known"
         return (Remark(Verdict.CAUTION, because),)
-    if limiter.value is None:
-        return ()  # a bench supply limits the current by itself
-    if limiter.kind == "lamp":
-        most, where = float(lamp.worst_fault_power(rated_power=limiter.value)), ""
-        follows = ": a lamp of 60 W to 100 W limits, this one hardly does"
-    else:
-        rail = _expected(amplifier, limits)[0]
-        most, where = float(lamp.matched_fault_power(voltage=rail, resistance=limiter.value)), " in a rail"
-        follows = ", in the mains still more: take more ohms, or a lamp"
     if most <= limits["power_up.draw"].extra["fault_power_caution_above"] * (1.0 + 1e-9):
         return ()
-    because = f"{limiter.text}{where} lets a fault draw up to {show(most, POWER)}{follows}"
+    better = "a lamp of 60 W to 100 W" if limiter.kind == "lamp" else "a resistor of more ohms, or a lamp,"
+    because = (
+        f"{limiter.text} lets a fault draw up to {show(most, POWER)}: {better} limits, this one hardly does"
+    )
     return (Remark(Verdict.CAUTION, because),)
+
+
+def _most_of_a_fault(amplifier: Amplifier, limits: Limits) -> float:
+    """Return the most heat, W, that a fault can draw through the limiter; nan where that is not known.
+
+    A lamp and a resistor stand in the mains, a resistor before rails that the mains does not set in those; a bench
+    supply limits by itself.
+    """
+    limiter = amplifier.readings.limiter
+    if limiter is None:
+        return float("nan")
+    if limiter.value is None:
+        return 0.0
+    if limiter.kind == "lamp":
+        return float(lamp.worst_fault_power(rated_power=limiter.value))
+    mains = aside(amplifier).mains.nominal
+    volts = _expected(amplifier, limits)[0] if operating.is_fixed(aside(amplifier)) else mains
+    if volts is None:
+        return float("nan")
+    return float(power_up.most_through_resistor(mains=nominal(volts), resistance=limiter.value))
+
+
+def _missing_for_the_size(amplifier: Amplifier) -> tuple[str, ...]:
+    """Return which key would tell how much a fault can draw."""
+    limiter = amplifier.readings.limiter
+    if limiter is None:
+        return ("readings.limiter",)
+    in_mains = limiter.kind == "resistor" and not operating.is_fixed(aside(amplifier))
+    return ("mains.nominal",) if in_mains and aside(amplifier).mains.nominal is None else ()

@@ -1,4 +1,4 @@
-"""Series lamp or series resistor for the first power-up."""
+"""Series lamp for the first power-up."""
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -130,30 +130,6 @@ def worst_fault_power(*, rated_power: ArrayLike) -> Array:
     share = EXPONENT / (1 + EXPONENT)
     most: float = (1 - share) * share**EXPONENT
     return array(rated_power) * most
-
-
-def matched_fault_power(*, voltage: ArrayLike, resistance: ArrayLike) -> Array:
-    """Return the most heat, W, that a resistive fault can draw through a series resistor.
-
-    Parameters
-    ----------
-    voltage : array_like
-        V (>= 0), across resistor and fault together.
-    resistance : array_like
-        ohm, > 0, of the resistor.
-
-    Raises
-    ------
-    ValueError
-        If a value is outside its range.
-
-    References
-    ----------
-    Derived: a fault of the same resistance takes half the voltage, V^2 / (4 R).
-    """
-    non_negative(voltage=voltage)
-    positive(resistance=resistance)
-    return array(voltage) ** 2 / (4 * array(resistance))
 
 
 def voltage_behind_lamp(

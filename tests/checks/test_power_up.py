@@ -109,19 +109,32 @@ def test_a_lamp_that_limits_nothing_guards_nothing(limiter, word):
     assert one.verdict is word
 
 
-# In a rail of 39.5 V a fault draws at most 39.5 V squared over four times the resistor; in the mains still more.
+# Through a resistor in the mains a fault draws at most 230 V squared over four times the resistor.
 @pytest.mark.parametrize(
-    ("limiter", "word"), [("22 ohm", GO), ("5.3 ohm", GO), ("5.1 ohm", CAUTION), ("1 ohm", CAUTION)]
+    ("limiter", "word"), [("330 ohm", GO), ("177 ohm", GO), ("176 ohm", CAUTION), ("1 ohm", CAUTION)]
 )
 def test_a_resistor_that_limits_nothing_guards_nothing(limiter, word):
     assert finding(report(SPLIT, {LIMITER: limiter}), "power_up.draw").verdict is word
 
 
 def test_the_most_that_a_fault_can_draw_through_a_resistor_is_said():
-    one = finding(report(SPLIT, {LIMITER: "1 ohm"}), "power_up.draw")
+    one = finding(report(SPLIT, {LIMITER: "22 ohm"}), "power_up.draw")
     assert one.because == (
-        "1 ohm in a rail lets a fault draw up to 390 W, in the mains still more: take more ohms, or a lamp",
+        "22 ohm lets a fault draw up to 601 W: a resistor of more ohms, or a lamp, limits, this one hardly does",
     )
+
+
+def test_what_a_resistor_lets_through_at_an_unknown_mains_is_not_known():
+    unknown = {f"mains.{key}": GONE for key in ("actual", "nominal", "highest")}
+    one = finding(report(SPLIT, unknown | {LIMITER: "330 ohm"}), "power_up.draw")
+    assert (one.verdict, one.needs) == (CAUTION, ("mains.nominal",))
+
+
+@pytest.mark.parametrize(("limiter", "word"), [("5.3 ohm", GO), ("5.1 ohm", CAUTION)])
+def test_where_no_mains_sets_the_rails_the_resistor_stands_in_them(limiter, word):
+    fixed = {"supply.source": "battery", "supply.full_load": GONE, "supply.at_mains": GONE, "mains": GONE}
+    one = finding(report(SPLIT, fixed | {LIMITER: limiter}), "power_up.draw")
+    assert one.verdict is word
 
 
 def test_the_most_that_a_fault_can_draw_is_said():

@@ -274,7 +274,6 @@ FORMULAS = (
     }),
     Formula(lamp, "lamp_current", "A", {"voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, "")}),
     Formula(lamp, "worst_fault_power", "W", {"rated_power": (60.0, P, "W")}),
-    Formula(lamp, "matched_fault_power", "W", {"voltage": (39.5, N, "V"), "resistance": (22.0, P, "ohm")}),
     Formula(lamp, "power_share", "", {"voltage": (100.0, N, "V"), **LAMP, "cold_ratio": (12.0, F, "")}),
     Formula(lamp, "voltage_behind_lamp", None, {
         "mains": (230.0, P, "V"), "resistance": (500.0, N, "ohm"), **LAMP, "cold_ratio": (12.0, F, ""),

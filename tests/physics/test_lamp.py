@@ -58,14 +58,6 @@ def test_worst_fault_is_the_maximum_over_all_resistances():
     assert -worst.fun == pytest.approx(lamp.worst_fault_power(rated_power=60), rel=1e-6)
 
 
-def test_worst_fault_through_a_resistor_is_the_matched_one():
-    # Derived: 39.5 V through 22 ohm into 22 ohm: 19.75 V squared over 22 ohm.
-    found = lamp.matched_fault_power(voltage=39.5, resistance=22)
-    assert found == pytest.approx(19.75**2 / 22)
-    faults = np.linspace(1.0, 200.0, 2000)
-    assert np.max((39.5 / (22 + faults)) ** 2 * faults) == pytest.approx(found, rel=1e-4)
-
-
 @pytest.mark.parametrize("ohms", [1.0, 50.0, 300.0, 1000.0, 20000.0])
 def test_lamp_and_load_carry_one_current(ohms):
     left = lamp.voltage_behind_lamp(mains=230, resistance=ohms, **LAMP)
