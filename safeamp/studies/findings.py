@@ -21,6 +21,12 @@ from safeamp.studies.corners import Design
 #: Keys without which no rail is known at the mains of today.
 MAINS = frozenset({"mains.actual", "mains.highest", "supply.at_mains"})
 
+#: Origins of a value that nobody read at the bench.
+NOT_READ = (Origin.GUESS, Origin.MANUAL, Origin.DATA_SHEET)
+
+#: What stands beside the readings and is printed on a part.
+NO_READING = ("readings.limiter", "readings.capacitor_leakage_resistor")
+
 #: In which unit a value was written: no key of the sheet, and said by the unit of the value itself.
 UNITS = ("stage.idle_unit", "stage.idle_specified_unit")
 
@@ -85,6 +91,8 @@ def _remarks(check: Check, bench: Bench, trace: Trace) -> list[Remark]:
     if invented and not bench.demo:
         keys = ", ".join(dict.fromkeys(written_key(path) for path in invented[:3]))
         found.append(Remark(Verdict.UNVERIFIED, f"example values are still in the sheet: {keys}"))
+    if check.at_bench:
+        found += _not_read(amplifier, trace)
     for key, ids in bench.sheet.unassessed.items():
         if check.id in ids:
             found.append(Remark(Verdict.UNVERIFIED, f"{key} is not assessed by this version"))
@@ -105,6 +113,17 @@ def _remarks(check: Check, bench: Bench, trace: Trace) -> list[Remark]:
             Remark(Verdict.UNVERIFIED, "the readings were taken on the limiter: read again on full mains")
         )
     return found
+
+
+def _not_read(amplifier: Amplifier, trace: Trace) -> list[Remark]:
+    """Return which readings of a bench finding nobody read: a guess is none, nor is what a manual or a print says."""
+    keys = [
+        written_key(path)
+        for path in trace.reads
+        if path.startswith("readings.") and path not in NO_READING and amplifier.origin(path) in NOT_READ
+    ]
+    said = ", ".join(dict.fromkeys(keys))
+    return [Remark(Verdict.UNVERIFIED, f"nobody read it at the bench: {said}")] if keys else []
 
 
 def _with_items(sheet: Sheet, reads: Iterable[str]) -> list[str]:
