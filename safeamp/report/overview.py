@@ -16,7 +16,7 @@ from safeamp.report.cells import harmless, markdown, table_row
 from safeamp.report.layout import clean, paragraph
 from safeamp.report.safety import SAFETY
 
-HEADS = ("file", "title", "verdict", "first step not cleared", "decided by")
+HEADS = ("file", "title", "verdict", "for", "first step not cleared", "decided by")
 #: Widest column of names; a longer one is shortened, its start says which it is.
 NAME = 24
 NOT_READ = "not read"
@@ -31,7 +31,7 @@ def render_overview(overview: Overview, *, width: int = 80) -> str:
     lines += [head, "-" * min(width, len(head))]
     for row in overview.rows:
         lines.append(f"{_short(row.file, names):<{names}}  {_word(row):<10}  {_blocked(row)}".rstrip())
-        for text in (row.title, _details(row)):
+        for text in (row.title, f"for {row.scope}" if row.scope else "", _details(row)):
             lines += paragraph(text, width, "    ") if text else []
     return "\n".join([*lines, "", *paragraph(_counts(overview), width)]) + "\n"
 
@@ -79,7 +79,7 @@ def _counts(overview: Overview) -> str:
 
 def _cells(row: OverviewRow) -> tuple[str, ...]:
     details = complaint_text(row) or ", ".join(row.deciding)
-    return (row.file, row.title, _word(row), _blocked(row), details)
+    return (row.file, row.title, _word(row), row.scope or "", _blocked(row), details)
 
 
 def overview_csv(overview: Overview) -> str:

@@ -12,7 +12,7 @@ from safeamp.findings import Step, Verdict
 from safeamp.report.overview import overview_csv, overview_json, overview_markdown, render_overview
 
 ROWS = (
-    OverviewRow(file="a.toml", title="Kitchen radio", verdict=Verdict.GO),
+    OverviewRow(file="a.toml", title="Kitchen radio", scope="4 ohm loudspeaker", verdict=Verdict.GO),
     OverviewRow(
         file="b.toml",
         title="=HYPERLINK(1)",
@@ -38,8 +38,10 @@ def test_text():
         "------------------------------------------",
         "a.toml  go          none",
         "    Kitchen radio",
+        "    for 4 ohm loudspeaker",
         "b.toml  stop        load test",
         "    =HYPERLINK(1)",
+        "    for 8 ohm loudspeaker",
         "    decided by: soa.resistive_load, loudspeaker.power",
         "c.toml  not read    nothing computed",
         "    line 7 supply.no_load: 35 has no | unit (and 2 more)",
@@ -66,16 +68,18 @@ def test_on_paper_clears_no_power():
 
 def test_csv_is_read_back_and_computes_nothing():
     rows = list(csv.reader(io.StringIO(overview_csv(WHOLE))))
-    assert rows[0] == ["file", "title", "verdict", "first step not cleared", "decided by"]
+    assert rows[0] == ["file", "title", "verdict", "for", "first step not cleared", "decided by"]
     assert rows[2] == [
         "b.toml",
         "'=HYPERLINK(1)",
         "stop",
+        "8 ohm loudspeaker",
         "load test",
         "soa.resistive_load, loudspeaker.power",
     ]
     assert rows[3][2:] == [
         "not read",
+        "",
         "nothing computed",
         "line 7 supply.no_load: 35 has no | unit (and 2 more)",
     ]
@@ -83,7 +87,7 @@ def test_csv_is_read_back_and_computes_nothing():
 
 def test_markdown_escapes_what_would_break_the_table():
     lines = overview_markdown(WHOLE).splitlines()
-    assert lines[1] == "| --- | --- | --- | --- | --- |"
+    assert lines[1] == "| --- | --- | --- | --- | --- | --- |"
     assert "35 has no \\| unit" in lines[4]
     assert "soa.resistive\\_load" in lines[3]
 
