@@ -126,7 +126,7 @@ def _powered_remarks(amplifier: Amplifier, limits: Limits) -> tuple[Remark, ...]
     if _hardly_any(amplifier, limits):
         because = (
             f"hardly any rail: nothing was tested; {said} where {show(today, VOLTAGE)} is expected without it: "
-            "look for a blown lamp or fuse, or a switch that is off"
+            "look for a blown lamp or fuse, a switch that is off, or too small a lamp"
         )
         return (Remark(Verdict.UNVERIFIED, because),)
     if read > limits["power_up.rails"].extra["contradicts_above"] * highest * (1.0 + 1e-9):

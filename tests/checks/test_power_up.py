@@ -54,7 +54,7 @@ def test_it_is_said_what_was_read_and_where_to_look():
     one = finding(report(SPLIT, {RAILS: both(0.4)}), "power_up.draw")
     assert one.because[0] == (
         "hardly any rail: nothing was tested; 400 mV on the limiter where 39.5 V is expected without it: "
-        "look for a blown lamp or fuse, or a switch that is off"
+        "look for a blown lamp or fuse, a switch that is off, or too small a lamp"
     )
 
 
