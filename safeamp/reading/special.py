@@ -9,7 +9,6 @@ from typing import Any
 
 from safeamp.amplifier import Curve, Fuse, Limiter
 from safeamp.quantities import CURRENT, POWER, RESISTANCE, Kind, Origin, QuantityError, Reading, read
-from safeamp.reading.curves import read_curve
 from safeamp.reading.draft import Draft
 
 #: Letters of IEC 60127 and the words that the standard gives them.
@@ -82,6 +81,8 @@ def limiter(text: str, _: Draft) -> tuple[Limiter, Origin]:
 
 def curve(text: str, draft: Draft) -> tuple[Curve | None, Origin]:
     """Return the curve of a file, relative to the sheet, that must be there."""
+    from safeamp.reading.curves import read_curve  # few sheets have one, and every start would wait for it
+
     try:
         there = (Path(draft.folder) / text).is_file()
     except (OSError, ValueError):
