@@ -42,7 +42,8 @@ DRIVER = {"dc_resistance": "6 ohm", "force_factor": "7.5 N/A", "compliance": "1.
 @pytest.mark.parametrize(
     ("share", "word", "status"),
     [
-        ("10 %", "stop", 5), ("2.9 %", "caution", 3), ("1.4 %", "go", 0), ("2.9..3.2 %", "stop", 5), ("2.6..3.2 %", "caution", 3),
+        ("10 %", "stop", 5), ("2.9 %", "caution", 3), ("1.4 %", "go", 0),
+        ("2.9..3.2 %", "stop", 5), ("2.6..3.2 %", "caution", 3),
         ("1.3..1.5 %", "go", 0), ("0.01 %", "go", 0), ("1 %, example", "unverified", 4),
     ],
 )  # fmt: skip
