@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, field
-from itertools import pairwise
+from itertools import groupby, pairwise
 from typing import Any, Protocol
 
 import numpy as np
@@ -30,6 +30,13 @@ FLAT = 1e-9
 LINEAR = (TEMPERATURE, ANGLE, LEVEL, PERCENT)
 #: How often a window or a gap that may lie between two trial values is looked for.
 ROUNDS = 3
+#: The same where a word that holds turns into another one that does: until the two are close.
+TURNS = 8
+#: Trial values inside each interval that holds, and in each that does not: in equal steps, and in equal ratios too
+#: where it is wide.
+INSIDE, OUTSIDE = (200, 100), (100, 50)
+#: How far from what the sheet has it is looked closely, relative to it.
+AROUND = (1e-4, 1e-3, 3e-3, 0.01, 0.03)
 
 
 class Movable(Protocol):
@@ -127,7 +134,7 @@ class Field:
 
     def judge(self, trials: Iterable[Trial], checks: Sequence[Check] | None = None) -> None:
         """Find the words that trials still lack, all corners of all of them in one pass a finding."""
-        read = [trial for trial in trials if trial.bench is not None]
+        read = sorted((trial for trial in trials if trial.bench is not None), key=lambda trial: trial.value)
         for check in self.checks if checks is None else checks:
             new = [trial for trial in read if check.id not in trial.words]
             benches = [trial.bench for trial in new if trial.bench is not None]
@@ -173,12 +180,91 @@ def look_closer(field: Field) -> None:
     """Look between trial values where a window or a gap may have been stepped over."""
     if field.key.whole:
         return
+    field.look(value for pair in _corner_changes(field.ordered) for value in between(*pair))
     for _ in range(ROUNDS):
         found = list(_hidden(field.ordered))
         values = [value for low, high in found if _apart(low, high) for value in between(low, high)]
         if not values:
             return
         field.look(values)
+
+
+def _look_at_turns(field: Field) -> None:
+    """Look where a word that holds turns into another one that does, until the two are close."""
+    for _ in range(TURNS):
+        values = [value for pair in _turns(field.ordered) if _wide(pair, 0.0) for value in _inside(pair)]
+        if not values:
+            return
+        field.look(values)
+
+
+def _corner_changes(trials: list[Trial]) -> Iterable[tuple[float, float]]:
+    """Return the neighbours that both hold, between which another case becomes the worst of a finding."""
+    for one, other in pairwise(trials):
+        if (
+            one.holds
+            and other.holds
+            and any(other.words[id].worst != word.worst for id, word in one.words.items())
+        ):
+            yield one.value, other.value
+
+
+def _turns(trials: list[Trial]) -> Iterable[tuple[Trial, Trial]]:
+    """Return the neighbours that both hold, by other words: a third word, which does not, may lie between."""
+    for one, other in pairwise(trials):
+        if (
+            one.holds
+            and other.holds
+            and any(other.words[id].verdict is not word.verdict for id, word in one.words.items())
+        ):
+            yield one, other
+
+
+def look_everywhere(field: Field) -> None:
+    """Find every hole wider than a two hundredth of its interval: by the word at so many values inside it."""
+    if field.key.whole:
+        return
+    for _ in range(ROUNDS):
+        known = len(list(_ends(field.ordered)))
+        field.look(_around(field.key))
+        for good, run in _runs(field.ordered):
+            (_look_inside if good else _look_outside)(field, run)
+        _look_at_turns(field)
+        sharpen(field)
+        if len(list(_ends(field.ordered))) == known:
+            return
+
+
+def _around(key: Movable) -> list[float]:
+    low, high = key.span
+    near = [key.now * (1.0 + apart * side) for apart in AROUND for side in (-1, 1)] if key.now else []
+    return [value for value in near if low <= value <= high]
+
+
+def _runs(trials: list[Trial]) -> Iterable[tuple[bool, list[Trial]]]:
+    """Return the runs of trials that the sheet can have, and whether all of a run hold or none does."""
+    for (good, readable), group in groupby(trials, key=lambda trial: (trial.holds, trial.bench is not None)):
+        run = list(group)
+        if readable and len(run) > 1:
+            yield good, run
+
+
+def _crowded(run: list[Trial], steps: int, ratios: int) -> list[float]:
+    low, high = run[0].value, run[-1].value
+    even = [float(value) for value in np.linspace(low, high, steps + 2)[1:-1]]
+    return even + (between(low, high, count=ratios) if low > 0 and high > 2 * low else [])
+
+
+def _look_inside(field: Field, run: list[Trial]) -> None:
+    field.judge([*run, *field.read(_crowded(run, *INSIDE))])
+
+
+def _look_outside(field: Field, run: list[Trial]) -> None:
+    """Look for values that hold where none does: first by what fails most often, then by the rest where that holds."""
+    new = field.read(_crowded(run, *OUTSIDE))
+    often = {check.id: sum(check.id in trial.failing for trial in run) for check in field.checks}
+    for check in sorted(field.checks, key=lambda check: -often[check.id]):
+        field.judge([trial for trial in new if trial.holds], [check])
 
 
 def _hidden(trials: list[Trial]) -> Iterable[tuple[float, float]]:

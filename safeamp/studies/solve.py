@@ -12,7 +12,16 @@ from safeamp.findings import Finding, NotApplicable, Verdict
 from safeamp.limits import Limits, nearest
 from safeamp.studies.edges import Asked, edge_at
 from safeamp.studies.findings import Bench, find, look
-from safeamp.studies.search import Field, Movable, Trial, first_values, holds, look_closer, sharpen
+from safeamp.studies.search import (
+    Field,
+    Movable,
+    Trial,
+    first_values,
+    holds,
+    look_closer,
+    look_everywhere,
+    sharpen,
+)
 
 
 class QuestionError(ValueError):
@@ -144,6 +153,7 @@ def _answer(field: Field, *, on_paper: bool) -> Solution:
     if not never:
         look_closer(field)
         sharpen(field)
+        look_everywhere(field)
     now = None if key.now is None else field.trials.get(key.now)
     return replace(
         solution,
@@ -169,9 +179,20 @@ def _intervals(field: Field, *, on_paper: bool) -> Iterator[Interval]:
         place += len(run)
         if good:
             yield Interval(
-                edge_at(asked, run, before) if before else None,
-                edge_at(asked, run[::-1], after) if after else None,
+                edge_at(asked, run, _failing_alone(field, before)) if before else None,
+                edge_at(asked, run[::-1], _failing_alone(field, after)) if after else None,
             )
+
+
+def _failing_alone(field: Field, outside: list[Trial]) -> list[Trial]:
+    """Return the trials beyond an end without the first ones that rounding alone keeps from holding."""
+    checks = {check.id: check for check in field.checks}
+    for place, trial in enumerate(outside):
+        if trial.refused or any(
+            _finding(checks[id], trial).verdict > field.until for id in trial.failing if id in checks
+        ):
+            return outside[place:]
+    return outside
 
 
 def _forbidden(field: Field) -> tuple[Forbidding, ...]:

@@ -24,8 +24,8 @@ from safeamp.studies.findings import Bench, again, find, look
 
 #: Rows of one pass: enough to make calls rare, few enough to stay in a few hundred megabytes.
 ROWS = 20_000
-#: Every how many sheets one is looked at by itself.
-STRIDE = 4
+#: Every how many sheets one is looked at by itself, where they are few; of many, so many at the least.
+STRIDE, ALONE = 4, 16
 #: What a measure has for each case.
 LEVELS = ("value", "go", "stop", "unknown")
 
@@ -36,11 +36,13 @@ Seen = tuple[Measure | NotApplicable | None, Trace]
 class Word:
     """The word of a finding, None where it does not apply, and how far beyond its levels it is.
 
-    `excess` is relative to the level, negative within; infinite where no number says how far.
+    `excess` is relative to the level, negative within; infinite where no number says how far. `worst` is the place of
+    the worst case, -1 where cases were not judged.
     """
 
     verdict: Verdict | None
     excess: float = np.inf
+    worst: int = -1
 
 
 @dataclass(frozen=True, eq=False)
@@ -92,7 +94,8 @@ def _looks(check: Check, benches: Sequence[Bench]) -> list[Seen]:
     their numbers come from the pass over all corners.
     """
     seen: dict[int, Seen] = {}
-    for place in {*range(0, len(benches), STRIDE), len(benches) - 1} if benches else ():
+    stride = max(STRIDE, len(benches) // ALONE)
+    for place in {*range(0, len(benches), stride), len(benches) - 1} if benches else ():
         seen[place] = look(check, benches[place])
     for low, high in pairwise(sorted(seen)):
         _fill(check, benches, seen, low, high)
@@ -207,7 +210,8 @@ def _judged(check: Check, one: _Look, over_all: Measure, place: int, until: Verd
         unknown=_part(over_all.unknown, own, one.measure.unknown),
     )
     limit = one.bench.limits[check.id]
-    return Word(judge(measure, limit, one.design.guessed).verdict, excess(measure, limit, count, until))
+    judged = judge(measure, limit, one.design.guessed)
+    return Word(judged.verdict, excess(measure, limit, count, until), judged.worst)
 
 
 def _part(found: Any, own: slice, nominal: Any) -> Any:

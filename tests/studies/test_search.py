@@ -12,7 +12,15 @@ from safeamp.complaints import Complaint, ReadingError
 from safeamp.findings import Verdict
 from safeamp.quantities import ANGLE, RATIO, RESISTANCE, TEMPERATURE, VOLTAGE
 from safeamp.studies import search
-from safeamp.studies.search import Field, Trial, between, first_values, look_closer, sharpen
+from safeamp.studies.search import (
+    Field,
+    Trial,
+    between,
+    first_values,
+    look_closer,
+    look_everywhere,
+    sharpen,
+)
 from safeamp.studies.trials import Word
 
 
@@ -33,6 +41,48 @@ def searched(monkeypatch, excess, moved):
     look_closer(field)
     sharpen(field)
     return field
+
+
+# Neither rises nor falls towards the hole: only the word says that it is there.
+@pytest.mark.parametrize("hole", [(50.0, 50.3), (20.0, 20.3), (59.0, 59.31)])
+def test_a_hole_that_no_excess_points_to_is_found(monkeypatch, hole):
+    low, high = hole
+    field = searched(
+        monkeypatch, lambda value: 1.0 if low < value < high or value > 61.0 else -1.0, key((1.0, 300.0))
+    )
+    look_everywhere(field)
+    assert [end for end, _ in ends(field)][:2] == pytest.approx([low, high], rel=1e-5)
+
+
+# A window of values that hold is found as well where nothing points to it.
+def test_a_window_that_no_excess_points_to_is_found(monkeypatch):
+    field = searched(
+        monkeypatch, lambda value: -1.0 if 30.0 < value < 40.0 or value < 2.0 else 1.0, key((1.0, 300.0))
+    )
+    look_everywhere(field)
+    assert [end for end, _ in ends(field)] == pytest.approx([2.0, 30.0, 40.0], rel=1e-5)
+
+
+# Between go and caution lies unverified, as narrow as it may be: where the word turns it is looked until it is met.
+def test_a_narrow_hole_where_the_word_turns_is_found(monkeypatch):
+    def words(check, benches, *, until):
+        return [
+            Word(
+                Verdict.GO
+                if bench.sheet < 50.0
+                else Verdict.UNVERIFIED
+                if bench.sheet < 50.001
+                else Verdict.CAUTION,
+                -1.0,
+            )
+            for bench in benches
+        ]
+
+    monkeypatch.setattr(search, "words", words)
+    field = Field(key((1.0, 300.0)), None, Verdict.CAUTION, [SimpleNamespace(id="one")])
+    field.look(first_values(field.key))
+    look_everywhere(field)
+    assert ends(field) == [(pytest.approx(50.0, rel=1e-5),) * 2, (pytest.approx(50.001, rel=1e-5),) * 2]
 
 
 def ends(field):
