@@ -19,13 +19,17 @@ from safeamp.cli.figures import (
 )
 from safeamp.cli.files import FilesRead
 from safeamp.cli.options import DeviceFolderOption, LimitsOption, OutputOption, SheetArgument
-from safeamp.cli.output import check_output, columns, complaining, emit
+from safeamp.cli.output import check_output, columns, complaining, emit, fail
 
 if TYPE_CHECKING:
     from safeamp.amplifier import Sheet
     from safeamp.answers import Tolerance
     from safeamp.figures import Gallery
     from safeamp.limits import Limits
+
+
+#: More would fill the memory before they said more: the interval of a chance is then below 0.1 % anyway.
+MOST_SAMPLES = 10_000_000
 
 
 class Format(StrEnum):
@@ -45,7 +49,9 @@ class DistributionName(StrEnum):
 
 def tolerance(
     sheet: SheetArgument,
-    samples: Annotated[int, typer.Option("--samples", min=100, help="How many samples.")] = 100_000,
+    samples: Annotated[
+        int, typer.Option("--samples", min=100, help="How many samples, up to 10 million.")
+    ] = 100_000,
     seed: Annotated[int, typer.Option("--seed", min=0, help="The same seed draws the same samples.")] = 1,
     distribution: Annotated[
         DistributionName,
@@ -63,6 +69,8 @@ def tolerance(
     from safeamp.reading.limits import load_limits
     from safeamp.studies.tolerance import tolerance as study
 
+    if samples > MOST_SAMPLES:
+        fail(f"--samples {samples}: at most {MOST_SAMPLES}")
     never = FilesRead(sheet, limits=limits, device_folder=device_folder)
     if output is not None:
         check_output(output, never)

@@ -156,6 +156,7 @@ def _next(answer: Tolerance, width: int) -> Iterator[str]:
         width,
         "  ",
     )
+    yield from ("", f"measure next: {key_text(parts[0][0])}")
 
 
 def tolerance_json(answer: Tolerance) -> str:

@@ -68,6 +68,20 @@ def test_wrong_options_end_with_two(words, message):
     assert result.stdout == ""
 
 
+def test_more_samples_than_a_machine_holds_are_refused_in_one_line():
+    result = run("tolerance", BENCH, "--samples", 10_000_001)
+    assert result.exit_code == 2
+    assert result.stderr == "safeamp: --samples 10000001: at most 10000000\n"
+    assert result.stdout == ""
+
+
+def test_what_to_measure_next_is_one_line():
+    text = run("tolerance", BENCH, "--samples", 500).stdout
+    first = chances()["measure_next"][0]["key"]
+    [line] = [line for line in text.splitlines() if line.startswith("measure next: ")]
+    assert line == f"measure next: {first.removesuffix('.0')}"
+
+
 def test_a_broken_sheet_is_complained_of(tmp_path):
     broken = tmp_path / "broken.toml"
     broken.write_text(HEALTHY.read_text(encoding="utf-8").replace('"22 V', '"22', 1), encoding="utf-8")

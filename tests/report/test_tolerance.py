@@ -63,3 +63,12 @@ def test_a_value_without_bound_is_said():
 def test_where_no_reading_decides_it_says_so():
     text = render_tolerance(tolerance(sheet("healthy"), limits(), samples=200))
     assert "No reading of what varies here changes whether a step is cleared." in text
+    assert "measure next:" not in text
+
+
+# The mains moves most of what follows here, and no reading makes them steady.
+def test_the_mains_cannot_be_measured_away():
+    answer = tolerance(sheet("split_rail"), limits(), samples=600)
+    assert any("mains.present" in one.shares for one in answer.findings)
+    assert "measure next: heatsink.air" in render_tolerance(answer).splitlines()
+    assert "mains" not in render_tolerance(answer).partition("Measure next")[2]
