@@ -64,7 +64,9 @@ class Solution:
     span : (float, float)
         The believable range, which was searched.
     now : float or None
-        What the sheet has, and whether that holds.
+        What the sheet has, and whether that holds; `written` is false where it stands for what nobody wrote.
+    refused : int
+        How many of the values tried the sheet cannot have; `refusal` is the commonest reason, at one of them.
     intervals : tuple of Interval
         From the lowest up; empty where no value will do: `forbidden` says why.
     otherwise : Solution or None
@@ -79,7 +81,10 @@ class Solution:
     span: tuple[float, float]
     now: float | None = None
     now_holds: bool = False
+    written: bool = True
     tried: int = 0
+    refused: int = 0
+    refusal: str = ""
     intervals: tuple[Interval, ...] = ()
     forbidden: tuple[Forbidding, ...] = ()
     otherwise: Solution | None = None

@@ -77,8 +77,9 @@ def _ends(interval: Interval) -> tuple[Edge | None, Edge | None]:
 
 def _now(solution: Solution) -> str:
     if solution.now is None:
-        return " (the sheet has none)"
-    text = f" (the sheet has {_number(solution, solution.now)}"
+        return " (not in the sheet)"
+    has = "the sheet has" if solution.written else "not in the sheet, which takes"
+    text = f" ({has} {_number(solution, solution.now)}"
     if solution.outcome == "unread":
         return f"{text})"
     return f"{text}, which {'holds' if solution.now_holds else 'does not hold'})"
@@ -131,7 +132,15 @@ def _asked(solution: Solution, width: int) -> list[str]:
     word = "go" if solution.until is Verdict.GO else f"{solution.until.word} or better"
     paper = "; on paper, without what is read at the bench" if solution.on_paper else ""
     asked = f"{word}, at the worst corner too, of {', '.join(solution.findings)}{paper}"
-    return points((asked, f"{solution.tried} values tried from {low} to {high}"), width)
+    return points((asked, f"{solution.tried} values tried from {low} to {high}{_refused(solution)}"), width)
+
+
+def _refused(solution: Solution) -> str:
+    """Say how many values the sheet refused, and why most of them where no value will do."""
+    if not solution.refused:
+        return ""
+    reason = f", most often: {solution.refusal}" if solution.outcome == "none" else ""
+    return f"; {solution.refused} of them the sheet cannot have{reason}"
 
 
 def solution_json(solution: Solution) -> str:
@@ -149,6 +158,7 @@ def _mapping(solution: Solution) -> dict[str, Any]:
         "results": _results(solution),
         "now": plain(solution.now),
         "now_holds": solution.now_holds,
+        "written": solution.written,
         "until": solution.until.word,
         "findings": list(solution.findings),
         "intervals": [
@@ -159,6 +169,7 @@ def _mapping(solution: Solution) -> dict[str, Any]:
         "otherwise": None if solution.otherwise is None else _mapping(solution.otherwise),
         "span": list(solution.span),
         "tried": solution.tried,
+        "refused": {"count": solution.refused, "most_often": solution.refusal},
         "on_paper": solution.on_paper,
         "sheet": {"source": solution.source, "sha256": solution.digest},
     }

@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator, Sequence
 from dataclasses import replace
 from itertools import groupby
+from typing import Any
 
 from safeamp.answers import Forbidding, Interval, Solution
 from safeamp.checks import CHECKS, Check
@@ -22,6 +24,9 @@ from safeamp.studies.search import (
     look_everywhere,
     sharpen,
 )
+
+#: A number with its unit, as it stands in a sentence.
+AMOUNT = re.compile(r"-?\d[\d.e+-]* ?[^\s,;:)]*")
 
 
 class QuestionError(ValueError):
@@ -148,7 +153,7 @@ def _answer(field: Field, *, on_paper: bool) -> Solution:
         digest=sheet.digest,
     )
     if not field.checks:
-        return replace(solution, tried=len(field.trials))
+        return replace(solution, **_counted(field))
     never = [check for check in field.checks if not _holding(field, check.id)]
     if not never:
         look_closer(field)
@@ -159,10 +164,26 @@ def _answer(field: Field, *, on_paper: bool) -> Solution:
         solution,
         now_holds=now is not None and now.holds,
         intervals=tuple(_intervals(field, on_paper=on_paper)),
-        tried=len(field.trials),
+        **_counted(field),
         forbidden=_forbidden(field),
         otherwise=_otherwise(field, never, on_paper=on_paper),
     )
+
+
+def _counted(field: Field) -> dict[str, Any]:
+    """Return how many values were tried and refused, and the commonest reason where it is nearest to the sheet."""
+    groups: dict[str, list[Trial]] = {}
+    for trial in field.ordered:
+        if trial.refused:
+            # The same sentence with other numbers is the same reason.
+            groups.setdefault(AMOUNT.sub("#", trial.refused), []).append(trial)
+    found = {"tried": len(field.trials), "refused": sum(len(group) for group in groups.values())}
+    if not groups:
+        return found
+    now = field.key.now or 0.0
+    commonest = max(groups.values(), key=lambda group: len(group))
+    nearest_one = min(commonest, key=lambda trial: abs(trial.value - now))
+    return found | {"refusal": nearest_one.refused}
 
 
 def _holding(field: Field, id: str) -> list[float]:

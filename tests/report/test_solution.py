@@ -129,9 +129,27 @@ def test_the_others_are_answered_below():
 
 def test_a_key_that_nothing_reads():
     found = flat(findings=(), now=None)
-    assert "no finding reads it, so no value of it changes a verdict (the sheet has none)" in found
+    assert "no finding reads it, so no value of it changes a verdict (not in the sheet)" in found
     assert "Asked for" not in found
     assert "(the sheet has 34 V)" in flat(findings=())
+
+
+def test_values_that_the_sheet_refuses_are_counted_and_the_commonest_reason_is_named():
+    refused = {"refused": 40, "refusal": "device.fitted.power: junction_limit means 150 W"}
+    found = flat(**refused)
+    assert (
+        "49 values tried from 1 V to 300 V; 40 of them the sheet cannot have, most often: "
+        "device.fitted.power: junction_limit means 150 W" in found
+    )
+    bounded = flat(**refused, intervals=(Interval(LOW, HIGH),))
+    assert "40 of them the sheet cannot have This clears" in bounded
+    found = json.loads(solution_json(solution(**refused)))
+    assert found["refused"] == {"count": 40, "most_often": refused["refusal"]}
+
+
+def test_what_nobody_wrote_is_not_said_to_be_in_the_sheet():
+    intervals = (Interval(LOW, HIGH),)
+    assert "(not in the sheet, which takes 34 V, which holds)" in flat(written=False, intervals=intervals)
 
 
 def test_on_paper_is_said():

@@ -23,3 +23,12 @@ def test_a_finding_that_applies_at_some_values_is_answered():
 
 def test_a_finding_that_reads_what_the_sheet_fills_in_after_the_key_is_answered():
     assert solved("healthy", "device.fitted.power", "soa.loudspeaker").intervals
+
+
+# Derived: 150 W follow from the junction, so that of 49 values over four decades few are left; 150 W itself is one.
+def test_what_ties_a_key_to_others_is_said_where_no_value_will_do():
+    solution = solved("split_rail", "device.fitted.power")
+    assert (solution.outcome, solution.tried) == ("none", 49)
+    assert 40 <= solution.refused <= 48
+    assert solution.refusal.startswith("device.fitted.power: ")
+    assert "but junction_limit and junction_to_case mean 150 W" in solution.refusal
