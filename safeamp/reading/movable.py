@@ -9,7 +9,7 @@ from typing import Any
 
 from safeamp.amplifier import TABLES, Entry, Key, Sheet, keys_of
 from safeamp.limits import nearest, plain
-from safeamp.quantities import CURRENT, RATIO, Kind, QuantityError, Sign, plain_text, rewrite
+from safeamp.quantities import CURRENT, RATIO, Kind, Origin, QuantityError, Sign, plain_text, rewrite
 from safeamp.reading.sheets import Source
 from safeamp.reading.walk import tables_of
 
@@ -31,8 +31,18 @@ class Movable:
 
     @property
     def now(self) -> float | None:
-        """The number that the sheet has, the largest of a list; None where it has none."""
-        return max((entry.nominal for entry in self.entries), key=abs, default=None)
+        """The number that the sheet has, the largest of a list; None where it has none.
+
+        What stands for a number that nobody wrote counts only where it could be written.
+        """
+        found = max((entry.nominal for entry in self.entries), key=abs, default=None)
+        low, high = self.span
+        return None if found is None or (not self.in_sheet and not low <= found <= high) else found
+
+    @property
+    def in_sheet(self) -> bool:
+        """Whether somebody wrote it."""
+        return any(entry.origin is not Origin.ASSUMED for entry in self.entries)
 
     @property
     def whole(self) -> bool:

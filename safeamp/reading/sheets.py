@@ -125,12 +125,24 @@ class Source:
         """
         changes = dict(instead or {})
         draft = Draft(self.places, allow_si=self.allow_si, folder=self.folder, instead=changes)
-        data = {**{table: {} for table in self._new_tables(changes)}, **self.data}
+        data = _with_tables(self.data, changes)
         return _sheet(draft, _read(draft, data, self.device_folder, self.limits), self.name, self.digest)
 
-    def _new_tables(self, changes: Mapping[str, Any]) -> list[str]:
-        tables = dict.fromkeys(path.split(".")[0] for path in changes)
-        return [table for table in tables if table not in self.data and table != "device"]
+
+def _with_tables(data: Mapping[str, Any], changes: Mapping[str, Any]) -> Mapping[str, Any]:
+    """Return a sheet with an empty table for each change in a table that is not written, inner ones included.
+
+    A device is left to the reader: it may come from a file of its own.
+    """
+    for path in changes:
+        table, *below = path.split(".")[:-1]
+        if table == "device":
+            continue
+        inside = data.get(table, {})
+        if below and isinstance(inside, Mapping):
+            inside = {below[0]: {}, **inside}
+        data = {**data, table: inside}
+    return data
 
 
 class _NoLines:

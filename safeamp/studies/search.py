@@ -55,6 +55,10 @@ class Movable(Protocol):
         """The number in the sheet."""
 
     @property
+    def in_sheet(self) -> bool:
+        """Whether somebody wrote it."""
+
+    @property
     def whole(self) -> bool:
         """Whether only whole numbers count."""
 

@@ -89,9 +89,14 @@ def _named(id: str) -> Check:
 
 
 def _refusal(field: Field) -> BaseException:
-    """Return what the sheet says of the value it has now, or of the first one."""
-    troubles = [trial.trouble for trial in field.ordered if trial.trouble is not None]
-    return troubles[0]
+    """Return what the sheet says of the first value, or which keys it lacks beside this one."""
+    trouble = next(trial.trouble for trial in field.ordered if trial.trouble is not None)
+    lacking = [one.key for one in trouble.complaints if one.text.startswith("is missing")]
+    if len(lacking) < len(trouble.complaints):
+        return trouble
+    return QuestionError(
+        f"{field.key.path} alone is refused: write {', '.join(lacking)} into the sheet first"
+    )
 
 
 def _reading(key: Movable, trials: list[Trial]) -> list[Check]:
@@ -148,6 +153,7 @@ def _answer(field: Field, *, on_paper: bool) -> Solution:
         findings=tuple(check.id for check in field.checks),
         span=key.span,
         now=key.now,
+        written=key.in_sheet,
         on_paper=on_paper,
         source=sheet.source,
         digest=sheet.digest,
@@ -181,7 +187,7 @@ def _counted(field: Field) -> dict[str, Any]:
     if not groups:
         return found
     now = field.key.now or 0.0
-    commonest = max(groups.values(), key=lambda group: len(group))
+    commonest = max(groups.values(), key=len)
     nearest_one = min(commonest, key=lambda trial: abs(trial.value - now))
     return found | {"refusal": nearest_one.refused}
 

@@ -82,6 +82,10 @@ def test_limits_of_the_user_count(tmp_path):
             ["readings.offset_warm", "--finding", "supply.reservoir_voltage"],
             "safeamp: supply.reservoir_voltage does not read readings.offset_warm\n",
         ),
+        (
+            ["heatsink.fins.width"],
+            "safeamp: heatsink.fins.width alone is refused: write heatsink.fins.height, heatsink.fins.depth, heat",
+        ),
         (["stage.clipped_peak"], "clipped_peak and swing_loss say the same thing twice"),
         (["supply.no_load", "--output", SHEET], "is a file that is read"),
     ],

@@ -3,7 +3,7 @@
 import pytest
 
 from safeamp.studies.solve import QuestionError
-from tests.studies.solving import solved
+from tests.studies.solving import number, solved
 
 
 def test_a_finding_that_applies_at_no_value_is_refused():
@@ -32,3 +32,29 @@ def test_what_ties_a_key_to_others_is_said_where_no_value_will_do():
     assert 40 <= solution.refused <= 48
     assert solution.refusal.startswith("device.fitted.power: ")
     assert "but junction_limit and junction_to_case mean 150 W" in solution.refusal
+
+
+FINS = {
+    "heatsink.fins.width": "200 mm",
+    "heatsink.fins.height": "75 mm",
+    "heatsink.fins.depth": "40 mm",
+    "heatsink.fins.thickness": "2 mm",
+    "heatsink.fins.count": 14,
+}
+
+
+def test_a_key_that_cannot_stand_alone_asks_for_the_others():
+    with pytest.raises(
+        QuestionError, match=r"^heatsink\.fins\.width alone is refused: write heatsink\.fins\.height, "
+    ):
+        solved("healthy", "heatsink.fins.width")
+
+
+# The thickness of a plate that nobody wrote counts as 0 m, which nobody can write.
+def test_what_stands_for_a_key_that_nobody_wrote_is_not_said_to_be_in_the_sheet():
+    plate = solved("healthy", "heatsink.fins.plate", changes=FINS)
+    assert (plate.now, plate.written) == (None, False)
+    width = solved("healthy", "heatsink.fins.width", changes=FINS)
+    assert (width.now, width.written) == (pytest.approx(0.2), True)
+    assumed = number("split_rail", "stage.bias_tracking")
+    assert (assumed.now, assumed.in_sheet) == (pytest.approx(0.8), False)
