@@ -59,6 +59,13 @@ def test_a_junction_that_cannot_be_computed_is_asked_for_and_not_left_out(option
         assert f"says nothing alone; add {added}" in refusal("heatsink", **given, **options)
 
 
+def test_no_option_is_named_that_there_is_not():
+    fins = {"fins": "150x75x35 mm", "thickness": "2 mm", "count": "14", "power": "28 W", "air": "40 degC"}
+    [judged] = answer("heatsink", **fins)["findings"]
+    assert "beyond the stop level if the K/W by ruler is at the other end" in " ".join(judged["because"])
+    assert "--fins-share" not in " ".join(judged["because"])
+
+
 def test_a_measured_chain_well_below_its_limit_is_go():
     measured = {name: f"{text}, measured" for name, text in CHAIN.items()}
     found = answer("heatsink", power="60 W", air="30 degC, measured", junction_limit="200 degC", **measured)

@@ -37,6 +37,10 @@ JUDGED = {
 }
 
 
+#: Assumed shares that are no options, and what settles them.
+STANDS_FOR = {"fins_share": "the K/W by ruler", "rated_noise_share": "--power-word"}
+
+
 def dashed(*names: str) -> str:
     """Return option names as they are typed."""
     found = [f"--{name.replace('_', '-')}" for name in names]
@@ -207,7 +211,12 @@ class Cases:
 
     def _moved(self) -> tuple[str, ...]:
         moved = [entry.path for entry in self.design.entries if corners.is_estimated(entry)]
-        return tuple(dashed(path) if path in self.desk.entries else _spoken(path) for path in moved)
+        return tuple(_named(path) if path in self.desk.entries else _spoken(path) for path in moved)
+
+
+def _named(path: str) -> str:
+    """Return an assumed share as what it stands for; any other value as its option is typed."""
+    return STANDS_FOR.get(path) or dashed(path)
 
 
 def _spoken(path: str) -> str:
