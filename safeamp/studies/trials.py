@@ -121,12 +121,12 @@ def _alike(one: Seen, other: Seen) -> bool:
 
 def _facts(measure: Measure | NotApplicable | None, trace: Trace) -> object:
     read = (tuple(trace.reads), tuple(trace.missing))
-    if not isinstance(measure, Measure) or trace.missing or measure.word is not None:
-        # Without a pass over the corners there is nothing that numbers could come from.
+    if not isinstance(measure, Measure) or trace.missing or measure.word is not None or measure.remarks:
+        # Without a pass over the corners there is nothing that numbers could come from; and the same remark at two
+        # sheets, such as rails that lie apart on one side or the other, says nothing of those between.
         return (*read, object())
-    remarks = tuple(remark.at_best for remark in measure.remarks)
     flags = (measure.without_stop, measure.everywhere, measure.unknown is None, measure.as_built)
-    return (*read, remarks, flags, _scalar(measure.go), _scalar(measure.stop))
+    return (*read, flags, _scalar(measure.go), _scalar(measure.stop))
 
 
 def _scalar(level: Any) -> object:
