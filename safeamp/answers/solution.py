@@ -65,6 +65,8 @@ class Solution:
         The believable range, which was searched.
     now : float or None
         What the sheet has, and whether that holds; `written` is false where it stands for what nobody wrote.
+    items : int
+        How many items of a list move together, in proportion; the values are those of the largest.
     refused : int
         How many of the values tried the sheet cannot have; `refusal` is the commonest reason, at one of them.
     intervals : tuple of Interval
@@ -82,6 +84,7 @@ class Solution:
     now: float | None = None
     now_holds: bool = False
     written: bool = True
+    items: int = 1
     tried: int = 0
     refused: int = 0
     refusal: str = ""

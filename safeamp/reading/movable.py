@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator
 from dataclasses import dataclass, replace
 from decimal import Context, Decimal
@@ -17,17 +18,23 @@ from safeamp.reading.walk import tables_of
 SIGNS = ("+", "-", "\u2212")
 #: Significant digits of an item of a list that is scaled with its largest.
 FEWEST_DIGITS, MOST_DIGITS = 4, 12
+#: An item of a list: its place behind a point, or in brackets, which is told how to write it.
+ITEM = re.compile(r"(?P<list>.+?)(?:\.(?P<point>\d+)|\[(?P<bracket>\d+)\])")
 
 
 @dataclass(frozen=True)
 class Movable:
-    """A key of a sheet whose number can be moved; `entries` hold it as written, several for a list."""
+    """A key of a sheet whose number can be moved; `entries` hold it as written, several for a list.
+
+    Of a list one item can be moved alone: `path` then ends with its place, and `whole_list` holds all items.
+    """
 
     source: Source
     path: str
     key: Key
     kind: Kind
     entries: tuple[Entry, ...] = ()
+    whole_list: tuple[Entry, ...] = ()
 
     @property
     def now(self) -> float | None:
@@ -66,6 +73,10 @@ class Movable:
         The items of a list keep their proportions to the largest, which becomes `value`: with as many digits as
         `value` has, as rounding of floats is nothing to be copied.
         """
+        if self.whole_list:
+            return [
+                self._one(item, value if item in self.entries else item.nominal) for item in self.whole_list
+            ]
         if len(self.entries) < 2:
             return self._one(self.entries[0] if self.entries else None, value)
         largest = self.now or 0.0
@@ -106,7 +117,7 @@ class Movable:
         ReadingError
             If the sheet cannot have that value.
         """
-        return self.source.sheet({self.path: self.written(value)})
+        return self.source.sheet({_key_of(self.path): self.written(value)})
 
 
 def _scaled(nominal: float, value: float, largest: float) -> float:
@@ -131,7 +142,7 @@ def movable(source: Source, typed: str) -> Movable:
     source : Source
         The sheet.
     typed : str
-        Key path, ``supply.no_load`` or ``device.NAME.power``.
+        Key path, ``supply.no_load`` or ``device.NAME.power``; ``supply.no_load.1`` for the second item of a list.
 
     Raises
     ------
@@ -145,6 +156,9 @@ def movable(source: Source, typed: str) -> Movable:
     sheet = source.sheet()
     known = dict(_keys(sheet))
     path = typed.strip()
+    item = ITEM.fullmatch(path)
+    if item and item["list"] in known and known[item["list"]].shape == "list":
+        return _item(source, sheet, item, known[item["list"]])
     if path not in known:
         same = {plain(name): name for name in known}
         path = same.get(plain(path), path)
@@ -155,6 +169,21 @@ def movable(source: Source, typed: str) -> Movable:
         what = "holds a word" if not key.kinds else "holds a curve"
         raise ValueError(f"{path} {what}, not a number that can be moved")
     return _movable(source, sheet, path, key)
+
+
+def _item(source: Source, sheet: Sheet, item: re.Match[str], key: Key) -> Movable:
+    """Return one item of a list, the others as they are."""
+    name, place = item["list"], int(item["point"] or item["bracket"])
+    if item["point"] is None:
+        raise KeyError(f"{item[0]} is not how an item is named; write {name}.{place}, counted from 0")
+    every = _movable(source, sheet, name, key)
+    if place >= len(every.entries):
+        raise KeyError(
+            f"{item[0]} is not there: {name} has {len(every.entries)} in the sheet, counted from 0"
+        )
+    return replace(
+        every, path=f"{name}.{place}", entries=every.entries[place : place + 1], whole_list=every.entries
+    )
 
 
 def movable_keys(sheet: Sheet) -> tuple[str, ...]:

@@ -37,6 +37,9 @@ def _answer(solution: Solution, width: int) -> Iterator[str]:
     yield from paragraph(f"{solution.key}: {_says(solution)}{_now(solution)}", width)
     if solution.outcome == "unread":
         return
+    if solution.items > 1:
+        text = f"all {solution.items} items move together, in proportion: the largest is told; one alone: "
+        yield from paragraph(f"{text}{solution.key}.0 to .{solution.items - 1}", width, "  ", "    ")
     for interval in solution.intervals:
         for side, edge in (("below", interval.smallest), ("above", interval.largest)):
             if edge is not None:
@@ -98,8 +101,17 @@ def _edge(solution: Solution, edge: Edge, side: str, width: int) -> Iterator[str
         yield from paragraph(text, width, "  ", "    ")
     elif edge.series:
         yield from paragraph(f"no preferred value ({edge.series}) lies inside", width, "  ", "    ")
-    text = f"in the sheet: {solution.key.rpartition('.')[2]} = {edge.written}"
+    if edge.beyond == 0.0 and edge.value:
+        text = f"between 0 and {value} nothing was tried: no smaller value is told from zero"
+        yield from paragraph(text, width, "  ", "    ")
+    text = f"in the sheet: {_name(solution.key)} = {edge.written}"
     yield from paragraph(f"{text}; the whole sheet is then {edge.verdict.word}", width, "  ", "    ")
+
+
+def _name(path: str) -> str:
+    """Return the name that stands in the sheet; an item is written with its list."""
+    head, _, tail = path.rpartition(".")
+    return _name(head) if tail.isdigit() else tail
 
 
 def _reasons(edge: Edge) -> list[str]:
@@ -159,6 +171,7 @@ def _mapping(solution: Solution) -> dict[str, Any]:
         "now": plain(solution.now),
         "now_holds": solution.now_holds,
         "written": solution.written,
+        "items": solution.items,
         "until": solution.until.word,
         "findings": list(solution.findings),
         "intervals": [

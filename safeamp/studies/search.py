@@ -9,7 +9,7 @@ from typing import Any, Protocol
 
 import numpy as np
 
-from safeamp.amplifier import Sheet
+from safeamp.amplifier import Entry, Sheet
 from safeamp.checks import Check
 from safeamp.complaints import ReadingError
 from safeamp.findings import Verdict
@@ -53,6 +53,10 @@ class Movable(Protocol):
     @property
     def now(self) -> float | None:
         """The number in the sheet."""
+
+    @property
+    def entries(self) -> tuple[Entry, ...]:
+        """What is moved: several items of a list move together."""
 
     @property
     def in_sheet(self) -> bool:
@@ -164,13 +168,20 @@ def first_values(key: Movable) -> list[float]:
     now = [] if key.now is None else [key.now]
     if key.kind in LINEAR:
         return sorted({*np.linspace(low, high, FIRST).tolist(), *now})
-    least = low if low > 0 else max(high * SMALLEST_SHARE, min(key.kind.believable[0], high * 0.01))
+    least = resolution(key)
     rising = np.geomspace(least, high, FIRST).tolist()
     # The product of logarithms need not end where it should; outside the range the sheet would refuse.
     rising[0], rising[-1] = least, high
     ends = [low] if low <= 0 else []
     falling = [-value for value in rising] + [0.0] if low < 0 else []
     return sorted({*rising, *falling, *ends, *now})
+
+
+def resolution(key: Movable) -> float:
+    """Return the smallest magnitude that is looked at, zero apart."""
+    low, high = key.span
+    most = max(abs(low), abs(high))
+    return low if low > 0 else max(most * SMALLEST_SHARE, min(key.kind.believable[0], most * 0.01))
 
 
 def between(low: float, high: float, *, count: int = BETWEEN) -> list[float]:
@@ -292,7 +303,7 @@ def sharpen(field: Field) -> None:
     """Look between each value that holds and its neighbour that does not, until they are close."""
     if field.key.whole:
         return
-    floor = CLOSELY * min((abs(value) for value in field.trials if value), default=1.0)
+    floor = CLOSELY * resolution(field.key)
     while True:
         pairs = list(_ends(field.ordered))
         values = [value for pair in pairs if _wide(pair, floor) for value in _inside(pair)]
@@ -315,6 +326,9 @@ def _values(pairs: Iterable[tuple[Trial, Trial]]) -> list[tuple[float, float]]:
 
 def _wide(pair: tuple[Trial, Trial], floor: float) -> bool:
     low, high = pair[0].value, pair[1].value
+    if not low or not high:
+        # No ratio leads to zero: what is closer to it than the smallest value believed is not told from it.
+        return high - low > floor / CLOSELY * (1.0 + CLOSELY)
     return high - low > max(CLOSELY * max(abs(low), abs(high)), floor)
 
 

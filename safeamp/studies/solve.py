@@ -101,7 +101,7 @@ def _refusal(field: Field) -> BaseException:
 
 def _reading(key: Movable, trials: list[Trial]) -> list[Check]:
     """Return the checks that read the key, or what the sheet fills in after it."""
-    moved = _moved(trials) | {key.path}
+    moved = _moved(trials) | {_list_of(key.path)}
     middle = min(range(len(trials)), key=lambda place: abs(trials[place].value - (key.now or 0.0)))
     seen = [trials[place].bench for place in dict.fromkeys((0, middle, len(trials) - 1))]
     return [
@@ -113,7 +113,7 @@ def _reading(key: Movable, trials: list[Trial]) -> list[Check]:
 
 def _refuse_unread(key: Movable, named: list[Check], trials: list[Trial]) -> None:
     """Refuse a finding asked for that applies at no value, or whose word no value can change."""
-    moved = _moved(trials) | {key.path}
+    moved = _moved(trials) | {_list_of(key.path)}
     for check in named:
         seen = [look(check, trial.bench) for trial in trials if trial.bench]
         idle = [measure for measure, _ in seen if isinstance(measure, NotApplicable)]
@@ -154,6 +154,7 @@ def _answer(field: Field, *, on_paper: bool) -> Solution:
         span=key.span,
         now=key.now,
         written=key.in_sheet,
+        items=len(key.entries),
         on_paper=on_paper,
         source=sheet.source,
         digest=sheet.digest,

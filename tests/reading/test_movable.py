@@ -185,3 +185,24 @@ def test_a_float_of_a_program_is_moved():
     data = tables(supply__no_load=34.0)
     assert sheet_from(data).amplifier.supply.no_load == (34.0,)
     assert movable(open_mapping(data), "supply.no_load").at(36.0).amplifier.supply.no_load == (36.0,)
+
+
+def test_an_item_of_a_list_moves_alone():
+    key = movable(open_mapping(tables(supply__no_load=["33 V", "44 V ±1 V"])), "supply.no_load.1")
+    assert (key.path, key.now) == ("supply.no_load.1", 44.0)
+    assert key.written(66.0) == ["33 V", "66 V ±1.5 V"]
+    assert key.at(40.0).amplifier.supply.no_load == pytest.approx((33.0, 40.0))
+    assert movable(open_mapping(tables()), "supply.no_load.0").at(40.0).amplifier.supply.no_load == (40.0,)
+
+
+@pytest.mark.parametrize(
+    ("typed", "text"),
+    [
+        ("supply.no_load[1]", "is not how an item is named; write supply.no_load.1, counted from 0"),
+        ("supply.no_load.2", "is not there: supply.no_load has 1 in the sheet, counted from 0"),
+        ("supply.full_load_share.0", "is not a key of this sheet"),
+    ],
+)
+def test_an_item_that_is_named_otherwise_or_not_there_is_refused(typed, text):
+    with pytest.raises(KeyError, match=text):
+        movable(open_mapping(tables()), typed)

@@ -147,6 +147,23 @@ def test_values_that_the_sheet_refuses_are_counted_and_the_commonest_reason_is_n
     assert found["refused"] == {"count": 40, "most_often": refused["refusal"]}
 
 
+def test_a_list_says_that_it_moves_together_and_an_item_stands_in_its_list():
+    found = flat(items=3, intervals=(Interval(LOW, HIGH),))
+    assert (
+        "all 3 items move together, in proportion: the largest is told; one alone: "
+        "supply.no_load.0 to .2" in found
+    )
+    alone = flat(key="supply.no_load.1", intervals=(Interval(LOW, HIGH),))
+    assert 'in the sheet: no_load = "31 V, measured"' in alone
+    assert "move together" not in alone
+
+
+def test_an_end_beside_zero_says_where_the_search_stopped():
+    small = Edge(value=1e-6, written='"1 µV"', beyond=0.0, verdict=Verdict.GO, binds=(BOUND,))
+    assert "nothing was tried: no smaller value is told from zero" in flat(intervals=(Interval(small, None),))
+    assert "told from zero" not in flat(intervals=(Interval(LOW, HIGH),))
+
+
 def test_what_nobody_wrote_is_not_said_to_be_in_the_sheet():
     intervals = (Interval(LOW, HIGH),)
     assert "(not in the sheet, which takes 34 V, which holds)" in flat(written=False, intervals=intervals)

@@ -130,6 +130,13 @@ def test_an_end_at_zero_and_below_is_found(monkeypatch):
     assert low == 0.0 < high
 
 
+# No ratio leads to zero: between it and the smallest voltage believed, 1 uV, nothing is halved without end.
+@pytest.mark.parametrize("span", [(0.0, 1000.0), (-1000.0, 1000.0)])
+def test_a_zero_that_fails_is_not_closed_in_on(monkeypatch, span):
+    field = searched(monkeypatch, lambda value: 1.0 if value <= 0.0 else -1.0, key(span))
+    assert ends(field) == [(0.0, pytest.approx(1e-6))]
+
+
 def test_whole_numbers_are_all_tried_and_nothing_between(monkeypatch):
     field = searched(monkeypatch, lambda value: 2.5 - value, key((1, 50), kind=RATIO, whole=True))
     assert [trial.value for trial in field.ordered] == list(range(1, 51))

@@ -58,3 +58,18 @@ def test_what_stands_for_a_key_that_nobody_wrote_is_not_said_to_be_in_the_sheet(
     assert (width.now, width.written) == (pytest.approx(0.2), True)
     assumed = number("split_rail", "stage.bias_tracking")
     assert (assumed.now, assumed.in_sheet) == (pytest.approx(0.8), False)
+
+
+def test_an_item_of_a_list_is_solved_for_alone():
+    item = solved(
+        "split_rail",
+        "supply.no_load.1",
+        "supply.reservoir_voltage",
+        changes={"supply.no_load": ["30 V", "34 V"], "supply.full_load": "25 V"},
+    )
+    [interval] = item.intervals
+    # Derived: two rails may lie 15 % of the mean apart, on one side and on the other: 30 * (2 -+ 0.15)/(2 +- 0.15).
+    assert interval.smallest.value == pytest.approx(30 * 1.85 / 2.15, rel=1e-3)
+    assert interval.largest.value == pytest.approx(30 * 2.15 / 1.85, rel=1e-3)
+    assert interval.largest.written == '["30 V", "34.86 V"]'
+    assert item.items == 1
