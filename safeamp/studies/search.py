@@ -73,6 +73,9 @@ class Movable(Protocol):
     def at(self, value: float) -> Sheet:
         """Return the sheet with another number; ReadingError where it cannot have it."""
 
+    def bought(self, value: float) -> Sheet:
+        """Return the sheet with a new part of another value; ReadingError where it cannot have it."""
+
     def written(self, value: float) -> Any:
         """Return what stands in the sheet for a number."""
 
