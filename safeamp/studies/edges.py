@@ -28,6 +28,10 @@ BEYOND, NEXT = 3, 0.01
 PLAIN = 0.01
 
 
+class NotAloneError(RuntimeError):
+    """Values hold among the trials, but none does when its sheet is judged alone."""
+
+
 @dataclass(frozen=True)
 class Asked:
     """What is solved for."""
@@ -64,7 +68,7 @@ def edge_at(asked: Asked, inside: Sequence[Trial], outside: Sequence[Trial]) -> 
 
     Raises
     ------
-    RuntimeError
+    NotAloneError
         If no value holds when its sheet is judged in full: none must be handed on.
     """
     # Among many values at once the last digits differ: the one beyond must fail alone too.
@@ -95,7 +99,7 @@ def _rounded(asked: Asked, inside: Sequence[Trial], bad: float) -> tuple[float, 
             report = asked.judged(candidate) if low <= candidate <= high and candidate != bad else None
             if report is not None:
                 return candidate, report
-    raise RuntimeError(f"{asked.key.path}: values hold among the trials, but not when judged alone")
+    raise NotAloneError(f"{asked.key.path}: values hold among the trials, but not when judged alone")
 
 
 def _shorter(exact: float, *, upward: bool) -> Iterator[float]:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterator, Sequence
+from contextlib import suppress
 from dataclasses import replace
 from itertools import groupby
 from typing import Any
@@ -12,7 +13,7 @@ from safeamp.answers import Forbidding, Interval, Solution
 from safeamp.checks import CHECKS, Check
 from safeamp.findings import Finding, NotApplicable, Verdict
 from safeamp.limits import Limits, nearest
-from safeamp.studies.edges import Asked, edge_at
+from safeamp.studies.edges import Asked, NotAloneError, edge_at
 from safeamp.studies.findings import Bench, find, look
 from safeamp.studies.search import (
     Field,
@@ -205,7 +206,10 @@ def _intervals(field: Field, *, on_paper: bool) -> Iterator[Interval]:
         run = list(group)
         before, after = ordered[:place][::-1], ordered[place + len(run) :]
         place += len(run)
-        if good:
+        if not good:
+            continue
+        # An interval of which no value holds alone is none: it is left out.
+        with suppress(NotAloneError):
             yield Interval(
                 edge_at(asked, run, _failing_alone(field, before)) if before else None,
                 edge_at(asked, run[::-1], _failing_alone(field, after)) if after else None,
