@@ -231,6 +231,7 @@ def _forbidden(field: Field) -> tuple[Forbidding, ...]:
     """Return what keeps every value from holding; nothing where one does."""
     if any(trial.holds for trial in field.ordered):
         return ()
+    field.judge(field.ordered)  # where one finding fails, the search left the others unasked
     read = [trial for trial in field.ordered if trial.bench is not None]
     where = {check.id: _holding(field, check.id) for check in field.checks}
     never = [check for check in field.checks if not where[check.id]]
