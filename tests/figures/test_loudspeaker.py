@@ -155,8 +155,11 @@ def test_a_fuse_that_does_not_act_for_certain_is_said(fuse, said, earliest, word
     plane = shown.figure.axes[0]
     assert said in labels(plane)
     assert not [one for one in labels(plane) if one.startswith(("Fuse at the latest", "Fuse may"))]
-    spans = [(one.get_x(), one.get_x() + one.get_width()) for one in plane.patches]
-    low, high = plane.get_xlim()
+    to_data = plane.transData.inverted()
+    boxes = [
+        one.get_extents().transformed(to_data) for one in plane.patches
+    ]  # a rectangle or, once, a polygon
+    spans, (low, high) = [(box.x0, box.x1) for box in boxes], plane.get_xlim()
     assert spans == ([] if earliest is None else [pytest.approx((max(low, earliest), high))])
     assert words in shown.says
 

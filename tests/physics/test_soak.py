@@ -176,7 +176,8 @@ def test_scatter_beyond_what_was_said_widens_the_interval():
 @pytest.mark.parametrize("freedom", [1, 2, 3, 4, 5, 10, 31, 100, 999])
 @pytest.mark.parametrize("level", [0.6827, 0.95, 0.9973])
 def test_factors_of_student(freedom, level):
-    assert two_sided(level, freedom) == pytest.approx(stats.t.ppf(0.5 + level / 2.0, freedom), rel=1e-9)
+    # the oldest scipy itself is right to 2e-9 only
+    assert two_sided(level, freedom) == pytest.approx(stats.t.ppf(0.5 + level / 2.0, freedom), rel=1e-8)
 
 
 @pytest.mark.parametrize("freedom", [None, 10**6])
