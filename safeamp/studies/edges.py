@@ -64,16 +64,14 @@ def edge_at(asked: Asked, inside: Sequence[Trial], outside: Sequence[Trial]) -> 
     inside : sequence of Trial
         The values that hold, from this end on.
     outside : sequence of Trial
-        Those beyond it, the nearest first; that one does not hold.
+        Those beyond it, the nearest first; that one does not hold, alone either.
 
     Raises
     ------
     NotAloneError
         If no value holds when its sheet is judged in full: none must be handed on.
     """
-    # Among many values at once the last digits differ: the one beyond must fail alone too.
-    bad = next((trial for trial in outside if asked.judged(trial.value) is None), outside[0])
-    far = inside[-1].value
+    bad, far = outside[0], inside[-1].value
     upward = bad.value < far
     value, report = _rounded(asked, inside, bad.value)
     ends = (min(value, far), max(value, far))
